@@ -1,0 +1,1 @@
+// Exports of the generators group of kernels.

@@ -1,0 +1,1 @@
+// Exports of the sequences group of kernels.

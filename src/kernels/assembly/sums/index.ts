@@ -1,0 +1,2 @@
+// Exports of the sums group of kernels.
+export { countNonFinite, leafMoments } from "./leaves";

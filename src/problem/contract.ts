@@ -1,0 +1,73 @@
+/** A problem as the program holds it after parsing and checking: plain data, JSON-serialisable, no functions. */
+
+/** Inputs take their coordinates in order; a scalar has length null and takes one coordinate. */
+export interface Input {
+  readonly name: string;
+  readonly distribution: "uniform" | "normal";
+  readonly length: number | null;
+  /** Index of its first coordinate, 0-based. */
+  readonly first: number;
+}
+
+/** A constant: a number, a vector or a matrix (rows). */
+export type Constant = number | readonly number[] | readonly (readonly number[])[];
+
+export type Quantity = "mean";
+
+/** The exact value that estimates are held against. */
+export interface Reference {
+  readonly value: number;
+  /** The value as it was written: digits or a formula of constants. */
+  readonly text: string;
+  /** Absolute standard uncertainty of the value; 0 where it is exact to double precision. */
+  readonly uncertainty: number;
+  /** The published source or the derivation. */
+  readonly basis: string;
+}
+
+export interface Tolerance {
+  /** Absolute tolerance on the quantity, > 0; null where it is relative to a value that is not known before the run. */
+  readonly absolute: number | null;
+  /** Relative tolerance, > 0, or null. */
+  readonly relative: number | null;
+  /** What `relative` is relative to: the reference, or a named constant. */
+  readonly to: string;
+  /** In (0.5, 1). */
+  readonly confidence: number;
+}
+
+export interface InUse {
+  readonly source: string;
+  readonly points: number;
+  readonly secondsPerPoint: number | null;
+}
+
+/** The user's own source or a registry id with randomisations; the same form in files and on the command line. */
+export type SourceSpec = string | Readonly<Record<string, unknown>>;
+
+/** Settings of a study, all optional here; `study/settings.ts` resolves them (flag > problem > suite > default). */
+export interface StudySettings {
+  readonly sources?: readonly SourceSpec[];
+  readonly sizes?: readonly number[];
+  readonly replicates?: number;
+  readonly estimators?: readonly string[];
+  readonly falseAlarms?: number;
+  readonly seed?: number;
+}
+
+export interface Problem {
+  /** The problem's declared name: its file name without extension, unique in a suite. Part of every key. */
+  readonly id: string;
+  readonly title: string;
+  readonly about: string;
+  readonly dimension: number;
+  readonly inputs: readonly Input[];
+  readonly constants: Readonly<Record<string, Constant>>;
+  /** Source text in the formula language. */
+  readonly integrand: string;
+  readonly quantity: Quantity;
+  readonly reference: Reference | null;
+  readonly tolerance: Tolerance;
+  readonly inUse: InUse | null;
+  readonly study: StudySettings;
+}

@@ -1,0 +1,94 @@
+/**
+ * The contract of a source: what it says of itself, and what it can do. A source that cannot do a thing does not
+ * have the method for it, so asking for it does not type-check.
+ */
+import type { Kernels } from "../kernels/instance.js";
+import type { Key } from "./key.js";
+
+/** Families as reports show them; each has its own hue, dash and point shape. */
+export type Family = "pseudo-random" | "quasi-random" | "stratified" | "own";
+
+/** `sequence`: any prefix is valid. `per-size`: the points are built for one n. */
+export type Nesting = "sequence" | "per-size";
+
+export type Randomisation = "shift" | "tent" | "digital-shift" | "linear" | "owen" | "permuted";
+
+/** What a source says of itself; listings, help texts, docs tables and test laws come from it. */
+export interface SourceDescription {
+  /** Lower-case name used in problem files and on the command line, without randomisations. */
+  readonly id: string;
+  readonly title: string;
+  /** Author, title, journal, volume, year, pages of the published method. */
+  readonly citation: string;
+  readonly family: Family;
+  /** Kind inside the family, e.g. "congruential", "linear feedback", "counter-based", "digital net", "rank-1 lattice". */
+  readonly method: string;
+  /** Bits of one output that carry information (at most 52 reach a coordinate). */
+  readonly outputBits: number;
+  /** Exact period of the underlying recurrence; null where there is none (quasi-random sources). */
+  readonly period: bigint | null;
+  readonly largestDimension: number;
+  readonly nesting: Nesting;
+  /** Randomisations that apply, alone or in the combinations that `parseSource` accepts; empty for pseudo-random ones. */
+  readonly randomisations: readonly Randomisation[];
+  /** Known structure in a few words ("all triples lie on 15 planes"), or null where the source is held to be sound. */
+  readonly knownStructure: string | null;
+}
+
+/** What a stream is opened with. */
+export interface OpenRequest {
+  /** Coordinates per point, 1 to the source's largest. */
+  readonly dimension: number;
+  /** Points that will be asked for in all; a `per-size` source builds its points for exactly this n. */
+  readonly n: number;
+  readonly randomisations: readonly Randomisation[];
+  /** Where the randomness comes from; null only for an unrandomised quasi-random source. */
+  readonly key: Key | null;
+  /** A starting state in the source's published form; wins over the key. */
+  readonly state?: string;
+}
+
+/** A stream of points in kernel memory. */
+export interface PointStream {
+  readonly dimension: number;
+  /**
+   * Writes the next `count` points: coordinate j of point i goes to byte address `pointer + (j * stride + i) * 8`, a
+   * double in (0, 1). `stride` (in points) is at least `count` rounded up to a multiple of 8; what stands in a row
+   * behind the last point is undefined.
+   */
+  fill(pointer: number, stride: number, count: number): void;
+}
+
+/** A stream that can go on at any index in O(log n) or better. */
+export interface Seekable {
+  /** The next `fill` begins with point `index` (0-based). */
+  seek(index: number): void;
+}
+
+/** A stream whose state can be kept as JSON and restored to the bit. */
+export interface Resumable {
+  save(): string;
+  restore(saved: string): void;
+}
+
+/** A source: its description and how to open it. Kernel memory is taken from the arena; the caller releases it. */
+export interface Source extends SourceDescription {
+  /** The valid size nearest to `n` (at least 1); `n` itself where every size is valid. */
+  nearestSize(n: number): number;
+  open(request: OpenRequest, kernels: Kernels): PointStream & Partial<Seekable & Resumable>;
+}
+
+/** A source whose own integer outputs can be seen, as published. */
+export interface IntegerSource extends Source {
+  /** The source's own integers from a key or a published state, in order. */
+  openIntegers(request: IntegerRequest): IntegerStream;
+}
+
+export interface IntegerRequest {
+  readonly key: Key | null;
+  readonly state?: string;
+}
+
+export interface IntegerStream {
+  next(): bigint;
+}

@@ -42,10 +42,19 @@ export interface InUse {
   readonly secondsPerPoint: number | null;
 }
 
+/** A contribution to the error that the user declares: a bound of a bias, or a standard deviation. */
+export interface Declared {
+  readonly line: string;
+  readonly kind: "bias" | "random";
+  /** Absolute, >= 0: the bound, or the standard deviation. */
+  readonly value: number;
+  readonly basis: string;
+}
+
 /** The user's own source or a registry id with randomisations; the same form in files and on the command line. */
 export type SourceSpec = string | Readonly<Record<string, unknown>>;
 
-/** Settings of a study, all optional here; `study/settings.ts` resolves them (flag > problem > suite > default). */
+/** Settings of a study, all optional here; settings.ts resolves them (flag > problem > suite > default). */
 export interface StudySettings {
   readonly sources?: readonly SourceSpec[];
   readonly sizes?: readonly number[];
@@ -68,6 +77,16 @@ export interface Problem {
   readonly quantity: Quantity;
   readonly reference: Reference | null;
   readonly tolerance: Tolerance;
+  /** Absent where nothing is declared. */
+  readonly declared?: readonly Declared[];
   readonly inUse: InUse | null;
   readonly study: StudySettings;
+}
+
+/** A change of uniform coordinates into inputs, done block by block before the integrand. */
+export interface Transform {
+  readonly kind: "normal";
+  /** First coordinate, 0-based, and how many follow it. */
+  readonly first: number;
+  readonly rows: number;
 }

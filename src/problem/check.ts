@@ -1,0 +1,231 @@
+/**
+ * From a file's data to a Problem: the form by the schema, the meaning by the rules here. Every part is checked on its
+ * own, so that one wrong key does not hide the next.
+ */
+import { z } from "zod";
+import type { Declared, Input, InUse, Problem, Reference, Tolerance } from "./contract.js";
+import { DEFAULT_CONFIDENCE, LIMITS } from "./defaults.js";
+import type { YamlDocument } from "./document.js";
+import { ProblemError, show } from "./errors.js";
+import { Findings } from "./findings.js";
+import { FINITE, NOT_NEGATIVE, NumberReader, POSITIVE, readConstants, wholeFrom } from "./numbers.js";
+import type { Constants, Range } from "./numbers.js";
+import { problemSchema, suiteSchema } from "./schema.js";
+import type { ProblemFile, SuiteFile } from "./schema.js";
+import { checkStudy } from "./study.js";
+
+/** Names that plain JavaScript objects already have: data keyed by name would mistake them for entries. */
+const TAKEN = new Set(Object.getOwnPropertyNames(Object.prototype));
+
+const CONFIDENCE: Range = {
+  what: "a confidence above 0.5 and below 1, such as 0.99",
+  holds: (x) => x > 0.5 && x < 1,
+};
+
+/** The parts of a file that have the right form; the others are reported and left out. */
+function parts<S extends z.ZodRawShape>(
+  schema: z.ZodObject<S>,
+  findings: Findings,
+): Partial<z.infer<z.ZodObject<S>>> {
+  const { value } = findings.document;
+  const result: Record<string, unknown> = {};
+  const given = value === null || typeof value !== "object" || Array.isArray(value) ? null : { ...value };
+  if (given === null) {
+    const keys = Object.keys(schema.shape).join(", ");
+    findings.addKey([], `expected a mapping with the keys ${keys}; found ${show(value)}`);
+    return {};
+  }
+  for (const key of Object.keys(given)) {
+    if (!Object.hasOwn(schema.shape, key)) findings.unknownKey([key], Object.keys(schema.shape));
+  }
+  for (const key of Object.keys(schema.shape)) {
+    const read = z.safeParse(schema.shape[key] as z.ZodType, (given as Record<string, unknown>)[key]);
+    if (!read.success) findings.addSchema(read.error, [key], schema);
+    else if (read.data !== undefined) result[key] = read.data;
+  }
+  return result as Partial<z.infer<z.ZodObject<S>>>;
+}
+
+function checkNames(names: readonly string[], section: string, others: Constants, findings: Findings): void {
+  for (const name of names) {
+    if (TAKEN.has(name)) findings.addKey([section, name], `the name "${name}" is reserved; take another`);
+    else if (Object.hasOwn(others, name)) {
+      findings.addKey([section, name], `"${name}" is an input and a constant; give one of them another name`);
+    }
+  }
+}
+
+async function checkInputs(
+  file: ProblemFile["inputs"],
+  numbers: NumberReader,
+  findings: Findings,
+): Promise<Input[]> {
+  const inputs: Input[] = [];
+  let first = 0;
+  for (const [name, { distribution, length: raw }] of Object.entries(file)) {
+    let length: number | null = null;
+    if (raw !== undefined) {
+      length = await numbers.read(raw, ["inputs", name, "length"], wholeFrom(1, LIMITS.dimension));
+      if (length === null) continue;
+    }
+    inputs.push({ name, distribution, length, first });
+    first += length ?? 1;
+  }
+  if (first > LIMITS.dimension) {
+    findings.add(
+      ["inputs"],
+      `expected at most ${LIMITS.dimension} coordinates in all, found ${first}; shorten them`,
+    );
+  }
+  return inputs;
+}
+
+async function checkReference(
+  file: NonNullable<ProblemFile["reference"]>,
+  numbers: NumberReader,
+  findings: Findings,
+): Promise<Reference | null> {
+  const value = await numbers.read(file.value, ["reference", "value"], FINITE);
+  const uncertainty = await numbers.read(file.uncertainty ?? 0, ["reference", "uncertainty"], NOT_NEGATIVE);
+  if (value === null || uncertainty === null) return null;
+  const text = findings.document.source(["reference", "value"]) ?? String(file.value);
+  return { value, text: text.trim(), uncertainty, basis: file.basis.trim() };
+}
+
+async function checkTolerance(
+  file: ProblemFile["tolerance"],
+  reference: number | "later" | null,
+  numbers: NumberReader,
+  findings: Findings,
+): Promise<Tolerance | null> {
+  const path = ["tolerance"];
+  const to = file.to ?? "reference";
+  const confidence = await numbers.read(
+    file.confidence ?? DEFAULT_CONFIDENCE,
+    [...path, "confidence"],
+    CONFIDENCE,
+  );
+  if (file.absolute !== undefined && file.relative !== undefined) {
+    findings.add(path, "expected absolute or relative, found both; keep one of them");
+    return null;
+  }
+  if (file.absolute !== undefined) {
+    if (file.to !== undefined) {
+      findings.add(
+        [...path, "to"],
+        'only a relative tolerance has "to"; remove it, or write relative for absolute',
+      );
+    }
+    const absolute = await numbers.read(file.absolute, [...path, "absolute"], POSITIVE);
+    return absolute === null || confidence === null ? null : { absolute, relative: null, to, confidence };
+  }
+  if (file.relative === undefined) {
+    findings.add(path, "expected absolute or relative, found neither; add one such as absolute: 0.01");
+    return null;
+  }
+  const relative = await numbers.read(file.relative, [...path, "relative"], POSITIVE);
+  const unit = to === "reference" ? reference : numbers.constants[to];
+  if (to !== "reference" && typeof unit !== "number") {
+    const names = Object.entries(numbers.constants).filter(([, value]) => typeof value === "number");
+    const known = ["reference", ...names.map(([name]) => name)].join(", ");
+    findings.add(
+      [...path, "to"],
+      `expected reference or a constant that is a number (${known}), found ${show(to)}`,
+    );
+    return null;
+  }
+  if (unit === 0) {
+    const what = to === "reference" ? "the reference" : `the constant ${to}`;
+    findings.add(
+      path,
+      `a tolerance relative to ${what} has no size, as its value is 0; write an absolute one`,
+    );
+    return null;
+  }
+  if (relative === null || confidence === null) return null;
+  return { absolute: typeof unit === "number" ? relative * Math.abs(unit) : null, relative, to, confidence };
+}
+
+async function checkDeclared(
+  file: NonNullable<ProblemFile["declared"]>,
+  numbers: NumberReader,
+  findings: Findings,
+): Promise<Declared[]> {
+  const declared: Declared[] = [];
+  for (const [i, item] of file.entries()) {
+    const path = ["declared", i];
+    const kind = item.bias === undefined ? "random" : "bias";
+    const raw = item.bias ?? item.deviation;
+    if (raw === undefined || (item.bias !== undefined && item.deviation !== undefined)) {
+      findings.add(
+        path,
+        `expected bias or deviation, found ${raw === undefined ? "neither" : "both"}; give one of them`,
+      );
+      continue;
+    }
+    const value = await numbers.read(raw, [...path, kind === "bias" ? "bias" : "deviation"], NOT_NEGATIVE);
+    if (value !== null) declared.push({ line: item.line, kind, value, basis: item.basis });
+  }
+  return declared;
+}
+
+async function checkInUse(
+  file: NonNullable<ProblemFile["inUse"]>,
+  numbers: NumberReader,
+): Promise<InUse | null> {
+  const points = await numbers.read(file.points, ["inUse", "points"], wholeFrom(2, LIMITS.points, "2^40"));
+  const seconds = file.secondsPerPoint;
+  const secondsPerPoint =
+    seconds === undefined ? null : await numbers.read(seconds, ["inUse", "secondsPerPoint"], POSITIVE);
+  return points === null ? null : { source: file.source, points, secondsPerPoint };
+}
+
+/** The problem in a file. Throws ProblemError with every finding. */
+export async function checkProblem(document: YamlDocument, id: string): Promise<Problem> {
+  const findings = new Findings(document);
+  const file = parts(problemSchema, findings);
+  const numbers = new NumberReader(findings);
+  const constants = await readConstants(file.constants, numbers, findings);
+  if (file.constants === undefined && document.has(["constants"])) numbers.formulas = false;
+  checkNames(Object.keys(constants), "constants", {}, findings);
+  checkNames(Object.keys(file.inputs ?? {}), "inputs", constants, findings);
+  const inputs = await checkInputs(file.inputs ?? {}, numbers, findings);
+  const reference =
+    file.reference === undefined ? null : await checkReference(file.reference, numbers, findings);
+  const unit = reference?.value ?? "later";
+  const tolerance =
+    file.tolerance === undefined ? null : await checkTolerance(file.tolerance, unit, numbers, findings);
+  const declared = await checkDeclared(file.declared ?? [], numbers, findings);
+  const inUse = file.inUse === undefined ? null : await checkInUse(file.inUse, numbers);
+  const study = await checkStudy(file.study ?? {}, numbers, findings);
+  if (findings.issues.length > 0 || tolerance === null || file.integrand === undefined) {
+    throw new ProblemError(findings.inOrder());
+  }
+  const last = inputs.at(-1);
+  return {
+    id,
+    title: file.title ?? id,
+    about: file.about?.trim() ?? "",
+    dimension: last === undefined ? 0 : last.first + (last.length ?? 1),
+    inputs,
+    constants,
+    integrand: file.integrand,
+    quantity: file.quantity ?? "mean",
+    reference,
+    tolerance,
+    ...(declared.length > 0 ? { declared } : {}),
+    inUse,
+    study,
+  };
+}
+
+/** The settings in a `suite.yaml`. Throws ProblemError with every finding. */
+export async function checkSuite(
+  document: YamlDocument,
+): Promise<Omit<SuiteFile, "study"> & { study: Problem["study"] }> {
+  const findings = new Findings(document);
+  const { study, ...rest } = parts(suiteSchema, findings);
+  const settings = await checkStudy(study ?? {}, new NumberReader(findings), findings);
+  if (findings.issues.length > 0) throw new ProblemError(findings.inOrder());
+  return { ...rest, study: settings };
+}

@@ -2,7 +2,7 @@
 import { readdir, stat } from "node:fs/promises";
 import { basename, dirname, extname, join, resolve } from "node:path";
 import { nearest } from "../numeric/nearest.js";
-import { shippedFolder, shippedProblemFile, shippedSuites } from "./catalogue.js";
+import { SUITE_FILE, shippedFolder, shippedProblemFile, shippedSuites } from "./catalogue.js";
 import { checkProblem, checkSuite } from "./check.js";
 import type { Problem, StudySettings } from "./contract.js";
 import { parseYaml, readText } from "./document.js";
@@ -10,7 +10,6 @@ import type { YamlDocument } from "./document.js";
 import { ProblemError, fileError } from "./errors.js";
 import type { ProblemIssue } from "./errors.js";
 
-export const SUITE_FILE = "suite.yaml";
 const EXTENSIONS = new Set([".yaml", ".yml"]);
 /** Problem ids become names of files and keys of records. */
 const ID = /^[A-Za-z0-9][A-Za-z0-9._-]{0,99}$/;

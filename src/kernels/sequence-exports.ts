@@ -1,3 +1,33 @@
-/** Fill kernels of nets, lattices and other sequences. */
-// eslint-disable-next-line @typescript-eslint/no-empty-object-type -- filled by the sequence kernels
-export interface SequenceExports {}
+/**
+ * Fill kernels of nets, lattices and other sequences. Pointers are byte addresses in the kernel memory; coordinate j of
+ * point i goes to `pointer + (j * stride + i) * 8`.
+ */
+export interface SequenceExports {
+  /** Turns the step words of `dimension` records (layout: assembly/sequences/net2.ts) from Gray-code to natural order. */
+  net2Natural(records: number, dimension: number): void;
+  /** Multiplies the step words by random lower triangular matrices; `seeds` holds 32 bytes for every coordinate. */
+  net2Scramble(records: number, dimension: number, seeds: number): void;
+  /** Makes `index` the next point of the net. */
+  net2Seek(records: number, dimension: number, index: number): void;
+  /** Fills `count` points of a net from point `index`. */
+  net2Fill(
+    records: number,
+    dimension: number,
+    index: number,
+    pointer: number,
+    stride: number,
+    count: number,
+  ): void;
+  /** As `net2Fill`, with nested uniform scrambling; `keys` holds 18 words of 32 bits for every coordinate. */
+  net2FillOwen(
+    records: number,
+    dimension: number,
+    keys: number,
+    index: number,
+    pointer: number,
+    stride: number,
+    count: number,
+  ): void;
+  /** The hash word of a prefix under the two key words (32 bits each) at `keys`. */
+  owenHash(prefix: number, keys: number): number;
+}

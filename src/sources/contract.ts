@@ -2,6 +2,7 @@
  * The contract of a source: what it says of itself, and what it can do. A source that cannot do a thing does not
  * have the method for it, so asking for it does not type-check.
  */
+import type { Matrix } from "ml-matrix";
 import type { Kernels } from "../kernels/instance.js";
 import type { Key } from "./key.js";
 
@@ -91,4 +92,23 @@ export interface IntegerRequest {
 
 export interface IntegerStream {
   next(): bigint;
+}
+
+/** A source whose points are a digital net or sequence, known by its generating matrices. */
+export interface DigitalNet extends Source {
+  /**
+   * The unrandomised generating matrices of the first `dimension` coordinates, with the columns that the first `n`
+   * points use.
+   */
+  generatingMatrices(dimension: number, n: number): GeneratingMatrices;
+}
+
+/**
+ * Digit r + 1 (after the point) of coordinate j of point i is row r of matrices[j] times the digits of i in `base`, least
+ * significant first; in `gray` order, times the digits of the Gray code of i.
+ */
+export interface GeneratingMatrices {
+  readonly base: number;
+  readonly order: "natural" | "gray";
+  readonly matrices: readonly Matrix[];
 }

@@ -1,3 +1,59 @@
-/** Fill kernels of the pseudo-random generators. */
-// eslint-disable-next-line @typescript-eslint/no-empty-object-type -- filled by the generator kernels
-export interface GeneratorExports {}
+/**
+ * Kernels of the pseudo-random generators: integer words in order of generation, and their conversion to rows of
+ * coordinates. All pointers are byte addresses in the kernel memory; layouts of `state` stand with each kernel.
+ */
+
+/** Writes the next `count` words of a generator to `out` and moves its state on by exactly as many. */
+export type FillWords = (state: number, out: number, count: number) => void;
+
+/** Words w[i * dimension + j] to coordinates at out + (j * stride + i) * 8. */
+export type ToRows = (words: number, dimension: number, count: number, out: number, stride: number) => void;
+
+/** As `ToRows`: (((w >> shift) & mask) + offset) * factor, the masked integer below 2^52. */
+export type ToScaledRows = (
+  words: number,
+  dimension: number,
+  count: number,
+  out: number,
+  stride: number,
+  shift: number,
+  mask: bigint,
+  offset: number,
+  factor: number,
+) => void;
+
+export interface GeneratorExports {
+  readonly fillPowerOfTwo: FillWords;
+  readonly fillFolded: FillWords;
+  readonly fillShort: FillWords;
+  readonly fillGeneral: FillWords;
+  readonly fillMt19937: FillWords;
+  readonly fillPcg64: FillWords;
+  readonly fillPhilox4x32: FillWords;
+  readonly fillXoshiro256PlusPlus: FillWords;
+  readonly rowsMidpoint32: ToRows;
+  readonly rowsMidpoint64: ToRows;
+  readonly rowsScaled32: ToScaledRows;
+  readonly rowsScaled64: ToScaledRows;
+  /** As `ToRows`: (w + offset) / divisor, w below 2^52, correctly rounded. */
+  readonly rowsQuotient64: (
+    words: number,
+    dimension: number,
+    count: number,
+    out: number,
+    stride: number,
+    offset: number,
+    divisor: number,
+  ) => void;
+  /** Each word k < m becomes floor(2^64 k / m), in place; `scaled` is m 2^s with its top bit set. */
+  readonly fractionWords: (
+    words: number,
+    count: number,
+    scaled: bigint,
+    reciprocal: bigint,
+    s: bigint,
+  ) => void;
+  /** Keeps words 0, step, 2 step, ..., `count` in all, in place. */
+  readonly keepEvery32: (words: number, count: number, step: number) => void;
+  readonly keepEvery64: (words: number, count: number, step: number) => void;
+}

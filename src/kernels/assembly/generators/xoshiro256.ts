@@ -1,0 +1,22 @@
+// xoshiro256++: D. Blackman and S. Vigna, "Scrambled linear pseudorandom number generators", ACM Transactions on
+// Mathematical Software 47 (2021) 36. Layout of `state`: s0, s1, s2, s3 (64-bit words).
+
+/** The next `count` 64-bit words. */
+export function fillXoshiro256PlusPlus(state: usize, out: usize, count: i32): void {
+  let s0 = load<u64>(state), s1 = load<u64>(state, 8), s2 = load<u64>(state, 16), s3 = load<u64>(state, 24);
+  for (let i = 0; i < count; i++) {
+    store<u64>(out, rotl<u64>(s0 + s3, 23) + s0);
+    out += 8;
+    let t = s1 << 17;
+    s2 ^= s0;
+    s3 ^= s1;
+    s1 ^= s2;
+    s0 ^= s3;
+    s2 ^= t;
+    s3 = rotl<u64>(s3, 45);
+  }
+  store<u64>(state, s0);
+  store<u64>(state, s1, 8);
+  store<u64>(state, s2, 16);
+  store<u64>(state, s3, 24);
+}

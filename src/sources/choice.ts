@@ -1,0 +1,72 @@
+/** From what a user writes to a source that can be opened: an id, an id with randomisations, or a mapping. */
+import type { Kernels } from "../kernels/instance.js";
+import { nearest } from "../numeric/nearest.js";
+import type { SourceSpec } from "../problem/contract.js";
+import { checkCapacity } from "./capacity.js";
+import type { PointStream, Randomisation, Resumable, Seekable, Source } from "./contract.js";
+import type { Key } from "./key.js";
+import { parseOwnSource } from "./own-source.js";
+import { checkRandomisations } from "./randomisations.js";
+import { findSource, sourceIds } from "./registry.js";
+
+/** What a stream of a choice is opened with; see `OpenRequest`. */
+export interface ChoiceRequest {
+  readonly dimension: number;
+  readonly n: number;
+  readonly key: Key | null;
+  readonly state?: string;
+}
+
+/** A source with its randomisations, as chosen by a user. */
+export interface SourceChoice {
+  /** Canonical id, randomisations included: "sobol+owen", or the user's own name. */
+  readonly id: string;
+  readonly source: Source;
+  readonly randomisations: readonly Randomisation[];
+  /** True for an unrandomised quasi-random source: one error, no error bar. */
+  readonly deterministic: boolean;
+  /** What `parseSource` was given; serialisable, and parsed again it gives the same choice. */
+  readonly spec: SourceSpec;
+  /** Throws where dimension or n is out of the source's range, or a key is missing. */
+  open(request: ChoiceRequest, kernels: Kernels): PointStream & Partial<Seekable & Resumable>;
+}
+
+/** The source that `spec` names. Throws with what was found, what is allowed and the nearest known id. */
+export function parseSource(spec: SourceSpec): SourceChoice {
+  if (typeof spec === "string") return parseId(spec);
+  if (typeof spec === "object" && spec !== null && !Array.isArray(spec))
+    return choose(parseOwnSource(spec), [], spec);
+  throw new TypeError(`source: expected an id like "mt19937" or a mapping, found ${JSON.stringify(spec)}`);
+}
+
+/** An id may itself hold "+" (xoshiro256++), so the longest id that the text begins with is the source. */
+function parseId(text: string): SourceChoice {
+  const id = sourceIds()
+    .filter((candidate) => text === candidate || text.startsWith(`${candidate}+`))
+    .reduce((longest, candidate) => (candidate.length > longest.length ? candidate : longest), "");
+  const source = findSource(id);
+  if (source === undefined) throw new RangeError(unknownSource(text));
+  const names = text === id ? [] : text.slice(id.length + 1).split("+");
+  const randomisations = checkRandomisations(source, names);
+  return choose(source, randomisations, [id, ...randomisations].join("+"));
+}
+
+function unknownSource(text: string): string {
+  const guess = nearest(text, sourceIds()) ?? nearest(text.split("+")[0] ?? "", sourceIds());
+  const proposal = guess === null ? "" : `; did you mean "${guess}"?`;
+  return `source: unknown source "${text.slice(0, 60)}"${proposal} (known: ${sourceIds().join(", ")})`;
+}
+
+function choose(source: Source, randomisations: readonly Randomisation[], spec: SourceSpec): SourceChoice {
+  return {
+    id: [source.id, ...randomisations].join("+"),
+    source,
+    randomisations,
+    deterministic: source.family === "quasi-random" && randomisations.length === 0,
+    spec,
+    open: (request, kernels) => {
+      checkCapacity(source, request.dimension, request.n);
+      return source.open({ ...request, randomisations }, kernels);
+    },
+  };
+}

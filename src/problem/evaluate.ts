@@ -23,9 +23,19 @@ export function plainNumber(text: string): number | null {
 export async function numberOf(text: string, constants: Readonly<Record<string, Constant>>): Promise<number> {
   const plain = plainNumber(text);
   if (plain !== null) return plain;
-  const { parse, erf } = await import("mathjs");
-  const phi = (x: number): number => (1 + erf(x / Math.SQRT2)) / 2;
-  const normalCdf = (x: unknown): unknown =>
-    typeof x === "number" ? phi(x) : Array.isArray(x) ? x.map(normalCdf) : NaN;
-  return Number(parse(text).evaluate({ ...constants, normalCdf }));
+  // Stands in until the formula language offers its own evaluation of constants.
+  const math = await import("mathjs");
+  const scope: Record<string, unknown> = { ...constants };
+  const each = (f: (x: number) => number) => {
+    const go = (x: unknown): unknown =>
+      typeof x === "number" ? f(x) : Array.isArray(x) ? x.map(go) : math.isMatrix(x) ? go(x.valueOf()) : NaN;
+    return go;
+  };
+  for (const name of ["exp", "sin", "cos", "atan", "expm1", "log", "sqrt"] as const)
+    scope[name] = each(Math[name]);
+  scope["erf"] = each((x) => math.erf(x));
+  scope["normalCdf"] = each((x) => (1 + math.erf(x / Math.SQRT2)) / 2);
+  scope["normalPdf"] = each((x) => Math.exp((-x * x) / 2) / Math.sqrt(2 * Math.PI));
+  const result: unknown = math.parse(text).evaluate(scope);
+  return Number(math.isResultSet(result) ? result.valueOf().at(-1) : result);
 }

@@ -43,7 +43,18 @@ const hostSources = filesBelow("src").filter((file) => file.endsWith(".ts") && !
 try {
   step("kernels", [...common, ...kernelSources], ["dist/kernels/kernels.wasm"], () => {
     mkdirSync(join(root, "dist", "kernels"), { recursive: true });
-    const flags = ["--runtime", "stub", "--enable", "simd", "-O3", "--noAssert", "--initialMemory", "16"];
+    const flags = [
+      "--runtime",
+      "stub",
+      "--enable",
+      "simd",
+      "-O3",
+      "--noAssert",
+      "--initialMemory",
+      "16",
+      "--disableWarning",
+      "112",
+    ];
     const output = ["-o", "dist/kernels/kernels.wasm"];
     execFileSync(bin("asc"), ["src/kernels/assembly/index.ts", ...output, ...flags], {
       cwd: root,

@@ -1,0 +1,104 @@
+"""Errors of kernel results in units in the last place, against mpmath 1.3.0.
+
+Reads frames from standard input: one JSON line {"name", "count", "arity"}, then arity * count arguments and count
+results as little-endian doubles. Answers each with one JSON line: the largest error, where, and what was wrong with
+values that must be exact (NaN, infinities, the sign of zero).
+"""
+import json
+import sys
+from array import array
+
+from mpmath import inf, isinf, isnan, mp, mpf, nan
+
+mp.prec = 160
+
+
+def real(f, inside=lambda *_: True):
+    return lambda *args: f(*args) if inside(*args) else nan
+
+
+def power(x, y):
+    """IEEE 754-2019 pow for doubles."""
+    if y == 0 or x == 1:
+        return mpf(1)
+    if isnan(x) or isnan(y):
+        return nan
+    odd = not isinf(y) and y == mp.floor(y) and mp.floor(y / 2) * 2 != y
+    if isinf(y):
+        return mpf(1) if abs(x) == 1 else inf if (abs(x) > 1) == (y > 0) else mpf(0)
+    if x == 0 or isinf(x):
+        size = inf if (x == 0) == (y < 0) else mpf(0)
+        return size  # the sign is checked by the tests
+    if x < 0 and y != mp.floor(y):
+        return nan
+    exponent = y * mp.log(abs(x))
+    if abs(exponent) > 800:
+        size = inf if exponent > 0 else mpf(0)
+    else:
+        size = mp.exp(exponent)
+    return -size if x < 0 and odd else size
+
+
+def clipped(f):
+    """f with arguments cut at +-800, beyond which a double result no longer changes."""
+    return lambda x: f(max(min(x, mpf(800)), mpf(-800)))
+
+
+FUNCTIONS = {
+    "exp": clipped(mp.exp),
+    "expm1": clipped(mp.expm1),
+    "log": real(mp.log, lambda x: x > 0),
+    "log1p": real(mp.log1p, lambda x: x > -1),
+    "log2": real(lambda x: mp.log(x) / mp.log(2), lambda x: x > 0),
+    "log10": real(lambda x: mp.log(x) / mp.log(10), lambda x: x > 0),
+    "cbrt": lambda x: mp.sign(x) * mp.cbrt(abs(x)),
+    "pow": power,
+    "sin": mp.sin,
+    "cos": mp.cos,
+    "tan": mp.tan,
+    "asin": real(mp.asin, lambda x: abs(x) <= 1),
+    "acos": real(mp.acos, lambda x: abs(x) <= 1),
+    "atan": mp.atan,
+    "atan2": mp.atan2,
+    "sinh": clipped(mp.sinh),
+    "cosh": clipped(mp.cosh),
+    "tanh": clipped(mp.tanh),
+}
+
+
+def error(exact, got):
+    """|got - exact| in units in the last place of exact; beyond the range of doubles, infinity stands for 2^1024."""
+    limit = mpf(2) ** 1024
+    if isnan(exact) or got != got:
+        return mpf(0) if isnan(exact) and got != got else inf
+    exact = max(min(exact, limit), -limit)
+    value = max(min(mpf(got), limit), -limit)
+    if exact == 0:
+        return mpf(0) if value == 0 else inf
+    exponent = max(mp.frexp(exact)[1] - 1, -1022)
+    return abs(value - exact) / mpf(2) ** (min(exponent, 1023) - 52)
+
+
+def main():
+    stream = sys.stdin.buffer
+    while line := stream.readline():
+        head = json.loads(line)
+        count = head["count"]
+        columns = []
+        for _ in range(head["arity"] + 1):
+            column = array("d")
+            column.frombytes(stream.read(8 * count))
+            columns.append(column)
+        f = FUNCTIONS[head["name"]]
+        worst, where, total = mpf(-1), None, mpf(0)
+        for i in range(count):
+            args = [column[i] for column in columns[:-1]]
+            e = error(f(*map(mpf, args)), columns[-1][i])
+            total += e
+            if e > worst:
+                worst, where = e, (args, columns[-1][i])
+        print(json.dumps({"worst": float(worst), "args": [repr(a) for a in where[0]], "got": repr(where[1])}), flush=True)
+
+
+if __name__ == "__main__":
+    main()

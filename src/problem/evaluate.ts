@@ -32,7 +32,7 @@ export async function numberOf(text: string, constants: Readonly<Record<string, 
     return go;
   };
   for (const name of ["exp", "sin", "cos", "atan", "expm1", "log", "sqrt"] as const)
-    scope[name] = each(Math[name]);
+    scope[name] = each((x) => Math[name](x));
   scope["erf"] = each((x) => math.erf(x));
   scope["normalCdf"] = each((x) => (1 + math.erf(x / Math.SQRT2)) / 2);
   scope["normalPdf"] = each((x) => Math.exp((-x * x) / 2) / Math.sqrt(2 * Math.PI));

@@ -103,7 +103,9 @@ export async function loadSuite(folder: string): Promise<{ suite: Suite; problem
   const found = await readSuite(folder);
   const name = basename(resolve(folder));
   const suite: Suite = found ?? { name, folder, title: name, about: "", study: {}, problems: [] };
-  const files = (await readdir(folder)).filter(isProblemFile).sort();
+  const idOf = (file: string): string => basename(file, extname(file));
+  const files = (await readdir(folder)).filter(isProblemFile);
+  files.sort((a, b) => (idOf(a) < idOf(b) ? -1 : 1));
   const paths = files.map((file) => join(folder, file));
   for (const entry of suite.problems) {
     const file = await shippedProblemFile(entry);

@@ -5,7 +5,7 @@
  * that clashes) is checked in check.ts.
  */
 import { z } from "zod";
-import { LIMITS } from "./defaults.js";
+import { DEFAULT_CONFIDENCE, DEFAULT_SETTINGS, DEFAULT_SIZES_TEXT, LIMITS } from "./defaults.js";
 
 /** Names of inputs and constants: as a formula writes them. */
 export const NAME = /^[A-Za-z][A-Za-z0-9_]*$/;
@@ -48,7 +48,7 @@ const reference = z.strictObject(
     value: number("the exact value in digits").describe("Digits, or a formula of numbers and constants."),
     uncertainty: number("the absolute standard uncertainty, 0 or more")
       .optional()
-      .describe("Absolute standard uncertainty of the value, 0 where it is exact."),
+      .meta({ description: "Absolute standard uncertainty of the value, 0 where it is exact.", default: 0 }),
     basis: text("the published source or the derivation of the value, as text")
       .min(1, { error: "the published source or the derivation of the value, as text" })
       .describe("Where the value comes from: the published source or the derivation."),
@@ -62,12 +62,14 @@ const tolerance = z.strictObject(
     relative: number("a number above 0")
       .optional()
       .describe("Largest error as a fraction of what `to` names; instead of `absolute`."),
-    to: text("reference, or the name of a constant")
-      .optional()
-      .describe("What `relative` refers to: `reference`, or the name of a constant that is a number."),
-    confidence: number("a number between 0.5 and 1")
-      .optional()
-      .describe("Probability with which the error must stay within the tolerance, above 0.5 and below 1."),
+    to: text("reference, or the name of a constant").optional().meta({
+      description: "What `relative` refers to: `reference`, or the name of a constant that is a number.",
+      default: "reference",
+    }),
+    confidence: number("a number between 0.5 and 1").optional().meta({
+      description: "Probability with which the error must stay within the tolerance, above 0.5 and below 1.",
+      default: DEFAULT_CONFIDENCE,
+    }),
   },
   { error: "a mapping such as { absolute: 0.01, confidence: 0.99 }" },
 );
@@ -107,25 +109,38 @@ const study = z.strictObject(
       .array(source, { error: "a list of sources such as [philox4x32, sobol+owen]" })
       .min(1, { error: "at least one source such as philox4x32" })
       .optional()
-      .describe("Sources to be compared: ids, ids with randomisations, or descriptions of your own."),
+      .meta({
+        description: "Sources to be compared: ids, ids with randomisations, or descriptions of your own.",
+        default: DEFAULT_SETTINGS.sources,
+      }),
     sizes: z
       .union([z.string().min(1), z.number(), z.array(number("a number of points")).min(1)], {
         error: 'sizes such as "2^8..2^16", "1000..1000000 by 10" or [1000, 5000]',
       })
       .optional()
-      .describe("Numbers of points: doubling between two ends, by another factor, or a list."),
-    replicates: number("a whole number of replicates, 2 or more")
-      .optional()
-      .describe("Independent repetitions of each estimate."),
+      .meta({
+        description: "Numbers of points: doubling between two ends, by another factor, or a list.",
+        default: DEFAULT_SIZES_TEXT,
+      }),
+    replicates: number("a whole number of replicates, 2 or more").optional().meta({
+      description: "Independent repetitions of each estimate.",
+      default: DEFAULT_SETTINGS.replicates,
+    }),
     estimators: z
       .array(text("the name of an estimator"), { error: "a list of estimators such as [crude]" })
       .min(1, { error: "at least one estimator such as crude" })
       .optional()
-      .describe("Ways to form an estimate from the points."),
-    falseAlarms: number("a number above 0 and below 0.5")
+      .meta({
+        description: "Ways to form an estimate from the points.",
+        default: DEFAULT_SETTINGS.estimators,
+      }),
+    falseAlarms: number("a number above 0 and below 0.5").optional().meta({
+      description: "Probability of any false finding of bias in a whole study.",
+      default: DEFAULT_SETTINGS.falseAlarms,
+    }),
+    seed: number("a whole number from 0 to 2^53 - 1")
       .optional()
-      .describe("Probability of any false finding of bias in a whole study."),
-    seed: number("a whole number from 0 to 2^53 - 1").optional().describe("Seed of the study."),
+      .meta({ description: "Seed of the study.", default: DEFAULT_SETTINGS.seed }),
   },
   { error: "a mapping of settings such as { replicates: 32 }" },
 );
@@ -155,7 +170,11 @@ export const problemSchema = z
     quantity: z
       .literal("mean", { error: "mean; for a probability let the integrand be the condition" })
       .optional()
-      .describe("What is asked of the integrand: its `mean` (the mean of a condition is its probability)."),
+      .meta({
+        description:
+          "What is asked of the integrand: its `mean` (the mean of a condition is its probability).",
+        default: "mean",
+      }),
     reference: reference
       .optional()
       .describe("The exact value; without it a consensus of sound sources is formed and said."),

@@ -2,6 +2,7 @@
  * Numbers of a problem file: digits, powers of whole numbers, or formulas of constants. Digits and powers are read
  * here; only a real formula wakes the formula language (0.8 s to load).
  */
+import { FormulaError } from "../formula/contract.js";
 import type { Constant } from "./contract.js";
 
 const DIGITS = /^[-+]?(\d+\.?\d*|\.\d+)(e[-+]?\d+)?$/i;
@@ -36,6 +37,10 @@ export async function numberOf(text: string, constants: Readonly<Record<string, 
   scope["erf"] = each((x) => math.erf(x));
   scope["normalCdf"] = each((x) => (1 + math.erf(x / Math.SQRT2)) / 2);
   scope["normalPdf"] = each((x) => Math.exp((-x * x) / 2) / Math.sqrt(2 * Math.PI));
-  const result: unknown = math.parse(text).evaluate(scope);
-  return Number(math.isResultSet(result) ? result.valueOf().at(-1) : result);
+  try {
+    const result: unknown = math.parse(text).evaluate(scope);
+    return Number(math.isResultSet(result) ? result.valueOf().at(-1) : result);
+  } catch (error) {
+    throw new FormulaError(error instanceof Error ? error.message : String(error), { line: 1, column: 1 });
+  }
 }

@@ -1,0 +1,92 @@
+/** From what was run to the record: cells, tests, convergence, budgets, warnings. Pure; touches no file. */
+import type { Problem } from "../problem/contract.js";
+import { digestOf } from "../record/json.js";
+import {
+  RECORD_SCHEMA,
+  type BiasTest,
+  type Budget,
+  type Consensus,
+  type Environment,
+  type RawCell,
+  type RecordSource,
+  type StudyRecord,
+  type StudySpec,
+} from "../record/types.js";
+import { confirmCandidates, findCandidates, type Confirmation } from "./bias.js";
+import { budgetOf } from "./budget.js";
+import { toCells, type Context } from "./cells.js";
+import { makeContext } from "./context.js";
+import { convergenceOf } from "./convergence.js";
+import { seriesKey, seriesOf, type Series } from "./series.js";
+import { warningsOf } from "./warnings.js";
+
+export interface Measured {
+  readonly spec: StudySpec;
+  readonly problems: readonly Problem[];
+  readonly sources: readonly RecordSource[];
+  readonly rawCells: readonly RawCell[];
+  readonly consensus: readonly Consensus[];
+}
+
+export interface Assembly extends Measured {
+  readonly environment: Environment;
+  /** Estimates on fresh keys for the candidates of `candidatesOf`. */
+  readonly confirmations: readonly Confirmation[];
+  /** Warnings from before the run, shown first. */
+  readonly warnings: readonly string[];
+}
+
+/** Stage 1 alone: the tests whose biases are to be confirmed on fresh keys, at the test's n with R = 256. */
+export function candidatesOf(measured: Measured): BiasTest[] {
+  const context = makeContext(measured.problems, measured.sources, measured.consensus);
+  const series = seriesOf(toCells(measured.rawCells, context));
+  return findCandidates(series, context, measured.spec.falseAlarms).filter((test) => test.candidate);
+}
+
+export function assembleRecord(assembly: Assembly): StudyRecord {
+  const { spec, environment, problems, sources, rawCells, consensus, confirmations } = assembly;
+  const context = makeContext(problems, sources, consensus);
+  const cells = toCells(rawCells, context);
+  const series = seriesOf(cells);
+  const screened = findCandidates(series, context, spec.falseAlarms);
+  const tests = confirmCandidates(screened, confirmations, series, context, spec.falseAlarms);
+  const testOf = new Map(tests.map((test) => [seriesKey(test), test]));
+  const budgets = series.flatMap((one) => {
+    const budget = budgetOf(one, testOf.get(seriesKey(one)), context);
+    return budget === null ? [] : [budget];
+  });
+  return {
+    schema: RECORD_SCHEMA,
+    spec,
+    specDigest: digestOf(spec),
+    digest: digestOf(cells.map((cell) => cell.digest)),
+    environment,
+    problems,
+    sources,
+    consensus,
+    cells,
+    tests,
+    family: { tests: tests.filter((test) => test.kind !== "none").length, level: spec.falseAlarms },
+    convergence: series.map((one) => convergenceOf(one, testOf.get(seriesKey(one)), context)),
+    budgets: [...budgets, ...inUseBudgets(problems, series, testOf, context)],
+    warnings: [...new Set([...assembly.warnings, ...warningsOf(series, consensus, context)])],
+  };
+}
+
+/** The budget of what is in use, one per problem and output that states it. */
+function inUseBudgets(
+  problems: readonly Problem[],
+  series: readonly Series[],
+  testOf: ReadonlyMap<string, BiasTest>,
+  context: Context,
+): Budget[] {
+  return problems.flatMap((problem) => {
+    const { inUse } = problem;
+    if (inUse === null) return [];
+    const used = series.filter((one) => one.problem === problem.id && one.source === inUse.source);
+    const first = used.find((one) => one.estimator === "crude") ?? used[0];
+    return used
+      .filter((one) => one.estimator === first?.estimator)
+      .flatMap((one) => budgetOf(one, testOf.get(seriesKey(one)), context, inUse.points, true) ?? []);
+  });
+}

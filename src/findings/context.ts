@@ -1,0 +1,17 @@
+/** The look-up tables that findings share: problems, sources and references by name. */
+import type { Problem } from "../problem/contract.js";
+import type { Consensus, RecordSource } from "../record/types.js";
+import type { Context } from "./cells.js";
+import { referencesOf } from "./reference.js";
+
+export function makeContext(
+  problems: readonly Problem[],
+  sources: readonly RecordSource[],
+  consensus: readonly Consensus[],
+): Context {
+  return {
+    problems: new Map(problems.map((problem) => [problem.id, problem])),
+    sources: new Map(sources.map((source) => [source.id, source])),
+    references: referencesOf(problems, consensus),
+  };
+}

@@ -1,0 +1,87 @@
+/**
+ * Numbers in words: only the digits that their uncertainty supports (two digits of the uncertainty, as the GUM, JCGM
+ * 100:2008, 7.2.6, advises). Shared by the command line and the report.
+ */
+
+/** `value` to the second significant digit of `uncertainty`; without one, two significant digits. */
+export function formatValue(value: number, uncertainty: number | null = null): string {
+  if (!Number.isFinite(value)) return String(value);
+  if (value === 0 && uncertainty === null) return "0";
+  if (uncertainty === null || !(uncertainty > 0) || !Number.isFinite(uncertainty)) return plain(value, 2);
+  const place = Math.floor(Math.log10(uncertainty)) - 1;
+  const digits = Math.floor(Math.log10(Math.abs(value) || uncertainty)) - place + 1;
+  // Below its own uncertainty a value keeps the places of the uncertainty.
+  if (digits < 1) return place < 0 ? fixed(0 * value, -place) : "0";
+  return plain(value, Math.min(17, digits));
+}
+
+/** `digits` significant digits, with an exponent only below 1e-4 or from 1e9 on. */
+function plain(value: number, digits: number): string {
+  const size = Math.abs(value);
+  if (size !== 0 && (size < 1e-4 || size >= 1e9)) {
+    return minus(value.toExponential(digits - 1).replace("e+", "e"));
+  }
+  const rounded = Number(value.toPrecision(digits));
+  const places = digits - 1 - Math.floor(Math.log10(Math.abs(rounded) || 1));
+  return places > 0 ? fixed(rounded, places) : minus(grouped(rounded));
+}
+
+function fixed(value: number, places: number): string {
+  return minus(value.toFixed(Math.min(100, places)));
+}
+
+/** A true minus sign in place of the hyphen, none before zeros. */
+function minus(text: string): string {
+  if (!text.startsWith("-")) return text;
+  return /[1-9]/.test(text) ? text.replace("-", "\u2212") : text.slice(1);
+}
+
+function grouped(value: number): string {
+  return value.toFixed(0).replace(/\B(?=(\d{3})+$)/g, ",");
+}
+
+/** An interval with the digits that its own width supports. */
+export function formatInterval([low, high]: readonly [number, number]): string {
+  const width = (high - low) / 4;
+  return `${formatValue(low, width)} to ${formatValue(high, width)}`;
+}
+
+/** A whole number with thousands separated: 262,144; from a million on, if `about`, "2.0 million". */
+export function formatCount(count: number, about = false): string {
+  if (!Number.isFinite(count)) return String(count);
+  if (!about) return grouped(Math.round(count));
+  for (const [size, name] of SCALES) {
+    if (count >= 0.9995 * size) return `${(count / size).toPrecision(count < 9.95 * size ? 2 : 3)} ${name}`;
+  }
+  // Two digits: a fitted number of points supports no more.
+  return grouped(Number(count.toPrecision(2)));
+}
+
+const SCALES = [
+  [1e12, "trillion"],
+  [1e9, "billion"],
+  [1e6, "million"],
+] as const;
+
+/** A duration in the unit that suits it. */
+export function formatSeconds(seconds: number): string {
+  if (!(seconds >= 0) || !Number.isFinite(seconds)) return String(seconds);
+  if (seconds === 0) return "0 s";
+  if (seconds < 1e-3) return `${plain(seconds * 1e6, 2)} \u00b5s`;
+  if (seconds < 1) return `${plain(seconds * 1e3, 2)} ms`;
+  if (seconds < 120) return `${plain(seconds, 2)} s`;
+  if (seconds < 7200) return `${plain(seconds / 60, 2)} min`;
+  if (seconds < 172_800) return `${plain(seconds / 3600, 2)} h`;
+  if (seconds < 730 * 86_400) return `${plain(seconds / 86_400, 2)} days`;
+  return `${plain(seconds / (365.25 * 86_400), 2)} years`;
+}
+
+/** A confidence or a share, without digits that were not given: 99 %, 99.9 %. */
+export function formatPercent(share: number): string {
+  return `${Number((share * 100).toPrecision(10))} %`;
+}
+
+/** A p-value: two digits, "< 1e-12" below that. */
+export function formatPValue(p: number): string {
+  return p < 1e-12 ? "< 1e-12" : plain(p, 2);
+}

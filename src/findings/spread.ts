@@ -1,0 +1,196 @@
+/**
+ * How the replicate deviation s falls with n: what a plan needs. Pseudo-random sources: s^2 = P^2 + C^2 / n with the order
+ * 1/2 fixed, because order and plateau are confounded otherwise (a fit of pure n^-1/2 data with a free order finds a
+ * plateau of 0.2 of the last value); P is kept only where the data demand it. Others: straight lines in (ln n, ln s)
+ * between the sizes measured, the fitted slope beyond them.
+ */
+import { fitLine } from "../numeric/least-squares.js";
+import { jackknife } from "../numeric/resampling.js";
+import { combine, logDeviation, logRmse, type LeaveOneOut } from "./leave-one-out.js";
+import type { Series } from "./series.js";
+
+export interface Estimated {
+  readonly value: number;
+  /** 95 %, jackknife over replicates of the logarithm; null where not known. */
+  readonly interval: readonly [number, number] | null;
+}
+
+export interface Spread {
+  /** s at n points. Null where nothing usable was measured. */
+  at(n: number): Estimated | null;
+  /** The n with s(n) = target; null where s does not fall to it. */
+  reach(target: number): Estimated | null;
+  /** Level below which s does not fall, and its lower limit; null where none shows. */
+  readonly plateau: { readonly value: number; readonly lower: number } | null;
+  readonly smallest: number;
+  readonly largest: number;
+  /** True where the order 1/2 is fixed, so that s can be carried beyond the sizes measured. */
+  readonly fixedOrder: boolean;
+}
+
+/** Cells with an error bar. */
+export function usableCells(series: Series) {
+  return series.cells.filter((cell) => cell.replicateDeviation !== null && cell.replicateDeviation > 0);
+}
+
+/** Weights 1 / variance of a logarithm, from its own jackknife; 1 where that is not known. */
+export function jackknifeWeights(logs: readonly LeaveOneOut[]): number[] {
+  const errors = logs.map((log) => jackknife(log.all, log.without)?.standardError ?? NaN);
+  if (!errors.every((error) => error > 0)) return logs.map(() => 1);
+  // No size may count less than a ninth of the best: the weights are themselves noisy, more so for heavy tails.
+  const least = Math.min(...errors);
+  return errors.map((error) => 1 / Math.min(error, 3 * least) ** 2);
+}
+
+export function spreadOf(series: Series, pseudoRandom: boolean): Spread | null {
+  const cells = usableCells(series);
+  const [first, last] = [cells[0], cells.at(-1)];
+  if (first === undefined || last === undefined || first.replicates < 3) return null;
+  const logs = cells.map((cell) => logDeviation(cell.estimates));
+  const sizes = cells.map((cell) => Math.log(cell.n));
+  const plateau = pseudoRandom && cells.length >= 4 ? plateauOf(sizes, logs) : null;
+  const curve = pseudoRandom ? rootCurve(sizes, logs, plateau !== null) : polygon(sizes, logs);
+  const estimate = (f: (values: readonly number[]) => number): Estimated | null => {
+    const found = combine(logs, f);
+    if (!Number.isFinite(found.all)) return null;
+    const interval = jackknife(found.all, found.without)?.interval ?? null;
+    return {
+      value: Math.exp(found.all),
+      interval: interval === null ? null : [Math.exp(interval[0]), Math.exp(interval[1])],
+    };
+  };
+  return {
+    at(n) {
+      const measured = cells.findIndex((cell) => cell.n === n);
+      return estimate((values) =>
+        measured >= 0 ? (values[measured] ?? NaN) : curve.at(values, Math.log(n)),
+      );
+    },
+    reach: (target) => (target > 0 ? estimate((values) => curve.reach(values, Math.log(target))) : null),
+    plateau,
+    smallest: first.n,
+    largest: last.n,
+    fixedOrder: pseudoRandom,
+  };
+}
+
+interface LogCurve {
+  /** ln s at ln n = x, given ln s at the sizes measured. */
+  at(values: readonly number[], x: number): number;
+  /** ln n at which ln s = y; NaN where it is not reached. */
+  reach(values: readonly number[], y: number): number;
+}
+
+/** s^2 against 1/n by weighted least squares, weights 1 / s^4 (the variance of a sample variance is 2 s^4 / (R - 1)). */
+function squareFit(sizes: readonly number[], values: readonly number[]) {
+  const squares = values.map((value) => Math.exp(2 * value));
+  const inverse = sizes.map((x) => Math.exp(-x));
+  // Relative to the largest size, so that no weight overflows.
+  const scale = squares.at(-1) ?? 1;
+  const weights = squares.map((square) => (scale / square) ** 2);
+  return fitLine(inverse, squares, weights);
+}
+
+function plateauOf(sizes: readonly number[], logs: readonly LeaveOneOut[]): Spread["plateau"] {
+  const level = combine(logs, (values) => squareFit(sizes, values).intercept);
+  const lower = jackknife(level.all, level.without)?.interval[0] ?? 0;
+  // A plateau counts only where s also stopped falling (method of the last three doublings).
+  if (!(lower > 0) || !decayRejected(sizes, logs)) return null;
+  return { value: Math.sqrt(level.all), lower: Math.sqrt(lower) };
+}
+
+/** Slope above which a curve is said to have stopped falling: half the rate of independent points. */
+const STALLED = -0.25;
+
+/**
+ * True where the slope over the last three doublings (four sizes) lies above -1/4 with its whole 95 % interval. Fewer
+ * sizes never reject.
+ */
+export function decayRejected(sizes: readonly number[], logs: readonly LeaveOneOut[]): boolean {
+  const end = sizes.at(-1) ?? 0;
+  const from = sizes.findIndex((x) => x > end - 3 * Math.LN2 - 1e-9);
+  const [x, y] = [sizes.slice(from), logs.slice(from)];
+  if (x.length < 3 || from === 0) return false;
+  const slope = slopeOver(x, y);
+  const interval = jackknife(slope.all, slope.without)?.interval;
+  return interval !== undefined && interval[0] > STALLED;
+}
+
+/** Weighted slope of the logarithms on ln n, replicate by replicate; the weights stay those of all replicates. */
+export function slopeOver(sizes: readonly number[], logs: readonly LeaveOneOut[]): LeaveOneOut {
+  const { slopeCoefficients } = fitLine(
+    sizes,
+    logs.map((log) => log.all),
+    jackknifeWeights(logs),
+  );
+  return combine(logs, (values) =>
+    values.reduce((total, value, i) => total + value * (slopeCoefficients[i] ?? 0), 0),
+  );
+}
+
+function rootCurve(sizes: readonly number[], logs: readonly LeaveOneOut[], plateau: boolean): LogCurve {
+  if (plateau) {
+    const fitted = (values: readonly number[]) => squareFit(sizes, values);
+    return {
+      at(values, x) {
+        const { intercept, slope } = fitted(values);
+        return Math.log(Math.max(0, intercept) + slope * Math.exp(-x)) / 2;
+      },
+      reach(values, y) {
+        const { intercept, slope } = fitted(values);
+        return Math.log(slope / (Math.exp(2 * y) - Math.max(0, intercept)));
+      },
+    };
+  }
+  const weights = jackknifeWeights(logs);
+  const total = weights.reduce((a, b) => a + b, 0);
+  // ln C as the weighted mean of ln(s sqrt(n)).
+  const level = (values: readonly number[]) =>
+    values.reduce((a, value, i) => a + (weights[i] ?? 0) * (value + (sizes[i] ?? 0) / 2), 0) / total;
+  return {
+    at: (values, x) => level(values) - x / 2,
+    reach: (values, y) => 2 * (level(values) - y),
+  };
+}
+
+function polygon(sizes: readonly number[], logs: readonly LeaveOneOut[]): LogCurve {
+  const { slopeCoefficients } = sizes.length > 1 ? fitLine(sizes, sizes, jackknifeWeights(logs)) : noSlope;
+  const slopeOf = (values: readonly number[]) =>
+    values.reduce((total, value, i) => total + value * (slopeCoefficients[i] ?? 0), 0);
+  const last = sizes.length - 1;
+  const size = (i: number) => sizes[i] ?? NaN;
+  return {
+    at(values, x) {
+      const value = (i: number) => values[i] ?? NaN;
+      if (x >= size(last)) return value(last) + slopeOf(values) * (x - size(last));
+      if (x <= size(0)) return value(0) + slopeOf(values) * (x - size(0));
+      const right = sizes.findIndex((s) => s >= x);
+      const share = (x - size(right - 1)) / (size(right) - size(right - 1));
+      return value(right - 1) + share * (value(right) - value(right - 1));
+    },
+    reach(values, y) {
+      const value = (i: number) => values[i] ?? NaN;
+      const slope = slopeOf(values);
+      const beyond = (i: number) => (slope < 0 ? size(i) + (y - value(i)) / slope : NaN);
+      if (value(last) > y) return beyond(last);
+      for (let i = last; i > 0; i--) {
+        if (value(i - 1) > y) {
+          const share = (value(i - 1) - y) / (value(i - 1) - value(i));
+          return size(i - 1) + share * (size(i) - size(i - 1));
+        }
+      }
+      return beyond(0);
+    },
+  };
+}
+
+const noSlope = { slopeCoefficients: [0] };
+
+/** ln RMSE of every usable cell of a series, for its order. */
+export function logErrors(series: Series, reference: number): { sizes: number[]; logs: LeaveOneOut[] } {
+  const cells = usableCells(series);
+  return {
+    sizes: cells.map((cell) => Math.log(cell.n)),
+    logs: cells.map((cell) => logRmse(cell.estimates.map((estimate) => estimate - reference))),
+  };
+}

@@ -1,0 +1,22 @@
+/**
+ * The smallest bias that a two-sided test finds with a given power: (t_{1 - level/2} + t_{power}) standard errors, both
+ * quantiles with the degrees of freedom of the standard error. This is the usual sample-size formula (Snedecor & Cochran,
+ * Statistical Methods, 8th ed. 1989, section 6.14) with t in place of normal quantiles; against the exact non-central t
+ * its power is within one point of the nominal 80 % for 16 degrees of freedom or more.
+ */
+import { normalUpperQuantile } from "./normal.js";
+import { studentUpperQuantile } from "./student.js";
+
+export const DETECTION_POWER = 0.8;
+
+/** `degrees` Infinity means a known standard error (normal quantiles). */
+export function detectableShift(
+  standardError: number,
+  level: number,
+  degrees: number,
+  power = DETECTION_POWER,
+): number {
+  const quantile = (q: number) =>
+    degrees === Infinity ? normalUpperQuantile(q) : studentUpperQuantile(q, degrees);
+  return (quantile(level / 2) + quantile(1 - power)) * standardError;
+}

@@ -8,7 +8,7 @@
 // Bad at: the upper tail ends at 8.2, as nothing between 1 - 2^-53 and 1 is a double.
 // p = 0 gives -infinity, p = 1 gives +infinity; p outside [0, 1] and NaN give NaN.
 import { add, div, mul, sub } from "../vector";
-import { logPositive } from "./log-tail";
+import { logCore, logIsPlain, log_special } from "./log";
 
 // Each table: numerator from the highest power down to the constant, then the denominator likewise.
 const CENTRAL = memory.data<f64>([
@@ -76,7 +76,8 @@ function farQuantile(r: v128): v128 {
 /** The quantile where |q| > 0.425. */
 @inline
 export function tailQuantile(p: v128, q: v128): v128 {
-  let r = f64x2.sqrt(f64x2.neg(logPositive(f64x2.pmin(p, sub(limit(3), p)))));
+  let m = f64x2.pmin(p, sub(limit(3), p));
+  let r = f64x2.sqrt(f64x2.neg(logIsPlain(m) ? logCore(m) : log_special(m)));
   let t = sub(r, limit(4));
   let y = div(polynomial7(t, MIDDLE), polynomial7(t, MIDDLE + 64));
   let far = f64x2.gt(r, limit(5));
@@ -85,8 +86,9 @@ export function tailQuantile(p: v128, q: v128): v128 {
   return v128.or(y, v128.and(q, limit(7)));
 }
 
-function tailOf(p: v128, q: v128): v128 {
-  return tailQuantile(p, q);
+// Exported so that the optimiser keeps it as a call: a spliced kernel carries the central part only.
+export function normalQuantile_special(p: v128): v128 {
+  return tailQuantile(p, fromMiddle(p));
 }
 
 /** Standard normal quantiles of two probabilities; relative error below 1e-15 from p = 5e-324 on. */
@@ -94,6 +96,6 @@ export function vec_normalQuantile(p: v128): v128 {
   let q = fromMiddle(p);
   let y = centralQuantile(q);
   let tail = inTail(q);
-  if (v128.any_true(tail)) y = v128.bitselect(tailOf(p, q), y, tail);
+  if (v128.any_true(tail)) y = v128.bitselect(normalQuantile_special(p), y, tail);
   return y;
 }

@@ -30,4 +30,27 @@ export interface SequenceExports {
   ): void;
   /** The hash word of a prefix under the two key words (32 bits each) at `keys`. */
   owenHash(prefix: number, keys: number): number;
+  /** Builds the tables of Halton records (layout: assembly/sequences/halton.ts); `seeds` 0 leaves the digits as they are. */
+  haltonPrepare(records: number, dimension: number, seeds: number): void;
+  /** Fills `count` points of Halton's sequence from point `index`. */
+  haltonFill(
+    records: number,
+    dimension: number,
+    index: number,
+    pointer: number,
+    stride: number,
+    count: number,
+  ): void;
+  /** Makes `index` the next point of rotations (layout: assembly/sequences/rotation.ts). */
+  rotationSeek(records: number, dimension: number, index: number): void;
+  /** Fills `count` points of rotations from point `index`; `tent` folds every coordinate to 1 - |2u - 1|. */
+  rotationFill(
+    records: number,
+    dimension: number,
+    index: number,
+    pointer: number,
+    stride: number,
+    count: number,
+    tent: boolean,
+  ): void;
 }

@@ -10,14 +10,8 @@
  */
 import type { Kernels } from "../kernels/instance.js";
 import { DIGITS } from "../numeric/gf2.js";
-import type {
-  GeneratingMatrices,
-  OpenRequest,
-  PointStream,
-  Seekable,
-  SourceDescription,
-} from "./contract.js";
-import { checkDimension, checkIndex, chosenRandomisation } from "./quasi-random.js";
+import type { GeneratingMatrices, OpenRequest, PointStream, Seekable, Source } from "./contract.js";
+import { checkIndex, checkOpening } from "./quasi-random.js";
 
 export const NET_RANDOMISATIONS = ["digital-shift", "linear", "owen"] as const;
 
@@ -35,14 +29,13 @@ export interface Net2 {
 
 /** Opens a stream over the first `request.dimension` coordinates of a net. */
 export function openNet2(
-  source: SourceDescription,
+  source: Source,
   net: Net2,
   request: OpenRequest,
   kernels: Kernels,
 ): PointStream & Seekable {
   const { dimension } = request;
-  checkDimension(source, dimension);
-  const randomisation = chosenRandomisation(source, request, NET_RANDOMISATIONS);
+  const randomisation = checkOpening(source, request);
   const { arena, exports } = kernels;
 
   const size = dimension * RECORD_WORDS;

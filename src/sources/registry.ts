@@ -5,11 +5,12 @@ import { mt19937 } from "./mt19937.js";
 import { pcg64 } from "./pcg64.js";
 import { philox4x32 } from "./philox4x32.js";
 import { randu } from "./randu.js";
+import { sobol } from "./sobol.js";
 import { xoshiro256PlusPlus } from "./xoshiro256.js";
 
 /** Every id, in the order of listings; an id without an entry in the table does not compile. */
 export type SourceId =
-  "randu" | "minstd-16807" | "minstd-48271" | "mt19937" | "xoshiro256++" | "pcg64" | "philox4x32";
+  "randu" | "minstd-16807" | "minstd-48271" | "mt19937" | "xoshiro256++" | "pcg64" | "philox4x32" | "sobol";
 
 const sources: Readonly<Record<SourceId, Source>> = {
   randu,
@@ -19,6 +20,7 @@ const sources: Readonly<Record<SourceId, Source>> = {
   "xoshiro256++": xoshiro256PlusPlus,
   pcg64,
   philox4x32,
+  sobol,
 };
 
 export function isSourceId(id: string): id is SourceId {

@@ -14,9 +14,9 @@
  */
 import { readFileSync } from "node:fs";
 import { DIGITS, unpackColumns } from "../numeric/gf2.js";
+import { checkCapacity } from "./capacity.js";
 import type { DigitalNet } from "./contract.js";
 import { NET_RANDOMISATIONS, openNet2 } from "./net2.js";
-import { checkDimension } from "./quasi-random.js";
 
 export const sobol: DigitalNet = {
   id: "sobol",
@@ -33,11 +33,11 @@ export const sobol: DigitalNet = {
   knownStructure: null,
   nearestSize: (n) => n,
   open: (request, kernels) => {
-    checkDimension(sobol, request.dimension);
+    checkCapacity(sobol, request.dimension, request.n);
     return openNet2(sobol, { order: "gray", columns: columnsOf(request.dimension) }, request, kernels);
   },
   generatingMatrices(dimension, n) {
-    checkDimension(sobol, dimension);
+    checkCapacity(sobol, dimension, n);
     const columns = columnsOf(dimension);
     const used = Math.ceil(Math.log2(n));
     return {

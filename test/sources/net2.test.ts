@@ -72,7 +72,7 @@ describe("fill", () => {
       'dimension: expected an integer from 1 to 21201 for source "sobol", found 21202',
     );
     expect(open(2, ["shift"], new Key("k"))).toThrow(
-      'randomisation: source "sobol" can be used plain or with one of "digital-shift", "linear", "owen"; found "shift"',
+      'source: "sobol" does not take "shift"; expected "sobol" or "sobol+digital-shift", "sobol+linear", "sobol+owen"',
     );
     expect(open(2, ["owen"], null)).toThrow('source "sobol+owen" cannot be opened without a key');
     const stream = sobol.open({ dimension: 1, n: 8, randomisations: [], key: null }, kernels);

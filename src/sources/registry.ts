@@ -1,5 +1,7 @@
 /** The table of all sources. Listings, help texts, docs tables, `parseSource` and the shared test laws come from it. */
 import type { Source, SourceDescription } from "./contract.js";
+import { halton } from "./halton.js";
+import { kronecker } from "./kronecker.js";
 import { minstd16807, minstd48271 } from "./minstd.js";
 import { mt19937 } from "./mt19937.js";
 import { pcg64 } from "./pcg64.js";
@@ -10,7 +12,16 @@ import { xoshiro256PlusPlus } from "./xoshiro256.js";
 
 /** Every id, in the order of listings; an id without an entry in the table does not compile. */
 export type SourceId =
-  "randu" | "minstd-16807" | "minstd-48271" | "mt19937" | "xoshiro256++" | "pcg64" | "philox4x32" | "sobol";
+  | "randu"
+  | "minstd-16807"
+  | "minstd-48271"
+  | "mt19937"
+  | "xoshiro256++"
+  | "pcg64"
+  | "philox4x32"
+  | "sobol"
+  | "halton"
+  | "kronecker";
 
 const sources: Readonly<Record<SourceId, Source>> = {
   randu,
@@ -21,6 +32,8 @@ const sources: Readonly<Record<SourceId, Source>> = {
   pcg64,
   philox4x32,
   sobol,
+  halton,
+  kronecker,
 };
 
 export function isSourceId(id: string): id is SourceId {

@@ -1,0 +1,49 @@
+/**
+ * Kronecker's sequence frac(i sqrt(p_j)), p_j the j-th prime (L. Kronecker 1884; R. D. Richtmyer, "The evaluation of
+ * definite integrals, and a quasi-Monte Carlo method based on the properties of algebraic numbers", Los Alamos report
+ * LA-1342, 1951), with the origin kept as point 0. The square roots have 128 bits, so any of the first 2^52 points is as
+ * exact as the first.
+ *
+ * Good for: any number of points, smooth periodic integrands (or `shift+tent`). Bad for: some pairs of coordinates, whose
+ * square roots happen to have a small integer relation; no theorem on its rate covers this choice in many coordinates.
+ */
+import { firstPrimes } from "../numeric/primes.js";
+import type { Source } from "./contract.js";
+import { openRotation, ROTATION_RANDOMISATIONS } from "./rotation.js";
+
+export const kronecker: Source = {
+  id: "kronecker",
+  title: "Kronecker sequence, square roots of primes",
+  citation:
+    "R. D. Richtmyer, The evaluation of definite integrals, and a quasi-Monte Carlo method based on the properties of algebraic numbers, Los Alamos report LA-1342 (1951)",
+  family: "quasi-random",
+  method: "Kronecker sequence",
+  outputBits: 52,
+  period: null,
+  largestDimension: 10_000,
+  nesting: "sequence",
+  randomisations: ROTATION_RANDOMISATIONS,
+  knownStructure: null,
+  nearestSize: (n) => n,
+  open: (request, kernels) => openRotation(kronecker, alphas, request, kernels),
+};
+
+let known: readonly bigint[] = [];
+
+/** frac(sqrt(p)) 2^128 of the first primes, kept for the next call. */
+function alphas(dimension: number): readonly bigint[] {
+  if (known.length < dimension) {
+    known = Array.from(firstPrimes(dimension), (p) => squareRoot(BigInt(p) << 256n) & ((1n << 128n) - 1n));
+  }
+  return known.slice(0, dimension);
+}
+
+/** The whole part of the square root, by Newton's iteration from above. */
+function squareRoot(square: bigint): bigint {
+  let root = 1n << BigInt(Math.ceil(square.toString(2).length / 2));
+  for (;;) {
+    const next = (root + square / root) >> 1n;
+    if (next >= root) return root;
+    root = next;
+  }
+}

@@ -109,6 +109,42 @@ def sine_table():
     table("sine-low.ts", "SINE_LOW_TABLE", head + ["What the sine of SINE_TABLE lacks: sine - high."], lows)
 
 
+def two_over_pi():
+    """Two words of zeros, then 2/pi to 1280 binary digits: enough for the largest double."""
+    with mp.workprec(1400):
+        digits = int(mp.floor(2 / mp.pi * mpf(2) ** 1280))
+    words32 = [0, 0] + [(digits >> (1248 - 32 * i)) & 0xFFFFFFFF for i in range(40)]
+    lines = "\n".join(
+        "    " + " ".join(f"0x{w:08x}," for w in words32[i : i + 7]) for i in range(0, len(words32), 7)
+    )
+    (FOLDER / "two-over-pi.ts").write_text(
+        "// Two words of zeros, then the binary digits of 2/pi behind the point, 32 a word, the leading ones first.\n"
+        "// Made by tools/kernel-tables.py.\n"
+        f"export const TWO_OVER_PI = memory.data<u32>(\n  [\n{lines}\n  ],\n  16,\n);\n"
+    )
+
+
+def arctangent_table():
+    """Cells of |x|: below 2^-6, sixteen an octave from 2^-6 to 2^6, and above."""
+    values = [bits(0.0), bits(1.0), bits(0.0), bits(0.0)]
+    for i in range(192):
+        centre = mpf(2) ** (i // 16 - 6) * (1 + mpf(2 * (i % 16) + 1) / 32)
+        angle = mp.atan(centre)
+        high = double(angle)
+        values += [bits(double(centre)), bits(1.0), bits(high), bits(double(angle - mpf(high)))]
+    high = double(mp.pi / 2)
+    values += [bits(1.0), bits(0.0), bits(high), bits(double(mp.pi / 2 - mpf(high)))]
+    table(
+        "atan.ts",
+        "ATAN_TABLE",
+        [
+            "Entries (p, q, high, low): the middle p/q of a cell and its arctangent in two parts. Cell 0: below 2^-6,",
+            "p/q = 0; cells 1...192: sixteen an octave from 2^-6 to 2^6; cell 193: above, p/q = infinity.",
+        ],
+        values,
+    )
+
+
 def chebyshev(f, a, b, n):
     """Coefficients of the polynomial of degree n - 1 that interpolates f at the Chebyshev points of [a, b]."""
     a, b = mpf(a), mpf(b)
@@ -140,6 +176,8 @@ def main():
     exp_table()
     log_table()
     sine_table()
+    two_over_pi()
+    arctangent_table()
     h = mp.log(2) / 256 * mpf("1.001")
     polynomial("exp: (e^r - 1 - r) / r^2", lambda r: (mp.expm1(r) - r) / r**2, -h, h, 4,
                lambda r, p: (p * r**2 + r) / mp.expm1(r) - 1)
@@ -154,6 +192,11 @@ def main():
                lambda x, p: (root(x) - p * root(x) ** 3) / mp.sin(root(x)) - 1)
     polynomial("cos: (1 - cos r) / r^2 in r^2", lambda x: (1 - mp.cos(root(x))) / x, z / 10**6, z, 3,
                lambda x, p: (1 - p * x) / mp.cos(root(x)) - 1)
+    polynomial("asin: (asin s - s) / s^3 in s^2", lambda x: (mp.asin(root(x)) - root(x)) / root(x) ** 3,
+               mpf(10) ** -8, mpf(1) / 4, 13, lambda x, p: (root(x) + p * root(x) ** 3) / mp.asin(root(x)) - 1)
+    z = (mpf(1) / 64) ** 2 * mpf("1.002")
+    polynomial("atan: (z - atan z) / z^3 in z^2", lambda x: (root(x) - mp.atan(root(x))) / root(x) ** 3,
+               z / 10**6, z, 4, lambda x, p: (root(x) - p * root(x) ** 3) / mp.atan(root(x)) - 1)
 
 
 if __name__ == "__main__":

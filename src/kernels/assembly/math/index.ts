@@ -9,3 +9,7 @@ export { vec_normalQuantile, normalQuantile_special } from "./normal-quantile";
 export { normalBlock, normalBlockScratch } from "./normal-block";
 export { vec_exp, vec_expm1, exp_special, expm1_special } from "./exp";
 export { vec_log, vec_log1p, log_special, log1p_special } from "./log";
+export { pow_special, vec_pow } from "./pow"; // in this order: both inline logThen, and vec_pow calls the other within it
+export { vec_log2, vec_log10, log2_special, log10_special } from "./log-bases";
+export { vec_cbrt, cbrt_special } from "./cbrt";
+export { vec_sin, vec_cos, vec_tan, sin_special, cos_special, tan_special } from "./sine";

@@ -11,6 +11,7 @@
  */
 import type { FillWords, GeneratorExports } from "../kernels/generator-exports.js";
 import { affinePower, applyAffine, type Affine } from "../numeric/affine.js";
+import { coprime } from "../numeric/factor.js";
 import { bitsOf, divisorOf } from "./conversion.js";
 import type { Key } from "./key.js";
 import type { About, Recurrence } from "./pseudo-random.js";
@@ -69,9 +70,4 @@ function unit(key: Key, modulus: bigint): bigint {
     const x = (attempt === 0 ? key : key.derive(`attempt ${attempt}`)).below(modulus);
     if (coprime(x, modulus)) return x;
   }
-}
-
-function coprime(a: bigint, b: bigint): boolean {
-  while (b !== 0n) [a, b] = [b, a % b];
-  return a === 1n;
 }

@@ -61,11 +61,11 @@ export function makeConversion({ output, endpoint, bits }: ConversionRequest, ke
   const scaled = bytes === 4 ? exports.rowsScaled32 : exports.rowsScaled64;
 
   /** `used` bits of the integer from `shift` on, over 2^used. */
-  const binary = (shift: number, used: number): ToRows => {
+  const binary = (shift: number, used: number, added = offset): ToRows => {
     const mask = (1n << BigInt(used)) - 1n;
     const factor = 2 ** -used;
     return (words, dimension, count, out, stride) => {
-      scaled(words, dimension, count, out, stride, shift, mask, offset, factor);
+      scaled(words, dimension, count, out, stride, shift, mask, added, factor);
     };
   };
 
@@ -74,14 +74,14 @@ export function makeConversion({ output, endpoint, bits }: ConversionRequest, ke
     const used = Math.min(bits.count, COORDINATE_BITS);
     return binary(lowest + bits.count - used, used);
   }
-  if (zeroless && length <= COORDINATE_BITS && modulus <= 1n << 52n)
-    return quotient(kernels, 0, Number(modulus));
+  const ratio = zeroless && length <= COORDINATE_BITS;
   if (power) {
     if (endpoint === "middle" && bytes === 4 && length === 32) return exports.rowsMidpoint32;
     if (endpoint === "middle" && bytes === 8 && length === 64) return exports.rowsMidpoint64;
     const used = Math.min(length, COORDINATE_BITS);
-    return binary(length - used, used);
+    return binary(length - used, used, ratio ? 0 : offset);
   }
+  if (ratio) return quotient(kernels, 0, Number(modulus));
   if (length <= COORDINATE_BITS) return quotient(kernels, offset, Number(modulus));
   return fraction(kernels, modulus, binary(64 - COORDINATE_BITS, COORDINATE_BITS));
 }

@@ -7,6 +7,7 @@
  * or a pseudo-random source of the registry in another usage: `{ name: house, source: mt19937, tuples: per-coordinate }`.
  */
 import { z } from "zod";
+import { congruentialPeriod } from "../numeric/congruential-period.js";
 import { parseInteger } from "../numeric/integer-formula.js";
 import { nearest } from "../numeric/nearest.js";
 import { congruential, LARGEST_MODULUS } from "./congruential.js";
@@ -97,6 +98,7 @@ function ownCongruential(name: string, written: NonNullable<Mapping["congruentia
   const modulus = within("congruential.modulus", written.modulus, 2n, LARGEST_MODULUS);
   const multiplier = within("congruential.multiplier", written.multiplier, 1n, modulus - 1n);
   const increment = within("congruential.increment", written.increment ?? 0, 0n, modulus - 1n);
+  const map = { multiplier, increment, modulus };
   const about = {
     id: name,
     title: `${multiplier} x + ${increment} mod ${modulus}`,
@@ -104,20 +106,18 @@ function ownCongruential(name: string, written: NonNullable<Mapping["congruentia
       "the user's own; method: D. H. Lehmer, Mathematical methods in large-scale computing units (1951)",
     method: "congruential",
     outputBits: bitsOf(modulus),
-    period: null,
+    period: congruentialPeriod(map),
     knownStructure: "tuples of successive outputs lie on a lattice",
   };
-  return congruential(about, { multiplier, increment, modulus });
+  return congruential(about, map);
 }
 
 function within(key: string, written: number | string, least: bigint, most: bigint): bigint {
   const value = parseInteger(written, `source.${key}`);
   if (value < least || value > most) {
-    fail(
-      key,
-      value === BigInt(0) || typeof written === "number" ? `${value}` : `"${written}" = ${value}`,
-      `a whole number from ${least} to ${most}`,
-    );
+    const found =
+      typeof written === "number" || /^\d+$/.test(written) ? `${value}` : `"${written}" = ${value}`;
+    fail(key, found, `a whole number from ${least} to ${most}`);
   }
   return value;
 }

@@ -76,6 +76,7 @@ const SCRATCH_WORDS = 2048;
 /** A source made of a generator; another usage of the same generator begins from its `recurrence`. */
 export interface PseudoRandomSource extends IntegerSource {
   readonly recurrence: Recurrence;
+  readonly usage: Usage;
 }
 
 export function isPseudoRandom(source: Source | undefined): source is PseudoRandomSource {
@@ -91,6 +92,7 @@ export function pseudoRandom(
   return {
     ...recurrence.about,
     recurrence,
+    usage,
     family,
     largestDimension: LARGEST_DIMENSION,
     nesting: "sequence",

@@ -13,3 +13,4 @@ export { pow_special, vec_pow } from "./pow"; // in this order: both inline logT
 export { vec_log2, vec_log10, log2_special, log10_special } from "./log-bases";
 export { vec_cbrt, cbrt_special } from "./cbrt";
 export { vec_sin, vec_cos, vec_tan, sin_special, cos_special, tan_special } from "./sine";
+export { sortRows } from "./sort-rows";

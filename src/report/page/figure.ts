@@ -1,0 +1,46 @@
+/** A chart in the page: its finding, what is plotted, the drawing, how to read it, its numbers and its file. */
+import type { Chart, ChartTable } from "../charts/chart.js";
+import { drawForPage } from "../render.js";
+import { type Markup, html, raw } from "./html.js";
+
+/** A table of text cells; numbers to the right. */
+export function dataTable(table: ChartTable): Markup {
+  const kind = (j: number): Markup => raw(table.columns[j]?.align === "right" ? ` class="num"` : "");
+  return html`<div class="scroll" tabindex="0" role="group" aria-label="Table">
+    <table>
+      <thead>
+        <tr>
+          ${table.columns.map((column, j) => html`<th scope="col" ${kind(j)}>${column.title}</th>`)}
+        </tr>
+      </thead>
+      <tbody>
+        ${table.rows.map(
+          (row) =>
+            html`<tr>
+              ${row.map((text, j) => html`<td${kind(j)}>${text}</td>`)}
+            </tr> `,
+        )}
+      </tbody>
+    </table>
+  </div>`;
+}
+
+/** The figure of `chart`. */
+export async function figure(chart: Chart): Promise<Markup> {
+  const drawing = raw(await drawForPage(chart));
+  return html`<figure class="wide" id="${chart.name}">
+    <h4>${chart.title}</h4>
+    <p class="says">${chart.says}</p>
+    <div class="scroll" tabindex="0" role="group" aria-label="Figure: ${chart.title}">${drawing}</div>
+    ${chart.notDrawn.map((note) => html`<p class="aside">${note}</p>`)}
+    <figcaption>${chart.caption}</figcaption>
+    <details>
+      <summary>The numbers</summary>
+      ${dataTable(chart.table)}
+    </details>
+    <p class="aside">
+      <a href="charts/${chart.name}.vl.json">${chart.name}.vl.json</a> (the chart as a Vega-Lite
+      specification)
+    </p>
+  </figure> `;
+}

@@ -1,0 +1,26 @@
+/** Small pieces that several sections share. */
+import type { Verdict } from "../../record/types.js";
+import { VERDICT_SHAPES, VERDICT_WORDS } from "../look.js";
+import type { SourceView } from "../view.js";
+import { type Markup, html } from "./html.js";
+
+/** A verdict: its shape and its word; `outside` stands out by weight and colour too. */
+export function verdictMark(verdict: Verdict): Markup {
+  const shape = html`<span class="shape">${VERDICT_SHAPES[verdict]}</span> `;
+  const word = VERDICT_WORDS[verdict];
+  return verdict === "outside" ? html`<span class="outside">${shape}${word}</span>` : html`${shape}${word}`;
+}
+
+/** A source's name: leads to its section; with the script it is followed through all figures. */
+export function sourceName(view: SourceView, label: string): Markup {
+  return html`<a class="source" href="#source-${view.slug}" data-s="${view.index}">${label}</a>`;
+}
+
+/** Paragraphs of a user's text, split at empty lines. */
+export function paragraphs(text: string): Markup[] {
+  return text
+    .split(/\n\s*\n/)
+    .map((part) => part.trim())
+    .filter((part) => part !== "")
+    .map((part) => html`<p>${part}</p>`);
+}

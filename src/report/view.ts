@@ -1,0 +1,161 @@
+/**
+ * What a report shows, found in a record once: subjects (a problem's output) with one row per source and estimator.
+ * Nothing is computed here; everything is looked up.
+ */
+import type {
+  BiasTest,
+  Budget,
+  Cell,
+  Consensus,
+  Convergence,
+  RecordSource,
+  StudyRecord,
+} from "../record/types.js";
+import type { Problem } from "../problem/contract.js";
+import { FAMILIES, type FamilyLook, type Ink } from "./look.js";
+
+/** A source as a report draws it. */
+export interface SourceView {
+  readonly source: RecordSource;
+  /** Number of the source in the record; names it in the page's markup. */
+  readonly index: number;
+  /** Anchor in the page. */
+  readonly slug: string;
+  readonly family: FamilyLook;
+  readonly ink: Ink;
+}
+
+/** One source (and estimator) on one subject. */
+export interface Row {
+  readonly view: SourceView;
+  readonly estimator: string;
+  /** The source's id, with the estimator where there are several. */
+  readonly label: string;
+  /** In increasing order of n. */
+  readonly cells: readonly Cell[];
+  /** The cell of the largest n, or null. */
+  readonly last: Cell | null;
+  readonly test: BiasTest | null;
+  readonly convergence: Convergence | null;
+  /** The budget of the comparison, not of what is in use. */
+  readonly budget: Budget | null;
+}
+
+/** One output of one problem. */
+export interface Subject {
+  readonly problem: Problem;
+  readonly output: string;
+  /** Anchor in the page and stem of its chart files; letters, digits and hyphens. */
+  readonly slug: string;
+  readonly title: string;
+  readonly consensus: Consensus | null;
+  /** What estimates are held against, or null. */
+  readonly reference: number | null;
+  /** Absolute tolerance, or null where it is not known. */
+  readonly tolerance: number | null;
+  readonly confidence: number;
+  readonly rows: readonly Row[];
+  /** The budget of what is in use, or null. */
+  readonly inUse: Budget | null;
+}
+
+export interface View {
+  readonly record: StudyRecord;
+  readonly subjects: readonly Subject[];
+  readonly sources: readonly SourceView[];
+}
+
+/** Distinct anchors and file stems from names: lower-case letters, digits and hyphens, numbered where they collide. */
+export function slugs(names: readonly string[]): string[] {
+  const taken = new Set<string>();
+  return names.map((name) => {
+    const plain =
+      name
+        .toLowerCase()
+        .replace(/[^a-z0-9]+/g, "-")
+        .replace(/^-+|-+$/g, "")
+        .slice(0, 60) || "unnamed";
+    let slug = plain;
+    for (let i = 2; taken.has(slug); i++) slug = `${plain}-${i}`;
+    taken.add(slug);
+    return slug;
+  });
+}
+
+function viewSources(record: StudyRecord): SourceView[] {
+  const anchors = slugs(record.sources.map((source) => source.id));
+  const seen = new Map<string, number>();
+  return record.sources.map((source, index) => {
+    const family = FAMILIES[source.family];
+    const rank = seen.get(source.family) ?? 0;
+    seen.set(source.family, rank + 1);
+    const step = family.inks[rank % family.inks.length] ?? family.inks[0];
+    return { source, index, slug: anchors[index] ?? "", family, ink: step };
+  });
+}
+
+function subjectRows(
+  record: StudyRecord,
+  problem: string,
+  output: string,
+  sources: readonly SourceView[],
+): Row[] {
+  const here = <T extends { problem: string; output: string }>(all: readonly T[]): T[] =>
+    all.filter((item) => item.problem === problem && item.output === output);
+  const cells = here(record.cells);
+  const [tests, convergence, budgets] = [here(record.tests), here(record.convergence), here(record.budgets)];
+  const estimators = [...new Set(cells.map((cell) => cell.estimator))];
+  const rows: Row[] = [];
+  for (const view of sources) {
+    for (const estimator of estimators) {
+      const mine = (item: { source: string; estimator: string }): boolean =>
+        item.source === view.source.id && item.estimator === estimator;
+      const own = cells.filter(mine).sort((a, b) => a.n - b.n);
+      if (own.length === 0) continue;
+      rows.push({
+        view,
+        estimator,
+        label: estimators.length > 1 ? `${view.source.id}, ${estimator}` : view.source.id,
+        cells: own,
+        last: own[own.length - 1] ?? null,
+        test: tests.find(mine) ?? null,
+        convergence: convergence.find(mine) ?? null,
+        budget: budgets.find((budget) => !budget.inUse && mine(budget)) ?? null,
+      });
+    }
+  }
+  return rows;
+}
+
+/** Finds in `record` what a report shows. */
+export function viewRecord(record: StudyRecord): View {
+  const sources = viewSources(record);
+  const pairs = record.problems.flatMap((problem) => {
+    const outputs = new Set(record.cells.filter((c) => c.problem === problem.id).map((c) => c.output));
+    return (outputs.size === 0 ? [""] : [...outputs]).map((output) => ({
+      problem,
+      output,
+      alone: outputs.size < 2,
+    }));
+  });
+  const anchors = slugs(pairs.map((p) => (p.alone ? p.problem.id : `${p.problem.id}-${p.output}`)));
+  const subjects = pairs.map(({ problem, output, alone }, i): Subject => {
+    const rows = subjectRows(record, problem.id, output, sources);
+    const budgets = record.budgets.filter((b) => b.problem === problem.id && b.output === output);
+    const consensus = record.consensus.find((c) => c.problem === problem.id) ?? null;
+    const held = rows.map((row) => row.last?.reference ?? null).find((value) => value !== null);
+    return {
+      problem,
+      output,
+      slug: anchors[i] ?? "",
+      title: alone ? problem.title : `${problem.title}: ${output}`,
+      consensus,
+      reference: problem.reference?.value ?? held ?? null,
+      tolerance: problem.tolerance.absolute ?? budgets.find((b) => b.tolerance !== null)?.tolerance ?? null,
+      confidence: problem.tolerance.confidence,
+      rows,
+      inUse: budgets.find((budget) => budget.inUse) ?? null,
+    };
+  });
+  return { record, subjects, sources };
+}

@@ -1,0 +1,96 @@
+/**
+ * Writes a report folder. Everything is made in memory before the first file is touched, and each file is written under
+ * another name and then renamed, so that a record that cannot be drawn leaves the folder as it was.
+ */
+import { mkdir, readdir, rename, rm, writeFile } from "node:fs/promises";
+import { dirname, join } from "node:path";
+import { canonicalJson } from "../record/json.js";
+import type { StudyRecord } from "../record/types.js";
+import { chartsOf, everyChart } from "./charts/index.js";
+import { page, reportTitle } from "./page/page.js";
+import { drawForFile } from "./render.js";
+import { summary } from "./summary.js";
+import { viewRecord } from "./view.js";
+
+export interface ReportOptions {
+  /** Also write every chart as SVG, to images/. */
+  readonly images?: boolean;
+  /** False leaves index.html out. */
+  readonly page?: boolean;
+}
+
+/** Paths of what was written; `index` is null where the page was left out. */
+export interface ReportFiles {
+  readonly folder: string;
+  readonly index: string | null;
+  readonly record: string;
+  readonly summary: string;
+  readonly charts: readonly string[];
+  readonly images: readonly string[];
+}
+
+async function writeWhole(path: string, text: string): Promise<void> {
+  const draft = `${path}.${process.pid}.part`;
+  try {
+    await writeFile(draft, text);
+    await rename(draft, path);
+  } catch (error) {
+    await rm(draft, { force: true });
+    throw error;
+  }
+}
+
+/** Removes files that an earlier report left in a folder of ours and that this one does not have. */
+async function clear(folder: string, ending: string, keep: ReadonlySet<string>): Promise<void> {
+  const names = await readdir(folder).catch(() => []);
+  for (const name of names) if (name.endsWith(ending) && !keep.has(name)) await rm(join(folder, name));
+}
+
+/** The text of every file of the report by its path in the folder. */
+export async function reportTexts(
+  record: StudyRecord,
+  options: ReportOptions = {},
+): Promise<Map<string, string>> {
+  const view = viewRecord(record);
+  const set = chartsOf(view);
+  const charts = everyChart(set);
+  const texts = new Map<string, string>();
+  texts.set("record.json", `${canonicalJson(record)}\n`);
+  texts.set("summary.md", summary(view, reportTitle(view)));
+  for (const chart of charts) texts.set(`charts/${chart.name}.vl.json`, `${canonicalJson(chart.spec, 1)}\n`);
+  if (options.images === true) {
+    for (const chart of charts) texts.set(`images/${chart.name}.svg`, await drawForFile(chart));
+  }
+  if (options.page !== false) texts.set("index.html", await page(view, set));
+  return texts;
+}
+
+/**
+ * Writes the report of `record` to `folder`, which is made if need be; files of an earlier report are replaced, other
+ * files are left alone. Rejects with the system's error where the folder cannot be written.
+ */
+export async function writeReport(
+  record: StudyRecord,
+  folder: string,
+  options: ReportOptions = {},
+): Promise<ReportFiles> {
+  const texts = await reportTexts(record, options);
+  const names = [...texts.keys()];
+  const below = (part: string): string[] => names.filter((name) => dirname(name) === part);
+  await mkdir(folder, { recursive: true });
+  for (const [name, text] of texts) {
+    await mkdir(dirname(join(folder, name)), { recursive: true });
+    await writeWhole(join(folder, name), text);
+  }
+  await clear(join(folder, "charts"), ".vl.json", new Set(below("charts").map((name) => name.slice(7))));
+  await clear(join(folder, "images"), ".svg", new Set(below("images").map((name) => name.slice(7))));
+  const at = (name: string): string => join(folder, name);
+  return {
+    folder,
+    index: texts.has("index.html") ? at("index.html") : null,
+    record: at("record.json"),
+    summary: at("summary.md"),
+    charts: below("charts").map(at),
+    images: below("images").map(at),
+  };
+}

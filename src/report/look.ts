@@ -12,7 +12,6 @@
  * drawing serves both schemes.
  */
 import type { Family } from "../sources/contract.js";
-import type { Verdict } from "../record/types.js";
 
 /** A colour in both schemes. The light one is also its name in charts, so no two may share it. */
 export interface Ink {
@@ -126,19 +125,3 @@ export function allInks(): Ink[] {
   const families = FAMILY_ORDER.flatMap((family) => [...FAMILIES[family].inks]);
   return [...Object.values(PAGE), TINTS.none, ...TINTS.above, ...TINTS.below, ...families];
 }
-
-/** The shape of a verdict; it never stands without its word. */
-export const VERDICT_SHAPES: Record<Verdict, string> = {
-  within: "●",
-  outside: "◆",
-  undecided: "◐",
-  none: "–",
-};
-
-/** The word of a verdict. */
-export const VERDICT_WORDS: Record<Verdict, string> = {
-  within: "within",
-  outside: "outside",
-  undecided: "undecided",
-  none: "none",
-};

@@ -1,6 +1,5 @@
 /** The summary: the answers and the verdict tables in Markdown (CommonMark with tables), for reading and for diffs. */
-import { inUseSentence, sentenceFor } from "./sentence.js";
-import { wholeNumber } from "./numbers.js";
+import { formatCount } from "../findings/format.js";
 import { plainText } from "./text-table.js";
 import { type VerdictRow, referenceWords, toleranceWords, verdictRows } from "./verdict-row.js";
 import type { Subject, View } from "./view.js";
@@ -23,14 +22,13 @@ function tableRow(r: VerdictRow): string {
 }
 
 function subjectPart(subject: Subject): string[] {
-  const used = inUseSentence(subject);
   return [
     `## ${escapeMarkdown(subject.title)}`,
     "",
-    escapeMarkdown(`${used === "" ? "" : `${used} `}${sentenceFor(subject)}`),
+    escapeMarkdown([subject.inUseSentence ?? "", subject.answer].join(" ").trim()),
     "",
     escapeMarkdown(
-      `d ${wholeNumber(subject.problem.dimension)}, reference ${referenceWords(subject)}, tolerance ${toleranceWords(subject)}.`,
+      `d ${formatCount(subject.problem.dimension)}, reference ${referenceWords(subject)}, tolerance ${toleranceWords(subject)}.`,
     ),
     "",
     "| Verdict | Source | at n | Total error | Largest line | n to tolerance | Cost |",
@@ -51,7 +49,7 @@ export function summary(view: View, title: string): string {
     "## Provenance",
     "",
     `- Command: ${code(plainText(environment.command))}`,
-    `- Seed ${spec.seed}; ${wholeNumber(family.tests)} tests of bias in one family at level ${family.level}`,
+    `- Seed ${spec.seed}; ${formatCount(family.tests)} tests of bias in one family at level ${family.level}`,
     `- Specification SHA-256 ${specDigest}`,
     `- Estimates SHA-256 ${digest}`,
     `- ${escapeMarkdown(`${environment.program}, Node ${environment.node}, ${environment.platform}`)}`,

@@ -1,16 +1,9 @@
 /** The verdicts of a subject in words: the same cells for the terminal, the summary and the page. */
+import { byEffort } from "../findings/answer.js";
+import { formatCount, formatPercent, formatSeconds, formatValue } from "../findings/format.js";
+import { VERDICT_MARKS, formatReach, referenceText } from "../findings/headline.js";
 import type { Budget, Convergence } from "../record/types.js";
-import { VERDICT_SHAPES, VERDICT_WORDS } from "./look.js";
-import {
-  duration,
-  orDash,
-  percentage,
-  plainNumber,
-  rounded,
-  roughNumber,
-  wholeNumber,
-  withUncertainty,
-} from "./numbers.js";
+import { orDash, plainNumber, withInterval } from "./numbers.js";
 import type { Row, Subject } from "./view.js";
 
 export interface VerdictRow {
@@ -22,38 +15,28 @@ export interface VerdictRow {
   readonly largestLine: string;
   readonly reach: string;
   readonly cost: string;
-  /** Why there is no verdict or an undecided one; empty otherwise. */
-  readonly reason: string;
 }
 
-/** n to tolerance in words: `8,192`, `≈ 2.0 million` where extrapolated, `never`, or `–` where it is not known. */
+/** n to tolerance in words: `≈ 8,200`, `≈ 2.0 million, extrapolated`, `never`, or `–` where it is not known. */
 export function reachWords(convergence: Convergence | null): string {
   if (convergence === null) return "–";
   if (convergence.never) return "never";
-  const reach = convergence.reach;
-  if (reach === null) return "–";
-  return reach.extrapolated ? roughNumber(reach.n) : wholeNumber(reach.n);
+  const { reach } = convergence;
+  return reach === null ? "–" : `${formatReach(reach)}${reach.extrapolated ? ", extrapolated" : ""}`;
 }
 
 /** The total error of a budget with the digits that its interval supports. */
 export function totalWords(budget: Budget | null): string {
-  if (budget === null || budget.total === null) return "–";
-  const interval = budget.totalInterval;
-  const half = interval === null ? null : (interval[1] - interval[0]) / 2;
-  return half !== null && half > 0 ? withUncertainty(budget.total, half) : rounded(budget.total, 2);
+  return orDash(budget?.total, (total) => withInterval(total, budget?.totalInterval ?? null));
 }
 
-/** How sources are ranked: by cost to tolerance, then by n, then those that never reach it, then those without a row. */
+/** Rows by cost to tolerance, then those where it is not known, then those that never reach it. */
 export function ranked(rows: readonly Row[]): Row[] {
-  const place = (row: Row): [number, number] => {
-    const c = row.convergence;
-    if (c !== null && !c.never && c.reach !== null) return [c.cost === null ? 1 : 0, c.cost ?? c.reach.n];
-    return [c?.never ? 3 : 2, row.budget?.total ?? Number.MAX_VALUE];
-  };
-  return rows
-    .map((row, at) => ({ row, at, place: place(row) }))
-    .sort((a, b) => a.place[0] - b.place[0] || a.place[1] - b.place[1] || a.at - b.at)
-    .map(({ row }) => row);
+  const reaching = byEffort(rows.flatMap((row) => row.convergence ?? []));
+  const known = reaching.flatMap((one) => rows.filter((row) => row.convergence === one));
+  const rest = rows.filter((row) => !known.includes(row));
+  const never = rest.filter((row) => row.convergence?.never === true);
+  return [...known, ...rest.filter((row) => !never.includes(row)), ...never];
 }
 
 /** The rows of a subject, cheapest first. */
@@ -62,34 +45,30 @@ export function verdictRows(subject: Subject): VerdictRow[] {
     const verdict = row.budget?.verdict ?? "none";
     return {
       row,
-      shape: VERDICT_SHAPES[verdict],
-      word: VERDICT_WORDS[verdict],
-      n: wholeNumber(row.budget?.n ?? row.last?.n ?? 0),
+      shape: VERDICT_MARKS[verdict],
+      word: verdict,
+      n: formatCount(row.budget?.n ?? row.last?.n ?? 0),
       total: totalWords(row.budget),
       largestLine: row.budget?.largestLine ?? "–",
       reach: reachWords(row.convergence),
-      cost: row.convergence?.never === true ? "–" : orDash(row.convergence?.cost, duration),
-      reason: row.budget?.reason ?? row.test?.reason ?? "",
+      cost: row.convergence?.never === true ? "–" : orDash(row.convergence?.cost, formatSeconds),
     };
   });
 }
 
-/** What estimates are held against: `4.05174 (closed form)`. */
+/** What estimates are held against: `4.05174`, or with a consensus `6.0519 (consensus of 3 sources)`. */
 export function referenceWords(subject: Subject): string {
-  if (subject.reference === null) return "no reference";
-  const own = subject.problem.reference;
-  if (own !== null) return withUncertainty(own.value, own.uncertainty > 0 ? own.uncertainty : null);
-  const error = subject.consensus?.standardError ?? null;
-  const members = subject.consensus?.members.length ?? 0;
-  return `${withUncertainty(subject.reference, error)} (consensus of ${members} sources)`;
+  const { reference, consensus } = subject;
+  if (reference === null) return "not known";
+  const text = referenceText(reference.value, reference.uncertainty);
+  const members = consensus?.members.length ?? 0;
+  return reference.consensus ? `${text} (consensus of ${formatCount(members)} sources)` : text;
 }
 
-/** `tolerance ±0.01 at 99 %`. */
+/** `±0.01 at 99 %`. */
 export function toleranceWords(subject: Subject): string {
+  const confidence = formatPercent(subject.confidence);
+  if (subject.tolerance !== null) return `±${plainNumber(subject.tolerance, 3)} at ${confidence}`;
   const { relative, to } = subject.problem.tolerance;
-  if (subject.tolerance !== null)
-    return `±${plainNumber(subject.tolerance, 4)} at ${percentage(subject.confidence)}`;
-  if (relative !== null)
-    return `${plainNumber(relative, 4)} of the ${to} at ${percentage(subject.confidence)}`;
-  return "none given";
+  return `${formatValue(relative ?? NaN)} of the ${to}, which is not known, at ${confidence}`;
 }

@@ -11,6 +11,9 @@ import type {
   RecordSource,
   StudyRecord,
 } from "../record/types.js";
+import { answerOf } from "../findings/answer.js";
+import { headlinesOf } from "../findings/headline.js";
+import { type KnownReference, referencesOf, toleranceOf } from "../findings/reference.js";
 import type { Problem } from "../problem/contract.js";
 import { FAMILIES, type FamilyLook, type Ink } from "./look.js";
 
@@ -50,13 +53,17 @@ export interface Subject {
   readonly title: string;
   readonly consensus: Consensus | null;
   /** What estimates are held against, or null. */
-  readonly reference: number | null;
+  readonly reference: KnownReference | null;
   /** Absolute tolerance, or null where it is not known. */
   readonly tolerance: number | null;
   readonly confidence: number;
   readonly rows: readonly Row[];
   /** The budget of what is in use, or null. */
   readonly inUse: Budget | null;
+  /** What is said of what is in use, or null where nothing is stated to be. */
+  readonly inUseSentence: string | null;
+  /** The answer in one sentence. */
+  readonly answer: string;
 }
 
 export interface View {
@@ -130,6 +137,8 @@ function subjectRows(
 /** Finds in `record` what a report shows. */
 export function viewRecord(record: StudyRecord): View {
   const sources = viewSources(record);
+  const references = referencesOf(record.problems, record.consensus);
+  const headlines = headlinesOf(record);
   const pairs = record.problems.flatMap((problem) => {
     const outputs = new Set(record.cells.filter((c) => c.problem === problem.id).map((c) => c.output));
     return (outputs.size === 0 ? [""] : [...outputs]).map((output) => ({
@@ -143,18 +152,20 @@ export function viewRecord(record: StudyRecord): View {
     const rows = subjectRows(record, problem.id, output, sources);
     const budgets = record.budgets.filter((b) => b.problem === problem.id && b.output === output);
     const consensus = record.consensus.find((c) => c.problem === problem.id) ?? null;
-    const held = rows.map((row) => row.last?.reference ?? null).find((value) => value !== null);
+    const reference = references.get(problem.id) ?? null;
     return {
       problem,
       output,
       slug: anchors[i] ?? "",
       title: alone ? problem.title : `${problem.title}: ${output}`,
       consensus,
-      reference: problem.reference?.value ?? held ?? null,
-      tolerance: problem.tolerance.absolute ?? budgets.find((b) => b.tolerance !== null)?.tolerance ?? null,
+      reference,
+      tolerance: toleranceOf(problem, reference ?? undefined),
       confidence: problem.tolerance.confidence,
       rows,
       inUse: budgets.find((budget) => budget.inUse) ?? null,
+      inUseSentence: headlines.find((one) => one.problem === problem.id)?.inUse?.sentence ?? null,
+      answer: answerOf(problem, output, record),
     };
   });
   return { record, subjects, sources };

@@ -2,10 +2,21 @@
  * The bias map: problem x source, each cell the bias at the largest n in standard errors. Confirmed biases carry a
  * diamond, so colour is never the only sign.
  */
-import { rounded, signed, wholeNumber } from "../numbers.js";
+import { formatCount, formatPercent, formatValue } from "../../findings/format.js";
+import { signed } from "../numbers.js";
 import { PAGE, TINTS } from "../look.js";
 import type { Row, Subject, View } from "../view.js";
-import { type Chart, type Datum, type Margins, type Spec, Marks, counted, framed, listed } from "./chart.js";
+import {
+  type Chart,
+  type Datum,
+  type Margins,
+  type Spec,
+  Marks,
+  counted,
+  fitted,
+  framed,
+  listed,
+} from "./chart.js";
 import { pixelY, rowLabels } from "./rows-frame.js";
 
 const ROW = 26;
@@ -60,7 +71,7 @@ function standardised(z: number | null): string {
 
 function finding(cells: readonly MapCell[], tests: number, level: number): string {
   const confirmed = cells.filter((c) => c.confirmed);
-  const base = `${counted(tests, "test")} at a family level of ${rounded(level * 100, 2)} %`;
+  const base = `${counted(tests, "test")} at a family level of ${formatPercent(level)}`;
   if (confirmed.length === 0) return `No bias was confirmed in ${base}.`;
   const bySource = new Map<string, string[]>();
   for (const c of confirmed)
@@ -82,7 +93,7 @@ export function biasMap(view: View): Chart | null {
   const data = cells.map((c): Datum => {
     const column = view.subjects.indexOf(c.subject);
     const how = c.z === null ? "no error bar" : `${standardised(c.z)} standard errors`;
-    const about = `${c.row.label} on ${c.subject.title}, n = ${wholeNumber(c.n)}: bias ${
+    const about = `${c.row.label} on ${c.subject.title}, n = ${formatCount(c.n)}: bias ${
       c.bias === null ? "not known" : signed(c.bias, c.error)
     } (${how})${c.confirmed ? "; confirmed on fresh keys" : ""}`;
     return {
@@ -104,7 +115,7 @@ export function biasMap(view: View): Chart | null {
   const x = (field: string): Spec => ({ field, type: "quantitative", ...xScale });
   const y = (field: string): Spec => pixelY(height, field);
   const description = { field: "about", type: "nominal" };
-  const heads = view.subjects.map((s, i) => ({ at: (i + 0.5) * wide, label: s.title }));
+  const heads = view.subjects.map((s, i) => ({ at: (i + 0.5) * wide, label: fitted(s.title, 165) }));
   const sourceLabels = labels.map((label, i): Datum => ({ label, series: label, y: (i + 0.5) * ROW }));
   const layer: Spec[] = [
     {
@@ -137,7 +148,6 @@ export function biasMap(view: View): Chart | null {
         align: "left",
         baseline: "middle",
         color: PAGE.ink.light,
-        limit: 170,
         aria: false,
       },
       encoding: { x: x("at"), y: { value: -10 }, text: { field: "label", type: "nominal" } },
@@ -174,9 +184,9 @@ export function biasMap(view: View): Chart | null {
       rows: cells.map((c) => [
         c.subject.title,
         c.row.label,
-        wholeNumber(c.n),
+        formatCount(c.n),
         c.bias === null ? "–" : signed(c.bias, c.error),
-        c.error === null ? "–" : rounded(c.error),
+        c.error === null ? "–" : formatValue(c.error),
         standardised(c.z),
         c.confirmed ? "◆ confirmed" : "",
       ]),

@@ -3,7 +3,8 @@
  * the smallest bias that the test could have found and the tolerance. The axis is linear within about the tolerance and
  * logarithmic beyond (sign(x) log(1 + |x|/c), c the tolerance) once a bias exceeds three tolerances.
  */
-import { orDash, plainNumber, rounded, signed, wholeNumber } from "../numbers.js";
+import { formatValue, formatCount } from "../../findings/format.js";
+import { plainNumber, signed, orDash } from "../numbers.js";
 import { PAGE } from "../look.js";
 import { toleranceWords } from "../verdict-row.js";
 import type { Row, Subject, View } from "../view.js";
@@ -61,8 +62,8 @@ function finding(all: readonly Found[]): string {
   const rest =
     clear.length === 0
       ? ""
-      : `no bias found in ${biased.length > 0 ? "the other " : ""}${counted(clear.length, "tested source")}, where one of ${rounded(Math.min(...limits))}${
-          clear.length > 1 ? ` to ${rounded(Math.max(...limits))}` : ""
+      : `no bias found in ${biased.length > 0 ? "the other " : ""}${counted(clear.length, "tested source")}, where one of ${formatValue(Math.min(...limits))}${
+          clear.length > 1 ? ` to ${formatValue(Math.max(...limits))}` : ""
         } would have shown`;
   if (biased.length === 0)
     return rest === ""
@@ -102,11 +103,11 @@ export function biasChart(view: View, subject: Subject): Chart | null {
   const { colour, shape } = sourceChannels(all.map((f) => f.row.view));
 
   const data = all.map((f, i): Datum => {
-    const spreadWords = f.error === null ? "no error bar" : `± ${rounded(f.error)} standard error`;
+    const spreadWords = f.error === null ? "no error bar" : `± ${formatValue(f.error)} standard error`;
     const limit =
-      f.detectable === null ? "" : `; smallest bias the test would have found ${rounded(f.detectable)}`;
+      f.detectable === null ? "" : `; smallest bias the test would have found ${formatValue(f.detectable)}`;
     const verdict = f.confirmed ? "; confirmed on fresh keys" : "";
-    const about = `${f.row.label} at n = ${wholeNumber(f.n)}: bias ${signed(f.bias, f.error)} (${spreadWords})${limit}${verdict}`;
+    const about = `${f.row.label} at n = ${formatCount(f.n)}: bias ${signed(f.bias, f.error)} (${spreadWords})${limit}${verdict}`;
     const side = f.confirmed ? "confirmed" : f.detectable === null ? "not tested" : "none found";
     return {
       source: f.row.view.index,
@@ -187,7 +188,6 @@ export function biasChart(view: View, subject: Subject): Chart | null {
         align: "left",
         baseline: "middle",
         color: PAGE.ink.light,
-        limit: MARGINS.right - 16,
       },
       encoding: {
         x: { value: WIDTH + 12 },
@@ -225,11 +225,11 @@ export function biasChart(view: View, subject: Subject): Chart | null {
       ],
       rows: all.map((f, i) => [
         f.row.label,
-        wholeNumber(f.n),
+        formatCount(f.n),
         signed(f.bias, f.error),
-        f.error === null ? "–" : rounded(f.error),
-        f.detectable === null ? "–" : rounded(f.detectable),
-        orDash(f.row.test?.pValueAdjusted, rounded),
+        f.error === null ? "–" : formatValue(f.error),
+        f.detectable === null ? "–" : formatValue(f.detectable),
+        orDash(f.row.test?.pValueAdjusted, formatValue),
         String(data[i]?.["side"] ?? ""),
       ]),
     },

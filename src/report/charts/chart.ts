@@ -224,6 +224,21 @@ export function sourceChannels(views: readonly SourceView[]): {
   };
 }
 
-/** Labels of powers of ten as a Vega expression: 0.001 and above in full, smaller ones as 1e−4. */
+/** Labels of powers of ten as a Vega expression: 0.001 and above in full, smaller ones as 1e-4. */
 export const POWER_LABELS =
-  "abs(datum.value) < 0.0009 && datum.value != 0 ? replace(format(datum.value, '.0e'), 'e-', 'e\u2212') : format(datum.value, ',~g')";
+  "abs(datum.value) < 0.0009 && datum.value != 0 ? format(datum.value, '.0e') : format(datum.value, ',~g')";
+
+/** Width of an average letter at 12 pixels, for cutting labels; Vega without a canvas can only guess widths, too wide. */
+const LETTER = 6.6;
+
+/** A label that fits into `pixels`, cut with an ellipsis. */
+export function fitted(label: string, pixels: number): string {
+  const most = Math.max(3, Math.floor(pixels / LETTER));
+  const letters = [...label];
+  return letters.length <= most
+    ? label
+    : `${letters
+        .slice(0, most - 1)
+        .join("")
+        .trimEnd()}…`;
+}

@@ -1,5 +1,5 @@
 /** Cost to tolerance: seconds of one thread until one estimate keeps the tolerance, a row per problem, a mark per source. */
-import { duration, wholeNumber, roughNumber } from "../numbers.js";
+import { formatCount, formatSeconds } from "../../findings/format.js";
 import { PAGE } from "../look.js";
 import type { Row, Subject, View } from "../view.js";
 import {
@@ -10,6 +10,7 @@ import {
   Marks,
   counted,
   familyKey,
+  fitted,
   framed,
   listed,
   powersOfTen,
@@ -29,6 +30,10 @@ interface Priced {
   readonly cost: number;
   readonly n: number;
   readonly extrapolated: boolean;
+}
+
+function roughly(n: number): string {
+  return `≈ ${formatCount(n, true)}`;
 }
 
 function priced(view: View): Priced[] {
@@ -85,8 +90,8 @@ export function costToTolerance(view: View): Chart | null {
   const marks = new Marks();
   const { colour, shape } = sourceChannels([...new Set(all.map((p) => p.row.view))]);
   const data = all.map((p): Datum => {
-    const points = p.extrapolated ? `${roughNumber(p.n)} points, extrapolated` : `${wholeNumber(p.n)} points`;
-    const about = `${p.row.label} on ${p.subject.title}: ${duration(p.cost)} to tolerance (${points})`;
+    const points = p.extrapolated ? `${roughly(p.n)} points, extrapolated` : `${roughly(p.n)} points`;
+    const about = `${p.row.label} on ${p.subject.title}: ${formatSeconds(p.cost)} to tolerance (${points})`;
     return {
       source: p.row.view.index,
       series: marks.name(p.row.view, p.row.label),
@@ -94,7 +99,7 @@ export function costToTolerance(view: View): Chart | null {
       y: (view.subjects.indexOf(p.subject) + 0.5) * STEP,
       cost: p.cost,
       extrapolated: p.extrapolated,
-      label: p.row.label,
+      label: fitted(p.row.label, WIDTH * LABEL_SHARE - 14),
       best: cheapestOf(all, p.subject) === p,
     };
   });
@@ -105,7 +110,9 @@ export function costToTolerance(view: View): Chart | null {
   }));
   const never = view.subjects.flatMap((s, i): Datum[] => {
     const labels = neverIn(s);
-    return labels.length === 0 ? [] : [{ y: (i + 0.5) * STEP, label: `never: ${listed(labels, 2)}` }];
+    return labels.length === 0
+      ? []
+      : [{ y: (i + 0.5) * STEP, label: fitted(`never: ${listed(labels, 2)}`, MARGINS.right - 16) }];
   });
   const x = {
     field: "cost",
@@ -140,7 +147,7 @@ export function costToTolerance(view: View): Chart | null {
     })),
     {
       data: { values: data.filter((d) => d["best"]) },
-      mark: { type: "text", align: "right", baseline: "middle", dx: -9, limit: WIDTH * LABEL_SHARE },
+      mark: { type: "text", align: "right", baseline: "middle", dx: -9 },
       encoding: { x, y, text: { field: "label", type: "nominal" }, color: colour, description: byName },
     },
     rowLabels(rowText, height, MARGINS.left - 16, null),
@@ -151,7 +158,6 @@ export function costToTolerance(view: View): Chart | null {
         align: "left",
         baseline: "middle",
         color: PAGE.ink.light,
-        limit: MARGINS.right - 16,
         aria: false,
       },
       encoding: { x: { value: WIDTH + 12 }, y, text: { field: "label", type: "nominal" } },
@@ -185,8 +191,8 @@ export function costToTolerance(view: View): Chart | null {
       rows: all.map((p) => [
         p.subject.title,
         p.row.label,
-        p.extrapolated ? roughNumber(p.n) : wholeNumber(p.n),
-        duration(p.cost),
+        `${roughly(p.n)}${p.extrapolated ? ", extrapolated" : ""}`,
+        formatSeconds(p.cost),
       ]),
     },
     spec: framed({ title, says, alt: title, width: WIDTH, height, margins: MARGINS, layer }),

@@ -2,7 +2,8 @@
  * Error against n, log-log: one line per source, its interval at each n, the tolerance as a line, and two reference
  * slopes (-1/2, what independent points give; -1). Lines join measured points only.
  */
-import { plainNumber, rounded, wholeNumber } from "../numbers.js";
+import { formatCount, formatInterval, formatValue } from "../../findings/format.js";
+import { orDash, plainNumber, withInterval } from "../numbers.js";
 import { PAGE } from "../look.js";
 import { toleranceWords } from "../verdict-row.js";
 import type { Row, Subject, View } from "../view.js";
@@ -15,6 +16,7 @@ import {
   Marks,
   counted,
   familyKey,
+  fitted,
   framed,
   listed,
   powersOfTen,
@@ -60,7 +62,7 @@ function finding(subject: Subject, points: readonly Point[]): string {
   const never = subject.rows.filter((row) => row.convergence?.never === true);
   const judged = subject.rows.filter((row) => row.budget !== null && row.budget.verdict !== "none");
   const within = judged.filter((row) => row.budget?.verdict === "within");
-  const lead = `${best.row.label} errs least, by ${rounded(best.rmse)} at ${wholeNumber(best.n)} points`;
+  const lead = `${best.row.label} errs least, by ${formatValue(best.rmse)} at ${formatCount(best.n)} points`;
   if (never.length > 0)
     return `${lead}; ${listed(never.map((r) => r.label))} never ${never.length === 1 ? "comes" : "come"} within the tolerance.`;
   if (judged.length === 0) return `${lead}.`;
@@ -80,13 +82,11 @@ function table(subject: Subject): ChartTable {
   const rows = subject.rows.flatMap((row) =>
     row.cells.map((cell) => [
       row.label,
-      wholeNumber(cell.n),
-      cell.rmse === null ? "–" : rounded(cell.rmse, 3),
-      cell.rmseInterval === null
-        ? "–"
-        : `${rounded(cell.rmseInterval[0], 3)} to ${rounded(cell.rmseInterval[1], 3)}`,
-      cell.replicateDeviation === null ? "–" : rounded(cell.replicateDeviation, 3),
-      wholeNumber(cell.replicates),
+      formatCount(cell.n),
+      orDash(cell.rmse, (rmse) => withInterval(rmse, cell.rmseInterval)),
+      cell.rmseInterval === null ? "–" : formatInterval(cell.rmseInterval),
+      orDash(cell.replicateDeviation, formatValue),
+      formatCount(cell.replicates),
     ]),
   );
   return { columns, rows };
@@ -140,8 +140,8 @@ export function errorAgainstN(view: View, subject: Subject): Chart | null {
 
   const data = points.map((p): Datum => {
     const interval =
-      p.high === null ? "no error bar" : `95 % interval ${rounded(p.low ?? 0)} to ${rounded(p.high)}`;
-    const about = `${p.row.label} at n = ${wholeNumber(p.n)}: RMSE ${rounded(p.rmse, 3)} (${interval})`;
+      p.high === null ? "no error bar" : `95 % interval ${formatValue(p.low ?? 0)} to ${formatValue(p.high)}`;
+    const about = `${p.row.label} at n = ${formatCount(p.n)}: RMSE ${formatValue(p.rmse)} (${interval})`;
     return {
       source: p.row.view.index,
       series: marks.name(p.row.view, p.row.label),
@@ -165,7 +165,14 @@ export function errorAgainstN(view: View, subject: Subject): Chart | null {
   const labels = ends.map((p, i): Datum => {
     const at = top * (bottom / top) ** ((places[i] ?? 0) / HEIGHT);
     const series = marks.name(p.row.view, p.row.label);
-    return { source: p.row.view.index, series, n: p.n, rmse: p.rmse, at, label: labelFor(p.row) };
+    return {
+      source: p.row.view.index,
+      series,
+      n: p.n,
+      rmse: p.rmse,
+      at,
+      label: fitted(labelFor(p.row), MARGINS.right - 20),
+    };
   });
 
   const start: [number, number] = [sizes[0] ?? 1, top / 1.3];
@@ -183,13 +190,13 @@ export function errorAgainstN(view: View, subject: Subject): Chart | null {
     type: "quantitative",
     title: "root mean square error (log scale)",
     scale: { type: "log", domain: [bottom, top], nice: false },
-    axis: { values: powersOfTen(bottom, top), labelExpr: POWER_LABELS },
+    axis: { values: powersOfTen(bottom, top), labelExpr: POWER_LABELS, titleX: -50 },
   };
   const description = { field: "about", type: "nominal" };
   const byName = { field: "series", type: "nominal" };
   const layer: Spec[] = [
     ...guideLayers(guides, x, y),
-    ...toleranceLayers(subject, left, y),
+    ...toleranceLine(subject, y),
     {
       data: { values: data },
       mark: { type: "line", strokeWidth: 1.6 },
@@ -212,7 +219,7 @@ export function errorAgainstN(view: View, subject: Subject): Chart | null {
     },
     {
       data: { values: labels },
-      mark: { type: "text", align: "left", baseline: "middle", limit: MARGINS.right - 20 },
+      mark: { type: "text", align: "left", baseline: "middle" },
       encoding: {
         x: { value: WIDTH + 16 },
         y: { ...y, field: "at" },
@@ -221,11 +228,12 @@ export function errorAgainstN(view: View, subject: Subject): Chart | null {
         description: byName,
       },
     },
+    ...toleranceLabel(subject, y),
   ];
 
   const title = finding(subject, points);
   const says = `Root mean square error of the estimate over replicates, in units of the quantity, against points n per replicate.`;
-  const lowest = ends.map((p) => `${p.row.label} ${rounded(p.rmse)} at n = ${wholeNumber(p.n)}`);
+  const lowest = ends.map((p) => `${p.row.label} ${formatValue(p.rmse)} at n = ${formatCount(p.n)}`);
   return {
     name: `error-against-n-${subject.slug}`,
     title,
@@ -288,24 +296,21 @@ function guideLayers(guides: readonly Datum[], x: Spec, y: Spec): Spec[] {
   ];
 }
 
-function toleranceLayers(subject: Subject, left: number, y: Spec): Spec[] {
+function toleranceLine(subject: Subject, y: Spec): Spec[] {
   if (subject.tolerance === null) return [];
-  const values = [
-    { n: left, rmse: subject.tolerance, label: `tolerance ${plainNumber(subject.tolerance, 4)}` },
-  ];
-  const text = { type: "text", align: "left", baseline: "bottom", dy: -4, fontSize: 12, aria: false };
+  const mark = { type: "rule", color: PAGE.tolerance.light, strokeWidth: 1.4, aria: false };
+  return [{ data: { values: [{ rmse: subject.tolerance }] }, mark, encoding: { y } }];
+}
+
+/** The word beside the line, drawn last and on a halo of paper, since curves may cross it. */
+function toleranceLabel(subject: Subject, y: Spec): Spec[] {
+  if (subject.tolerance === null) return [];
+  const values = [{ rmse: subject.tolerance, label: `tolerance ${plainNumber(subject.tolerance, 3)}` }];
+  const text = { type: "text", align: "left", baseline: "bottom", dy: -4, aria: false };
   const encoding = { x: { value: 6 }, y, text: { field: "label", type: "nominal" } };
+  const halo = { color: PAGE.paper.light, stroke: PAGE.paper.light, strokeWidth: 4 };
   return [
-    {
-      data: { values },
-      mark: { type: "rule", color: PAGE.tolerance.light, strokeWidth: 1.4, aria: false },
-      encoding: { y },
-    },
-    {
-      data: { values },
-      mark: { ...text, color: PAGE.paper.light, stroke: PAGE.paper.light, strokeWidth: 4 },
-      encoding,
-    },
+    { data: { values }, mark: { ...text, ...halo }, encoding },
     { data: { values }, mark: { ...text, color: PAGE.tolerance.light }, encoding },
   ];
 }

@@ -1,5 +1,6 @@
 /** Orders of convergence with their intervals: a row per source, in it a mark per problem. */
-import { rounded, signed } from "../numbers.js";
+import { formatValue } from "../../findings/format.js";
+import { signed } from "../numbers.js";
 import { FAMILY_ORDER, PAGE } from "../look.js";
 import type { Row, Subject, View } from "../view.js";
 import {
@@ -25,7 +26,7 @@ interface Fitted {
   readonly interval: readonly [number, number] | null;
 }
 
-function fitted(view: View): Fitted[] {
+function fits(view: View): Fitted[] {
   return view.subjects.flatMap((subject) =>
     subject.rows.flatMap((row): Fitted[] => {
       const order = row.convergence?.order ?? null;
@@ -41,7 +42,8 @@ function finding(all: readonly Fitted[]): string {
     const orders = all.filter((f) => f.row.view.source.family === family).map((f) => f.order);
     if (orders.length === 0) return [];
     const [high, low] = [Math.max(...orders), Math.min(...orders)];
-    const span = orders.length === 1 ? `is ${rounded(high)}` : `from ${rounded(high)} to ${rounded(low)}`;
+    const span =
+      orders.length === 1 ? `is ${formatValue(high)}` : `from ${formatValue(high)} to ${formatValue(low)}`;
     return [`${span} for ${family === "own" ? "your own sources" : `${family} sources`}`];
   });
   return `The error falls with orders ${parts.join(", ")}.`.replace("orders is", "order");
@@ -54,7 +56,7 @@ function dodge(problems: number): number {
 
 /** The chart over all sources, or null where no order was fitted. */
 export function orders(view: View): Chart | null {
-  const all = fitted(view);
+  const all = fits(view);
   if (all.length === 0) return null;
   const labels = FAMILY_ORDER.flatMap((family) => {
     const rows = all.filter((f) => f.row.view.source.family === family);
@@ -71,14 +73,14 @@ export function orders(view: View): Chart | null {
     const words =
       f.interval === null
         ? "no interval"
-        : `95 % interval ${rounded(f.interval[0])} to ${rounded(f.interval[1])}`;
+        : `95 % interval ${formatValue(f.interval[0])} to ${formatValue(f.interval[1])}`;
     const place = (view.subjects.indexOf(f.subject) - (view.subjects.length - 1) / 2) * gap;
     return {
       source: f.row.view.index,
       series: marks.name(f.row.view, f.row.label),
       about: marks.values(
         f.row.view,
-        `${f.row.label} on ${f.subject.title}: order ${rounded(f.order)} (${words})`,
+        `${f.row.label} on ${f.subject.title}: order ${formatValue(f.order)} (${words})`,
       ),
       y: (labels.indexOf(f.row.label) + 0.5) * step + place,
       order: f.order,
@@ -153,7 +155,7 @@ export function orders(view: View): Chart | null {
         f.row.label,
         f.subject.title,
         signed(f.order, f.interval === null ? 0.1 : (f.interval[1] - f.interval[0]) / 2),
-        f.interval === null ? "–" : `${rounded(f.interval[0])} to ${rounded(f.interval[1])}`,
+        f.interval === null ? "–" : `${formatValue(f.interval[0])} to ${formatValue(f.interval[1])}`,
       ]),
     },
     spec: framed({ title, says, alt: title, width: WIDTH, height, margins: MARGINS, layer }),

@@ -1,6 +1,6 @@
 /** Charts with one line of text per row at the left (sources or problems): places, labels and rulings. */
 import { PAGE } from "../look.js";
-import type { Datum, Spec } from "./chart.js";
+import { type Datum, type Spec, fitted } from "./chart.js";
 
 /** A quantitative y in pixels from the top, without an axis. */
 export function pixelY(height: number, field = "y"): Spec {
@@ -20,13 +20,12 @@ export function rowLabels(
   colour: Spec | null,
 ): Spec {
   return {
-    data: { values: labels },
+    data: { values: labels.map((one) => ({ ...one, label: fitted(String(one["label"]), limit) })) },
     mark: {
       type: "text",
       align: "right",
       baseline: "middle",
       dx: -10,
-      limit,
       ...(colour === null ? { color: PAGE.ink.light } : {}),
     },
     encoding: {

@@ -1,5 +1,4 @@
 /** The first section: one sentence per problem, and the verdicts of every problem and source. */
-import { inUseSentence, sentenceFor } from "../sentence.js";
 import type { View } from "../view.js";
 import { type Markup, html } from "./html.js";
 import { sourceName, verdictMark } from "./parts.js";
@@ -67,11 +66,11 @@ function controls(view: View): Markup {
 /** The section. */
 export function answerSection(view: View): Markup {
   const sentences = view.subjects.map((subject, i) => {
-    const used = inUseSentence(subject);
+    const used = subject.inUseSentence;
     return html`<li data-p="${i}">
       <strong><a href="#problem-${subject.slug}">${subject.title}</a>.</strong> ${
-        used === "" ? null : html`${used} `
-      }${sentenceFor(subject)}
+        used !== null && html`${used} `
+      }${subject.answer}
     </li> `;
   });
   const incomplete = view.record.environment.complete

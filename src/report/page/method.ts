@@ -1,11 +1,13 @@
 /** The last section: how the study was done, what its words mean, what to beware of, and how to repeat it. */
-import { duration, percentage, wholeNumber } from "../numbers.js";
+import { formatCount, formatSeconds, formatPercent } from "../../findings/format.js";
 import type { View } from "../view.js";
 import { type Markup, html } from "./html.js";
 
 function statistics(view: View): Markup {
   const { family, spec } = view.record;
-  const replicates = [...new Set(Object.values(spec.replicates))].sort((a, b) => a - b).map(wholeNumber);
+  const replicates = [...new Set(Object.values(spec.replicates))]
+    .sort((a, b) => a - b)
+    .map((n) => formatCount(n));
   return html`<h3>Method</h3>
     <p>
       Each source gives an estimate of each integral at several numbers of points n, once in each of
@@ -18,11 +20,11 @@ function statistics(view: View): Markup {
       <strong>Bias</strong> is the mean error over replicates; its standard error joins the spread of the
       replicates and the uncertainty of the reference. It is tested once per problem and source, at the
       largest n: by Student's t, or by the exact binomial test where the integrand is a condition. All
-      ${wholeNumber(family.tests)} tests of this study form one family, held at a false-alarm level of
-      ${percentage(family.level)} by the step-down procedure of Holm (1979). A rejection is only a candidate;
-      it is called a bias when it is found again on fresh keys with 256 replicates, the level being split
-      between the two stages. Beside every “none found” stands the smallest bias that the test would have
-      found with 80 % power.
+      ${formatCount(family.tests)} tests of this study form one family, held at a false-alarm level of
+      ${formatPercent(family.level)} by the step-down procedure of Holm (1979). A rejection is only a
+      candidate; it is called a bias when it is found again on fresh keys with 256 replicates, the level being
+      split between the two stages. Beside every “none found” stands the smallest bias that the test would
+      have found with 80 % power.
     </p>
     <p>
       <strong>RMSE</strong> is the root mean square error over replicates. Its interval is a jackknife of its
@@ -94,7 +96,7 @@ function provenance(view: View): Markup {
       <dt>Run</dt>
       <dd>
         ${environment.started} to ${environment.finished}
-        (${duration(environment.seconds)})${!environment.complete && ", interrupted"}
+        (${formatSeconds(environment.seconds)})${!environment.complete && ", interrupted"}
       </dd>
       <dt>Data</dt>
       <dd><a href="record.json">record.json</a> holds every estimate; this report can be redrawn from it.</dd>

@@ -4,7 +4,7 @@
  */
 import { createHash } from "node:crypto";
 import { type ChartSet } from "../charts/index.js";
-import { wholeNumber } from "../numbers.js";
+import { formatCount } from "../../findings/format.js";
 import type { View } from "../view.js";
 import { answerSection } from "./answer.js";
 import { figure } from "./figure.js";
@@ -57,7 +57,7 @@ function contents(view: View, across: boolean): Markup {
 export function reportTitle(view: View): string {
   const [first] = view.subjects;
   if (first !== undefined && view.subjects.length === 1) return first.title;
-  return `Error of integration on ${wholeNumber(view.subjects.length)} problems`;
+  return `Error of integration on ${formatCount(view.subjects.length)} problems`;
 }
 
 /** The text of index.html. */
@@ -92,8 +92,8 @@ export async function page(view: View, charts: ChartSet): Promise<string> {
             <header>
               <h1>${title}</h1>
               <p class="soft">
-                ${wholeNumber(view.sources.length)} sources of points,
-                ${wholeNumber(view.record.cells.length)} measurements, seed ${view.record.spec.seed}.
+                ${formatCount(view.sources.length)} sources of points,
+                ${formatCount(view.record.cells.length)} measurements, seed ${view.record.spec.seed}.
                 <a href="#provenance">How to repeat it</a>.
               </p>
             </header>

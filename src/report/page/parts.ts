@@ -1,14 +1,15 @@
 /** Small pieces that several sections share. */
 import type { Verdict } from "../../record/types.js";
-import { VERDICT_SHAPES, VERDICT_WORDS } from "../look.js";
+import { VERDICT_MARKS } from "../../findings/headline.js";
 import type { SourceView } from "../view.js";
 import { type Markup, html } from "./html.js";
 
 /** A verdict: its shape and its word; `outside` stands out by weight and colour too. */
 export function verdictMark(verdict: Verdict): Markup {
-  const shape = html`<span class="shape">${VERDICT_SHAPES[verdict]}</span> `;
-  const word = VERDICT_WORDS[verdict];
-  return verdict === "outside" ? html`<span class="outside">${shape}${word}</span>` : html`${shape}${word}`;
+  const shape = html`<span class="shape">${VERDICT_MARKS[verdict]}</span> `;
+  return verdict === "outside"
+    ? html`<span class="outside">${shape}${verdict}</span>`
+    : html`${shape}${verdict}`;
 }
 
 /** A source's name: leads to its section; with the script it is followed through all figures. */

@@ -2,8 +2,8 @@
 import type { Input } from "../../problem/contract.js";
 import type { Chart } from "../charts/chart.js";
 import { canonicalJson } from "../../record/json.js";
-import { plainNumber, rounded, wholeNumber } from "../numbers.js";
-import { inUseSentence, sentenceFor } from "../sentence.js";
+import { formatValue, formatCount } from "../../findings/format.js";
+import { plainNumber } from "../numbers.js";
 import type { Subject } from "../view.js";
 import { reachWords, referenceWords, toleranceWords, verdictRows } from "../verdict-row.js";
 import { dataTable, figure } from "./figure.js";
@@ -11,7 +11,7 @@ import { type Markup, html } from "./html.js";
 import { paragraphs, sourceName, verdictMark } from "./parts.js";
 
 function inputWords(input: Input): string {
-  return `${input.name}: ${input.length === null ? "" : `${wholeNumber(input.length)} `}${input.distribution}`;
+  return `${input.name}: ${input.length === null ? "" : `${formatCount(input.length)} `}${input.distribution}`;
 }
 
 /** Constants longer than this are cut; the record holds them whole. */
@@ -26,7 +26,9 @@ function referenceBasis(subject: Subject): Markup | null {
   const own = subject.problem.reference;
   if (own !== null) {
     const exact =
-      own.uncertainty > 0 ? `standard uncertainty ${rounded(own.uncertainty)}` : "exact to double precision";
+      own.uncertainty > 0
+        ? `standard uncertainty ${formatValue(own.uncertainty)}`
+        : "exact to double precision";
     return html`<br /><span class="soft">${own.basis}; ${exact}</span>`;
   }
   const consensus = subject.consensus;
@@ -34,10 +36,10 @@ function referenceBasis(subject: Subject): Markup | null {
   const members = consensus.members.map((m) => m.source).join(", ");
   const agreement = consensus.agreed ? "they agree" : "they do not agree";
   const error =
-    consensus.standardError === null ? "" : `; standard error ${rounded(consensus.standardError)}`;
+    consensus.standardError === null ? "" : `; standard error ${formatValue(consensus.standardError)}`;
   return html`<br /><span class="soft"
-      >No reference was given; it stands on ${members}; ${agreement} (Cochran's Q ${rounded(consensus.q)}, p =
-      ${rounded(consensus.pValue)})${error}</span
+      >No reference was given; it stands on ${members}; ${agreement} (Cochran's Q ${formatValue(consensus.q)},
+      p = ${formatValue(consensus.pValue)})${error}</span
     >`;
 }
 
@@ -46,7 +48,7 @@ function facts(subject: Subject): Markup {
   const constants = Object.entries(problem.constants).map(([name, value]) => constantWords(name, value));
   return html`<dl>
     <dt>Inputs</dt>
-    <dd>${problem.inputs.map(inputWords).join("; ")} (d = ${wholeNumber(problem.dimension)})</dd>
+    <dd>${problem.inputs.map(inputWords).join("; ")} (d = ${formatCount(problem.dimension)})</dd>
     ${
       constants.length > 0 &&
       html`<dt>Constants</dt>
@@ -105,7 +107,7 @@ function budgetTable(subject: Subject): Markup {
       row.label,
       line.line,
       line.kind === "bias" ? "bound of a bias" : "standard deviation",
-      line.value === null ? "not assessed" : rounded(line.value),
+      line.value === null ? "not assessed" : formatValue(line.value),
       line.basis,
     ]),
   );
@@ -131,7 +133,7 @@ function remarks(subject: Subject): Markup[] {
     const more = first.inputs.length > 6 ? ", …" : "";
     return [
       html`<p class="aside">
-        ${row.label}: ${wholeNumber(count)} non-finite values at n = ${wholeNumber(worst.n)}; the first is
+        ${row.label}: ${formatCount(count)} non-finite values at n = ${formatCount(worst.n)}; the first is
         ${first.value} in replicate ${first.replicate}, point ${first.index}, inputs
         (${inputs.join(", ")}${more}).
       </p>`,
@@ -158,11 +160,11 @@ export async function problemSection(
 ): Promise<Markup> {
   const figures: Markup[] = [];
   for (const chart of charts) figures.push(await figure(chart));
-  const used = inUseSentence(subject);
+  const used = subject.inUseSentence;
   const intervals = subject.rows.filter((row) => (row.convergence?.reach?.interval ?? null) !== null);
   const reach = intervals.map((row) => {
     const [low, high] = row.convergence?.reach?.interval ?? [0, 0];
-    return [row.label, reachWords(row.convergence), `${wholeNumber(low)} to ${wholeNumber(high)}`];
+    return [row.label, reachWords(row.convergence), `${formatCount(low)} to ${formatCount(high)}`];
   });
   const reachColumns = [
     { title: "Source", align: "left" },
@@ -171,7 +173,7 @@ export async function problemSection(
   ] as const;
   return html`<section class="item problem" id="problem-${subject.slug}" data-section data-p="${at}">
     <h3>${subject.title}</h3>
-    <p>${used === "" ? null : html`${used} `}${sentenceFor(subject)}</p>
+    <p>${used !== null && html`${used} `}${subject.answer}</p>
     ${paragraphs(subject.problem.about)} ${facts(subject)} ${ranking(subject)} ${remarks(subject)}
     ${budgetTable(subject)}
     ${

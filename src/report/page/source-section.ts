@@ -1,5 +1,6 @@
 /** The section of one source: what it is, what is known of it, and where it fails in this study. */
-import { orDash, rounded, signed, wholeNumber } from "../numbers.js";
+import { formatValue, formatCount } from "../../findings/format.js";
+import { signed, orDash } from "../numbers.js";
 import type { Verdict } from "../../record/types.js";
 import { listed } from "../charts/chart.js";
 import type { Row, SourceView, Subject, View } from "../view.js";
@@ -41,7 +42,7 @@ function facts({ source, family }: SourceView): Markup {
       ? null
       : source.period.length <= 21
         ? wholeFigures(source.period)
-        : `about ${rounded(Number(source.period))}`;
+        : `about ${formatValue(Number(source.period))}`;
   const randomised =
     source.randomisations.length > 0
       ? source.randomisations.join(", ")
@@ -82,11 +83,11 @@ export function sourceSection(view: View, source: SourceView): Markup {
   const rows = met.map(({ subject, row }) => {
     const tested = row.cells.find((cell) => cell.n === row.test?.n) ?? row.last;
     const bias = orDash(tested?.bias, (value) => signed(value, tested?.biasStandardError ?? null));
-    const detectable = orDash(row.test?.detectableBias, rounded);
+    const detectable = orDash(row.test?.detectableBias, formatValue);
     return html`<tr data-p="${view.subjects.indexOf(subject)}">
       <td>${verdictMark(row.budget?.verdict ?? "none")}</td>
       <th scope="row"><a href="#problem-${subject.slug}">${subject.title}</a></th>
-      <td class="num">${wholeNumber(row.budget?.n ?? row.last?.n ?? 0)}</td>
+      <td class="num">${formatCount(row.budget?.n ?? row.last?.n ?? 0)}</td>
       <td class="num">${totalWords(row.budget)}</td>
       <td class="num">${bias}${row.test?.confirmed === true && " ◆ confirmed"}</td>
       <td class="num">${detectable}</td>

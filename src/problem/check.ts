@@ -3,6 +3,7 @@
  * own, so that one wrong key does not hide the next.
  */
 import { z } from "zod";
+import { FUNCTIONS, NAMED_NUMBERS, RESERVED_WORDS } from "../formula/index.js";
 import type { Declared, Input, InUse, Problem, Reference, Tolerance } from "./contract.js";
 import { DEFAULT_CONFIDENCE, LIMITS } from "./defaults.js";
 import type { YamlDocument } from "./document.js";
@@ -14,8 +15,13 @@ import { problemSchema, suiteSchema } from "./schema.js";
 import type { ProblemFile, SuiteFile } from "./schema.js";
 import { checkStudy } from "./study.js";
 
-/** Names that plain JavaScript objects already have: data keyed by name would mistake them for entries. */
-const TAKEN = new Set(Object.getOwnPropertyNames(Object.prototype));
+/** Names with a meaning of their own. Those of plain objects are among them: data keyed by name would find them. */
+const TAKEN = new Map<string, string>([
+  ...Object.getOwnPropertyNames(Object.prototype).map((name) => [name, "is reserved"] as const),
+  ...Object.keys(NAMED_NUMBERS).map((name) => [name, "is a number of the formula language"] as const),
+  ...Object.keys(FUNCTIONS).map((name) => [name, "is a function of the formula language"] as const),
+  ...RESERVED_WORDS.map((name) => [name, "is a word of the formula language"] as const),
+]);
 
 const CONFIDENCE: Range = {
   what: "a confidence above 0.5 and below 1, such as 0.99",
@@ -48,7 +54,8 @@ function parts<S extends z.ZodRawShape>(
 
 function checkNames(names: readonly string[], section: string, others: Constants, findings: Findings): void {
   for (const name of names) {
-    if (TAKEN.has(name)) findings.addKey([section, name], `the name "${name}" is reserved; take another`);
+    const taken = TAKEN.get(name);
+    if (taken !== undefined) findings.addKey([section, name], `the name "${name}" ${taken}; take another`);
     else if (Object.hasOwn(others, name)) {
       findings.addKey([section, name], `"${name}" is an input and a constant; give one of them another name`);
     }
@@ -185,9 +192,11 @@ export async function checkProblem(document: YamlDocument, id: string): Promise<
   const findings = new Findings(document);
   const file = parts(problemSchema, findings);
   const numbers = new NumberReader(findings);
+  const names = Object.keys(file.constants ?? {});
+  checkNames(names, "constants", {}, findings);
+  const malformed = file.constants === undefined && document.has(["constants"]);
+  numbers.formulas = !malformed && !names.some((name) => TAKEN.has(name));
   const constants = await readConstants(file.constants, numbers, findings);
-  if (file.constants === undefined && document.has(["constants"])) numbers.formulas = false;
-  checkNames(Object.keys(constants), "constants", {}, findings);
   checkNames(Object.keys(file.inputs ?? {}), "inputs", constants, findings);
   const inputs = await checkInputs(file.inputs ?? {}, numbers, findings);
   const reference =

@@ -1,5 +1,21 @@
 /** A problem as the engine runs it: transforms of uniform coordinates into inputs, then the compiled integrand. */
+import { FormulaError } from "../formula/contract.js";
+import type { CompiledFormula, FormulaScope } from "../formula/contract.js";
+import { compileFormula } from "../formula/index.js";
 import type { Problem, Transform } from "./contract.js";
+import { ProblemError } from "./errors.js";
+import type { LoadedProblem } from "./load.js";
+
+export interface CompiledProblem {
+  readonly formula: CompiledFormula;
+  /** In order of coordinates; to be done on a block before the formula is called. */
+  readonly transforms: readonly Transform[];
+}
+
+/** The names that the integrand of a problem may use. */
+export function scopeOf({ inputs, constants }: Problem): FormulaScope {
+  return { inputs: inputs.map(({ name, length, first }) => ({ name, length, first })), constants };
+}
 
 /** The passes that turn uniform coordinates into inputs, in order; neighbouring ones of one kind are one pass. */
 export function transformsOf(problem: Problem): Transform[] {
@@ -13,4 +29,21 @@ export function transformsOf(problem: Problem): Transform[] {
     } else transforms.push({ kind: distribution, first, rows });
   }
   return transforms;
+}
+
+/** Compiles a problem. Throws FormulaError with the place inside the integrand. */
+export async function compileProblem(problem: Problem): Promise<CompiledProblem> {
+  const formula = await compileFormula(problem.integrand, scopeOf(problem));
+  return { formula, transforms: transformsOf(problem) };
+}
+
+/** Compiles a problem that was loaded from a file. Throws ProblemError with the place in that file. */
+export async function compileLoaded({ problem, document }: LoadedProblem): Promise<CompiledProblem> {
+  try {
+    return await compileProblem(problem);
+  } catch (error) {
+    if (!(error instanceof FormulaError)) throw error;
+    const place = document.inside(["integrand"], error.position);
+    throw new ProblemError([{ file: document.file, ...place, message: `integrand: ${error.message}` }]);
+  }
 }

@@ -2,7 +2,6 @@
  * Numbers of a problem file: digits, powers of whole numbers, or formulas of constants. Digits and powers are read
  * here; only a real formula wakes the formula language (0.8 s to load).
  */
-import { FormulaError } from "../formula/contract.js";
 import type { Constant } from "./contract.js";
 
 const DIGITS = /^[-+]?(\d+\.?\d*|\.\d+)(e[-+]?\d+)?$/i;
@@ -24,23 +23,6 @@ export function plainNumber(text: string): number | null {
 export async function numberOf(text: string, constants: Readonly<Record<string, Constant>>): Promise<number> {
   const plain = plainNumber(text);
   if (plain !== null) return plain;
-  // Stands in until the formula language offers its own evaluation of constants.
-  const math = await import("mathjs");
-  const scope: Record<string, unknown> = { ...constants };
-  const each = (f: (x: number) => number) => {
-    const go = (x: unknown): unknown =>
-      typeof x === "number" ? f(x) : Array.isArray(x) ? x.map(go) : math.isMatrix(x) ? go(x.valueOf()) : NaN;
-    return go;
-  };
-  for (const name of ["exp", "sin", "cos", "atan", "expm1", "log", "sqrt"] as const)
-    scope[name] = each((x) => Math[name](x));
-  scope["erf"] = each((x) => math.erf(x));
-  scope["normalCdf"] = each((x) => (1 + math.erf(x / Math.SQRT2)) / 2);
-  scope["normalPdf"] = each((x) => Math.exp((-x * x) / 2) / Math.sqrt(2 * Math.PI));
-  try {
-    const result: unknown = math.parse(text).evaluate(scope);
-    return Number(math.isResultSet(result) ? result.valueOf().at(-1) : result);
-  } catch (error) {
-    throw new FormulaError(error instanceof Error ? error.message : String(error), { line: 1, column: 1 });
-  }
+  const { evaluateConstant } = await import("../formula/index.js");
+  return evaluateConstant(text, constants);
 }

@@ -3,7 +3,7 @@ import { FormulaError } from "../formula/contract.js";
 import type { Constant } from "./contract.js";
 import type { Path } from "./document.js";
 import { show } from "./errors.js";
-import { numberOf } from "./evaluate.js";
+import { numberOf, plainNumber } from "./evaluate.js";
 import type { Findings } from "./findings.js";
 import type { ProblemFile } from "./schema.js";
 
@@ -42,7 +42,7 @@ export class NumberReader {
   async read(raw: Raw, path: Path, range: Range): Promise<number | null> {
     let value: number;
     try {
-      if (typeof raw === "string" && !this.formulas) return null;
+      if (typeof raw === "string" && !this.formulas && plainNumber(raw) === null) return null;
       value = typeof raw === "number" ? raw : await numberOf(raw, this.constants);
     } catch (error) {
       if (!(error instanceof FormulaError)) throw error;
@@ -94,6 +94,6 @@ export async function readConstants(
       }
     }
   }
-  numbers.formulas = !broken;
+  if (broken) numbers.formulas = false;
   return constants;
 }

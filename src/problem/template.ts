@@ -19,20 +19,21 @@ inputs:
 # Numbers, vectors [1, 2, 3] and matrices [[1, 2], [3, 4]]. A text is a formula of those before it.
 constants:
   expected: 100
-  floor: 95
+  guaranteed: 95
   deviation: "0.2 * expected"
 
 # The integrand: assignments, then the value on the last line. \`tolerand functions\` lists what it may use.
 integrand: |
   output = expected + deviation * z
-  max(floor - mean(output), 0)
+  max(guaranteed - mean(output), 0)
 
 # The exact value if it is known: digits, or a formula of the constants. Without it, three sound sources of different
 # families must agree, and their mean stands in.
 reference:
   value: |
     s = deviation / sqrt(12)
-    (floor - expected) * normalCdf((floor - expected) / s) + s * normalPdf((floor - expected) / s)
+    gap = guaranteed - expected
+    gap * normalCdf(gap / s) + s * normalPdf(gap / s)
   basis: The mean of 12 independent normal outputs is normal; E max(k - X, 0) for a normal X by integration.
 
 # The largest acceptable error, and how surely: absolute, or relative to the reference ({ relative: 1e-3 }).

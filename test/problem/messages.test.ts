@@ -250,6 +250,16 @@ describe("meaning", () => {
     ]);
   });
 
+  test("broken constants are not repeated by the formulas that use them", async () => {
+    const reference = "{ value: a + 1, basis: arithmetic }";
+    expect(
+      await refusal(fileWith({ constants: "{ pi: 3, a: pi / 2 }", reference, study: '{ seed: "-1" }' })),
+    ).toEqual([
+      'case.yaml:4:14: the name "pi" is a number of the formula language; take another',
+      'case.yaml:6:16: study.seed: expected a whole number from 0 to 2^53 - 1, found -1 (from "-1")',
+    ]);
+  });
+
   test("many findings are cut and counted", async () => {
     const text = fileWith() + Array.from({ length: 30 }, (_, i) => `wrong${i}: 1\n`).join("");
     const lines = await refusal(text);

@@ -3,7 +3,9 @@
  * own, so that one wrong key does not hide the next.
  */
 import { z } from "zod";
-import { FUNCTIONS, NAMED_NUMBERS, RESERVED_WORDS } from "../formula/index.js";
+import { FormulaError } from "../formula/contract.js";
+import type { FormulaScope } from "../formula/contract.js";
+import { FUNCTIONS, NAMED_NUMBERS, RESERVED_WORDS, compileFormula } from "../formula/index.js";
 import type { Declared, Input, InUse, Problem, Reference, Tolerance } from "./contract.js";
 import { DEFAULT_CONFIDENCE, LIMITS } from "./defaults.js";
 import type { YamlDocument } from "./document.js";
@@ -187,11 +189,22 @@ async function checkInUse(
   return points === null ? null : { source: file.source, points, secondsPerPoint };
 }
 
+async function checkIntegrand(text: string, scope: FormulaScope, findings: Findings): Promise<void> {
+  if (text === "") return;
+  try {
+    await compileFormula(text, scope);
+  } catch (error) {
+    if (!(error instanceof FormulaError)) throw error;
+    findings.addFormula(["integrand"], error);
+  }
+}
+
 /** The problem in a file. Throws ProblemError with every finding. */
 export async function checkProblem(document: YamlDocument, id: string): Promise<Problem> {
   const findings = new Findings(document);
   const file = parts(problemSchema, findings);
   const numbers = new NumberReader(findings);
+  const misshapen = findings.issues.length;
   const names = Object.keys(file.constants ?? {});
   checkNames(names, "constants", {}, findings);
   const malformed = file.constants === undefined && document.has(["constants"]);
@@ -199,6 +212,10 @@ export async function checkProblem(document: YamlDocument, id: string): Promise<
   const constants = await readConstants(file.constants, numbers, findings);
   checkNames(Object.keys(file.inputs ?? {}), "inputs", constants, findings);
   const inputs = await checkInputs(file.inputs ?? {}, numbers, findings);
+  // A formula whose names are broken would only repeat that.
+  if (inputs.length > 0 && !malformed && findings.issues.length === misshapen) {
+    await checkIntegrand(file.integrand ?? "", { inputs, constants }, findings);
+  }
   const reference =
     file.reference === undefined ? null : await checkReference(file.reference, numbers, findings);
   const unit = reference?.value ?? "later";

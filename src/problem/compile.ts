@@ -1,10 +1,7 @@
 /** A problem as the engine runs it: transforms of uniform coordinates into inputs, then the compiled integrand. */
-import { FormulaError } from "../formula/contract.js";
 import type { CompiledFormula, FormulaScope } from "../formula/contract.js";
 import { compileFormula } from "../formula/index.js";
 import type { Problem, Transform } from "./contract.js";
-import { ProblemError } from "./errors.js";
-import type { LoadedProblem } from "./load.js";
 
 export interface CompiledProblem {
   readonly formula: CompiledFormula;
@@ -31,19 +28,8 @@ export function transformsOf(problem: Problem): Transform[] {
   return transforms;
 }
 
-/** Compiles a problem. Throws FormulaError with the place inside the integrand. */
+/** Compiles a problem. Throws FormulaError where the integrand is refused, which a problem from a file never is. */
 export async function compileProblem(problem: Problem): Promise<CompiledProblem> {
   const formula = await compileFormula(problem.integrand, scopeOf(problem));
   return { formula, transforms: transformsOf(problem) };
-}
-
-/** Compiles a problem that was loaded from a file. Throws ProblemError with the place in that file. */
-export async function compileLoaded({ problem, document }: LoadedProblem): Promise<CompiledProblem> {
-  try {
-    return await compileProblem(problem);
-  } catch (error) {
-    if (!(error instanceof FormulaError)) throw error;
-    const place = document.inside(["integrand"], error.position);
-    throw new ProblemError([{ file: document.file, ...place, message: `integrand: ${error.message}` }]);
-  }
 }

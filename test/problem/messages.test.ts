@@ -290,6 +290,7 @@ describe("what is accepted", () => {
     const { inputs, dimension } = await problemIn(
       fileWith({
         constants: "{ weeks: 64 }",
+        integrand: "sum(a) + b + sum(c)",
         inputs:
           "{ a: { distribution: normal, length: weeks / 2 }, b: { distribution: uniform }, c: { distribution: normal, length: 2^3 } }",
       }),

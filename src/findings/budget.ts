@@ -60,6 +60,7 @@ export function budgetOf(
     samplingLine(series, sigma, n, spread, factor, confidence),
     structure,
     referenceLine(reference, confidence),
+    ...declaredLines(problem),
   ];
   return { ...empty, ...judge({ lines, structure, sigma, factor, spread, series, empty }) };
 }
@@ -117,6 +118,13 @@ function referenceLine(reference: KnownReference | undefined, confidence: number
   return { ...line, value, interval: value === 0 ? null : [0, value], basis };
 }
 
+/** The user's own contributions (a time step, model inputs), taken at their word. */
+function declaredLines(problem: Problem): BudgetLine[] {
+  return (problem.declared ?? []).map(({ line, kind, value, basis }) => {
+    return { line, kind, value, interval: null, basis: `declared: ${basis}` };
+  });
+}
+
 export function isExtrapolated(spread: Spread | null, n: number): boolean {
   return spread !== null && (n > EXTRAPOLATION * spread.largest || n * EXTRAPOLATION < spread.smallest);
 }
@@ -134,17 +142,24 @@ interface Case {
 function judge(given: Case): Partial<Budget> {
   const { lines, structure, sigma, factor, series, empty } = given;
   const { tolerance, confidence } = empty;
-  const contribution = (line: BudgetLine) => (line.value ?? 0) * (line.kind === "random" ? factor : 1);
-  const biases = lines
-    .filter((line) => line.kind === "bias")
-    .reduce((sum, line) => sum + (line.value ?? 0), 0);
-  const total = biases + factor * sigma.value;
+  const sizes = (kind: BudgetLine["kind"]) =>
+    lines.filter((line) => line.kind === kind).map((line) => line.value ?? 0);
+  const biases = sizes("bias").reduce((sum, value) => sum + value, 0);
+  const declaredBiases = biases - (structure.value ?? 0);
+  // Random lines in quadrature, with the sampling line at the value given.
+  const others = Math.sqrt(Math.max(0, Math.hypot(...sizes("random")) ** 2 - sigma.value ** 2));
+  const random = (value: number) => Math.hypot(value, others);
   const heavy = series.last.heavyTailed;
   const widest = heavy ? Math.max(factor, 1 / Math.sqrt(1 - confidence)) : factor;
-  const low = structure.lower + factor * (sigma.interval?.[0] ?? 0);
-  const high = biases + widest * (sigma.interval?.[1] ?? Infinity);
+  const upper = random(sigma.interval?.[1] ?? Infinity);
+  const total = biases + factor * random(sigma.value);
+  // Declared biases count in full at both ends; the reference's error may as well be nothing.
+  const reference = lines.find((line) => line.line === "reference")?.value ?? 0;
+  const low = structure.lower + (declaredBiases - reference) + factor * random(sigma.interval?.[0] ?? 0);
+  const high = biases + widest * upper;
+  const contribution = (line: BudgetLine) => (line.value ?? 0) * (line.kind === "random" ? factor : 1);
   const largest = lines.reduce((a, b) => (contribution(b) > contribution(a) ? b : a));
-  const { verdict, reason } = decide(given, low, high, factor * (sigma.interval?.[1] ?? Infinity));
+  const { verdict, reason } = decide(given, low, high, biases + factor * upper);
   return {
     lines: lines.map(({ line, kind, value, interval, basis }) => ({ line, kind, value, interval, basis })),
     total,
@@ -160,7 +175,8 @@ function decide(
   given: Case,
   low: number,
   high: number,
-  samplingHigh: number,
+  /** Upper end of the total if the errors were normal. */
+  normalHigh: number,
 ): { verdict: Verdict; reason: string | null } {
   const { structure, spread, series, empty } = given;
   const tolerance = empty.tolerance ?? NaN;
@@ -173,7 +189,7 @@ function decide(
     return { verdict: "undecided", reason };
   }
   if (high <= tolerance) return { verdict: "within", reason: null };
-  if (series.last.heavyTailed && structure.value + samplingHigh <= tolerance) {
+  if (series.last.heavyTailed && normalHigh <= tolerance) {
     const reason = "the errors are heavy-tailed: their measured deviation is a lower bound only";
     return { verdict: "undecided", reason };
   }

@@ -100,11 +100,15 @@ function reachOf(
   const { confidence } = problem.tolerance;
   const structure = structureLine(series, test, context, confidence);
   const uncertainty = context.references.get(series.problem)?.uncertainty ?? 0;
+  const declared = (kind: "bias" | "random") =>
+    (problem.declared ?? []).filter((line) => line.kind === kind).map((line) => line.value);
   const bias =
     (structure.confirmed ? (structure.value ?? 0) : 0) +
-    uncertainty * normalUpperQuantile((1 - confidence) / 2);
+    uncertainty * normalUpperQuantile((1 - confidence) / 2) +
+    declared("bias").reduce((sum, value) => sum + value, 0);
   const factor = studentFactor(confidence, series.last.replicates - 1);
-  const found = spread.reach((tolerance - bias) / factor);
+  const room = Math.max(0, tolerance - bias) / factor;
+  const found = spread.reach(Math.sqrt(Math.max(0, room ** 2 - Math.hypot(...declared("random")) ** 2)));
   if (found === null) return null;
   // Below the smallest size nothing was measured: it is enough that the smallest keeps the tolerance.
   const atLeast = (n: number) => Math.max(Math.ceil(n), spread.smallest);

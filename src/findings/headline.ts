@@ -68,12 +68,12 @@ function budgetsOf(problem: Problem, record: StudyRecord): Budget[] {
 
 function verdictSentences(problem: Problem, record: StudyRecord): string[] {
   const budgets = budgetsOf(problem, record);
-  const named = (verdict: Verdict) =>
-    budgets.filter((one) => one.verdict === verdict).map((one) => nameOf(one, budgets));
+  const named = (verdict: Verdict, detail: (one: Budget) => string) =>
+    budgets.filter((one) => one.verdict === verdict).map((one) => nameOf(one, budgets) + detail(one));
   const sentences: string[] = [];
-  const within = named("within");
-  const outside = named("outside");
-  const undecided = named("undecided");
+  const within = named("within", () => "");
+  const outside = named("outside", (one) => ` (${whatHelps(one, record)})`);
+  const undecided = named("undecided", () => "");
   if (within.length > 0)
     sentences.push(`Within the tolerance at the largest number of points: ${list(within)}.`);
   if (outside.length > 0) sentences.push(`Outside it: ${list(outside)}.`);
@@ -81,6 +81,16 @@ function verdictSentences(problem: Problem, record: StudyRecord): string[] {
   const cheapest = cheapestReach(problem, record);
   if (cheapest !== null) sentences.push(cheapest);
   return sentences;
+}
+
+/** The largest line of a budget outside its tolerance, and how many points would do. */
+function whatHelps(budget: Budget, record: StudyRecord): string {
+  const key = seriesKey(budget);
+  const found = record.convergence.find((one) => seriesKey(one) === key);
+  const line = budget.largestLine ?? "no line";
+  if (found?.never === true) return `${line}; no number of points would do`;
+  if (found === undefined || found.reach === null) return line;
+  return `${line}; ${formatReach(found.reach)} points would do`;
 }
 
 /** A source's id; its estimator and output only where there are several of them. */
@@ -108,8 +118,12 @@ function cheapestReach(problem: Problem, record: StudyRecord): string | null {
   return `The least effort for it: ${best.source} with ${formatReach(best.reach)} points${time}${far}.`;
 }
 
-/** The n to tolerance in words: fitted, so "≈" and two digits, but for the smallest size measured. */
+/**
+ * The n to tolerance in words: fitted, so "≈" and two digits; exact where even the smallest size measured keeps the
+ * tolerance (its interval is then that one size).
+ */
 export function formatReach(reach: NonNullable<Convergence["reach"]>): string {
+  if (reach.interval !== null && reach.interval[0] === reach.interval[1]) return formatCount(reach.n);
   return `\u2248 ${formatCount(reach.n, true)}`;
 }
 

@@ -25,6 +25,18 @@ export function oneSample(values: readonly number[], expected: number, uncertain
   return { t, degrees, pValue: studentTwoSided(t, degrees) };
 }
 
+/**
+ * Two-sided p-value of t = `standardised` from `count` values of skewness `skew`, by Hall's transformation, which takes the
+ * first effect of skewness out: with w = t / sqrt(count), g = w + a w^2 + a^2 w^3 / 3 + skew / (6 count), a = skew / 3, and
+ * sqrt(count) g is compared with Student's t (Hall, J. R. Statist. Soc. B 54 (1992) 221-228).
+ */
+export function skewedTwoSided(standardised: number, skew: number, count: number): number {
+  const w = standardised / Math.sqrt(count);
+  const a = skew / 3;
+  const g = w + a * w * w + (a * a * w * w * w) / 3 + skew / (6 * count);
+  return studentTwoSided(Math.sqrt(count) * g, count - 1);
+}
+
 /** Means with weights 1 / error^2 and their homogeneity. */
 export interface Pooled {
   readonly value: number;

@@ -173,7 +173,8 @@ export interface Convergence {
 export type Verdict = "within" | "outside" | "undecided" | "none";
 
 export interface BudgetLine {
-  readonly line: "sampling" | "source structure" | "reference";
+  /** "sampling", "source structure", "reference", or the name of a contribution that the problem declares. */
+  readonly line: string;
   readonly kind: "bias" | "random";
   /** Size: a bound for a bias line, one standard deviation for a random line; null where it could not be assessed. */
   readonly value: number | null;

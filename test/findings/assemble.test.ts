@@ -1,44 +1,10 @@
 /** From raw cells to verdicts: the rules of the record's statistics on small invented studies with known truth. */
 import { describe, expect, it } from "vitest";
-import { assembleRecord, candidatesOf, type Assembly } from "../../src/findings/assemble.js";
-import { CONFIRMATION_REPLICATES } from "../../src/findings/bias.js";
+import { assembleRecord, candidatesOf } from "../../src/findings/assemble.js";
 import { exitCodeOf, headlinesOf } from "../../src/findings/headline.js";
 import type { Problem } from "../../src/problem/contract.js";
 import type { RawCell, RecordSource } from "../../src/record/types.js";
-import { makeCell, makeProblem, makeSeries, makeSource, makeSpec, normals } from "./make.js";
-
-const environment = {
-  program: "tolerand",
-  node: "v20",
-  platform: "test",
-  threads: 1,
-  started: "",
-  finished: "",
-  seconds: 0,
-  command: "",
-  complete: true,
-};
-
-function assembly(rawCells: RawCell[], changes: Partial<Assembly> = {}): Assembly {
-  const problems = changes.problems ?? [makeProblem("p")];
-  return {
-    spec: makeSpec(problems),
-    environment,
-    problems,
-    sources: [makeSource("philox4x32")],
-    rawCells,
-    consensus: [],
-    confirmations: [],
-    warnings: [],
-    ...changes,
-  };
-}
-
-function confirmationOf(bias: number, deviation: number, source = "philox4x32", n = 4096) {
-  const normal = normals(99);
-  const estimates = Array.from({ length: CONFIRMATION_REPLICATES }, () => 1 + bias + deviation * normal());
-  return { problem: "p", source, estimator: "crude", output: "mean", n, estimates };
-}
+import { makeAssembly, makeCell, makeConfirmation, makeProblem, makeSeries, makeSource } from "./make.js";
 
 function problemInUse(source: string, points: number, tolerance: number): Problem {
   return makeProblem("p", {
@@ -57,7 +23,7 @@ describe("a sound pseudo-random source", () => {
     [0.02, "outside"],
   ])("with a tolerance of %d is %s", (absolute, verdict) => {
     const tolerance = { absolute, relative: null, to: "reference", confidence: 0.99 };
-    const record = assembleRecord(assembly(cells, { problems: [makeProblem("p", { tolerance })] }));
+    const record = assembleRecord(makeAssembly(cells, { problems: [makeProblem("p", { tolerance })] }));
     expect(record.budgets.map((budget) => budget.verdict)).toEqual([verdict]);
     expect(record.budgets[0]?.largestLine).toBe("sampling");
     expect(record.tests[0]?.confirmed).toBe(false);
@@ -65,19 +31,19 @@ describe("a sound pseudo-random source", () => {
 
   it("is never `outside` by the structure line alone", () => {
     // Between the sampling part's upper limit and the total's: only what the study could not exclude is too large.
-    const first = assembleRecord(assembly(cells)).budgets[0] ?? expect.fail();
+    const first = assembleRecord(makeAssembly(cells)).budgets[0] ?? expect.fail();
     const structure = first.lines[1]?.value ?? NaN;
     expect(structure).toBeGreaterThan(0);
     const absolute = (first.totalInterval?.[1] ?? NaN) - structure / 2;
     const tolerance = { absolute, relative: null, to: "reference", confidence: 0.99 };
-    const budget = assembleRecord(assembly(cells, { problems: [makeProblem("p", { tolerance })] }))
+    const budget = assembleRecord(makeAssembly(cells, { problems: [makeProblem("p", { tolerance })] }))
       .budgets[0];
     expect(budget?.verdict).toBe("undecided");
     expect(budget?.reason).toMatch(/no bias was confirmed, but this study cannot exclude one of up to/);
   });
 
   it("has an order near -1/2 and reaches the tolerance where k sigma / sqrt(n) does", () => {
-    const record = assembleRecord(assembly(cells));
+    const record = assembleRecord(makeAssembly(cells));
     const [found] = record.convergence;
     expect(found?.orderInterval?.[0]).toBeLessThan(-0.5);
     expect(found?.orderInterval?.[1]).toBeGreaterThan(-0.5);
@@ -92,7 +58,7 @@ describe("a sound pseudo-random source", () => {
   });
 
   it("spreads as crude Monte Carlo does", () => {
-    const record = assembleRecord(assembly(cells));
+    const record = assembleRecord(makeAssembly(cells));
     // s^2 n / sigma^2 of 32 replicates: 1 within 31 degrees of freedom, 0.4 to 1.9 is its 99.8 % range.
     expect(record.cells[4]?.varianceAgainstCrude).toBeGreaterThan(0.4);
     expect(record.cells[4]?.varianceAgainstCrude).toBeLessThan(1.9);
@@ -107,12 +73,12 @@ describe("a biased source", () => {
   const raw = cells.map((cell) => ({ ...cell, source: "randu" }));
 
   it("is a candidate, and only fresh keys confirm it", () => {
-    const given = assembly(raw, { sources });
+    const given = makeAssembly(raw, { sources });
     expect(candidatesOf(given).map((test) => [test.source, test.n])).toEqual([["randu", 4096]]);
     const before = assembleRecord(given);
     expect(before.tests[0]).toMatchObject({ candidate: true, confirmed: false });
     expect(before.budgets[0]?.lines[1]?.interval?.[0]).toBe(0);
-    const after = assembleRecord({ ...given, confirmations: [confirmationOf(-0.08, 1 / 64, "randu")] });
+    const after = assembleRecord({ ...given, confirmations: [makeConfirmation(-0.08, 1 / 64, "randu")] });
     expect(after.tests[0]).toMatchObject({ candidate: true, confirmed: true });
     expect(after.tests[0]?.confirmation?.bias).toBeCloseTo(-0.08, 2);
     expect(after.budgets[0]).toMatchObject({ verdict: "outside", largestLine: "source structure" });
@@ -120,8 +86,8 @@ describe("a biased source", () => {
 
   it("is not confirmed by a bias of the other sign, nor by none", () => {
     for (const bias of [0.08, 0]) {
-      const confirmations = [confirmationOf(bias, 1 / 64, "randu")];
-      const record = assembleRecord(assembly(raw, { sources, confirmations }));
+      const confirmations = [makeConfirmation(bias, 1 / 64, "randu")];
+      const record = assembleRecord(makeAssembly(raw, { sources, confirmations }));
       expect(record.tests[0]).toMatchObject({ candidate: true, confirmed: false });
       expect(record.budgets[0]?.lines[1]?.interval?.[0]).toBe(0);
     }
@@ -130,8 +96,8 @@ describe("a biased source", () => {
   it("never reaches a tolerance below its floor once it has stopped falling", () => {
     const sizes = [256, 512, 1024, 2048, 4096, 8192, 16384, 32768, 65536].map((n) => n * 64);
     const long = makeSeries({ bias: -0.08, sizes, source: "randu", seed: 6 });
-    const fresh = confirmationOf(-0.08, 1 / 2048, "randu", 65536 * 64);
-    const [found] = assembleRecord(assembly(long, { sources, confirmations: [fresh] })).convergence;
+    const fresh = makeConfirmation(-0.08, 1 / 2048, "randu", 65536 * 64);
+    const [found] = assembleRecord(makeAssembly(long, { sources, confirmations: [fresh] })).convergence;
     expect(found).toMatchObject({ never: true, reach: null, cost: null });
     expect(found?.floorLower).toBeGreaterThan(0.07);
   });
@@ -143,7 +109,7 @@ describe("randomised and deterministic quasi-random sources", () => {
   it("a scrambled net has no structure line but a theorem, and says that it was checked", () => {
     const sources = [makeSource("sobol+owen", { ...net, randomisations: ["owen"] })];
     const cells = makeSeries({ source: "sobol+owen", order: 1.5 });
-    const [budget] = assembleRecord(assembly(cells, { sources })).budgets;
+    const [budget] = assembleRecord(makeAssembly(cells, { sources })).budgets;
     expect(budget?.verdict).toBe("within");
     expect(budget?.lines[1]).toMatchObject({ value: 0, interval: null });
     expect(budget?.lines[1]?.basis).toMatch(
@@ -154,8 +120,8 @@ describe("randomised and deterministic quasi-random sources", () => {
   it("an implementation that errs is not excused by the theorem", () => {
     const sources = [makeSource("sobol+owen", { ...net, randomisations: ["owen"] })];
     const cells = makeSeries({ source: "sobol+owen", order: 1.5, bias: 0.05 });
-    const confirmations = [confirmationOf(0.05, 1e-5, "sobol+owen")];
-    const record = assembleRecord(assembly(cells, { sources, confirmations }));
+    const confirmations = [makeConfirmation(0.05, 1e-5, "sobol+owen")];
+    const record = assembleRecord(makeAssembly(cells, { sources, confirmations }));
     expect(record.budgets[0]).toMatchObject({ verdict: "outside", largestLine: "source structure" });
   });
 
@@ -165,7 +131,7 @@ describe("randomised and deterministic quasi-random sources", () => {
       makeProblem("p", { inputs: [{ name: "z", distribution: "normal", length: 2, first: 0 }] }),
     ];
     const cells = [256, 512, 1024].map((n) => makeCell({ source: "sobol", n, estimates: [1 + 1 / n] }));
-    const record = assembleRecord(assembly(cells, { sources, problems }));
+    const record = assembleRecord(makeAssembly(cells, { sources, problems }));
     expect(record.cells[2]).toMatchObject({
       bias: 1 / 1024,
       biasStandardError: null,
@@ -199,13 +165,13 @@ describe("probabilities", () => {
       makeSource("sobol+owen", { family: "quasi-random", randomisations: ["owen"] }),
     ];
     const cells = [indicator(around20, "philox4x32"), indicator(around20, "sobol+owen")];
-    const { tests } = assembleRecord(assembly(cells, { sources, problems }));
+    const { tests } = assembleRecord(makeAssembly(cells, { sources, problems }));
     expect(tests.map((test) => test.kind)).toEqual(["binomial", "student"]);
   });
 
   it("hits that spread too much from replicate to replicate are not counted as independent", () => {
     const wild = Array.from({ length: 32 }, (_, r) => (r % 2 === 0 ? 0 : 40));
-    expect(assembleRecord(assembly([indicator(wild, "philox4x32")], { problems })).tests[0]?.kind).toBe(
+    expect(assembleRecord(makeAssembly([indicator(wild, "philox4x32")], { problems })).tests[0]?.kind).toBe(
       "student",
     );
   });
@@ -215,7 +181,9 @@ describe("probabilities", () => {
       const rare = [
         makeProblem("p", { reference: { value, text: "", uncertainty: 0, basis: "closed form" } }),
       ];
-      const [test] = assembleRecord(assembly([indicator(around20, "philox4x32")], { problems: rare })).tests;
+      const [test] = assembleRecord(
+        makeAssembly([indicator(around20, "philox4x32")], { problems: rare }),
+      ).tests;
       expect(test).toMatchObject({ kind: "none", pValue: null, detectableBias: null });
       expect(test?.reason).toBe("96 hits or misses expected, fewer than 100");
     }
@@ -225,7 +193,7 @@ describe("probabilities", () => {
 describe("what cannot be judged", () => {
   it("equal replicates make no test", () => {
     const cells = [256, 512].map((n) => makeCell({ n, estimates: new Array<number>(32).fill(1.5) }));
-    const record = assembleRecord(assembly(cells));
+    const record = assembleRecord(makeAssembly(cells));
     expect(record.tests[0]).toMatchObject({ kind: "none", reason: "all replicates gave the same value" });
     expect(record.budgets[0]).toMatchObject({ verdict: "undecided" });
   });
@@ -233,7 +201,7 @@ describe("what cannot be judged", () => {
   it("non-finite values empty the statistics and are described", () => {
     const estimates = [1, 2, NaN, 1];
     const nonFinite = { count: 3, first: { replicate: 2, index: 7, inputs: [0.25, 0.5], value: "NaN" } };
-    const record = assembleRecord(assembly([makeCell({ estimates, nonFinite })]));
+    const record = assembleRecord(makeAssembly([makeCell({ estimates, nonFinite })]));
     expect(record.cells[0]).toMatchObject({ mean: null, bias: null, rmse: null, replicateDeviation: null });
     expect(record.budgets[0]).toMatchObject({ verdict: "none" });
     expect(record.warnings).toEqual([
@@ -244,7 +212,7 @@ describe("what cannot be judged", () => {
   it("a missing reference leaves a source undecided, unless its spread alone breaks the tolerance", () => {
     const problems = [makeProblem("p", { reference: null })];
     const verdict = (noise: number) =>
-      assembleRecord(assembly(makeSeries({ noise }), { problems })).budgets[0]?.verdict;
+      assembleRecord(makeAssembly(makeSeries({ noise }), { problems })).budgets[0]?.verdict;
     expect(verdict(0.01)).toBe("undecided");
     expect(verdict(10)).toBe("outside");
   });
@@ -252,9 +220,30 @@ describe("what cannot be judged", () => {
   it("replicates drawn from few states are warned of", () => {
     const sources = [makeSource("philox4x32", { period: "2147483646" })];
     const cells = makeSeries({ replicates: 64 });
-    expect(assembleRecord(assembly(cells, { sources })).warnings[0]).toMatch(
+    expect(assembleRecord(makeAssembly(cells, { sources })).warnings[0]).toMatch(
       /64 replicates among 2\.1e9 states/,
     );
+  });
+});
+
+describe("declared contributions", () => {
+  const declared = [
+    { line: "weekly time step", kind: "bias", value: 0.03, basis: "halved step" },
+    { line: "price model", kind: "random", value: 0.05, basis: "fit" },
+  ] as const;
+  const verdictAt = (absolute: number) => {
+    const tolerance = { absolute, relative: null, to: "reference", confidence: 0.99 };
+    const problems = [makeProblem("p", { tolerance, declared })];
+    return (
+      assembleRecord(makeAssembly(makeSeries({ noise: 1e-4 }), { problems })).budgets[0] ?? expect.fail()
+    );
+  };
+
+  it("a declared bias adds, a declared deviation is added in quadrature and counted k times", () => {
+    // 0.03 + 2.744 * 0.05 = 0.1672, t with 31 degrees of freedom at 99 % (Fisher & Yates: 2.744); the rest is below 1e-5.
+    expect(verdictAt(0.2).total).toBeCloseTo(0.03 + 2.7440419 * 0.05, 4);
+    expect(verdictAt(0.2)).toMatchObject({ verdict: "within", largestLine: "price model" });
+    expect(verdictAt(0.1)).toMatchObject({ verdict: "outside" });
   });
 });
 
@@ -267,12 +256,12 @@ describe("what is in use", () => {
 
   it("decides the exit code and is said first, with what would help", () => {
     const record = assembleRecord(
-      assembly(cells, { sources, problems: [problemInUse("philox4x32", 3000, 0.02)] }),
+      makeAssembly(cells, { sources, problems: [problemInUse("philox4x32", 3000, 0.02)] }),
     );
     const [headline] = headlinesOf(record);
     expect(record.budgets.at(-1)).toMatchObject({ inUse: true, n: 3000, verdict: "outside" });
     expect(headline?.inUse?.sentence).toMatch(
-      /^In use: philox4x32, 3,000 points: outside \(0\.0\d+ > 0\.020\)\. Take \d+ times the points, or sobol\+owen with ≈ \d+ points\.$/,
+      /^In use: philox4x32, 3,000 points: outside \(0\.0\d+ > 0\.020\)\. Take \d+ times the points, or sobol\+owen with 256 points\.$/,
     );
     expect(exitCodeOf(record)).toBe(1);
   });
@@ -281,7 +270,7 @@ describe("what is in use", () => {
     const code = (points: number, tolerance: number, undecided: boolean) =>
       exitCodeOf(
         assembleRecord(
-          assembly(cells, { sources, problems: [problemInUse("philox4x32", points, tolerance)] }),
+          makeAssembly(cells, { sources, problems: [problemInUse("philox4x32", points, tolerance)] }),
         ),
         undecided,
       );
@@ -292,7 +281,7 @@ describe("what is in use", () => {
 
   it("a source that was not studied is not judged", () => {
     const record = assembleRecord(
-      assembly(cells, { sources, problems: [problemInUse("mt19937", 1000, 0.02)] }),
+      makeAssembly(cells, { sources, problems: [problemInUse("mt19937", 1000, 0.02)] }),
     );
     expect(headlinesOf(record)[0]?.inUse).toEqual({
       verdict: "none",
@@ -305,7 +294,7 @@ describe("what is in use", () => {
 
 it("digests depend on the estimates to the bit and on nothing else", () => {
   const cells = makeSeries({});
-  const digest = (raw: RawCell[]) => assembleRecord(assembly(raw)).digest;
+  const digest = (raw: RawCell[]) => assembleRecord(makeAssembly(raw)).digest;
   const slower = cells.map((cell) => ({ ...cell, secondsPerPoint: 1 }));
   const changed = cells.map((cell, i) =>
     i > 0 ? cell : { ...cell, estimates: cell.estimates.map((x, r) => (r > 0 ? x : x + Number.EPSILON)) },

@@ -1,4 +1,6 @@
 /** Invented problems, sources and raw cells for tests of findings, and a small generator of its own for estimates. */
+import type { Assembly } from "../../src/findings/assemble.js";
+import { CONFIRMATION_REPLICATES, type Confirmation } from "../../src/findings/bias.js";
 import type { Problem } from "../../src/problem/contract.js";
 import type { RawCell, RecordSource, StudySpec } from "../../src/record/types.js";
 
@@ -128,4 +130,42 @@ export function makeSeries(
       withinVariances: Array.from({ length: replicates }, () => noise ** 2),
     }),
   );
+}
+
+/** What `assembleRecord` needs around raw cells. */
+export function makeAssembly(rawCells: RawCell[], changes: Partial<Assembly> = {}): Assembly {
+  const problems = changes.problems ?? [makeProblem("p")];
+  return {
+    spec: makeSpec(problems),
+    environment: {
+      program: "tolerand",
+      node: "v20",
+      platform: "test",
+      threads: 1,
+      started: "",
+      finished: "",
+      seconds: 0,
+      command: "",
+      complete: true,
+    },
+    problems,
+    sources: [makeSource("philox4x32")],
+    rawCells,
+    consensus: [],
+    confirmations: [],
+    warnings: [],
+    ...changes,
+  };
+}
+
+/** Fresh estimates for problem "p", normal around 1 + bias. */
+export function makeConfirmation(
+  bias: number,
+  deviation: number,
+  source = "philox4x32",
+  n = 4096,
+): Confirmation {
+  const normal = normals(99);
+  const estimates = Array.from({ length: CONFIRMATION_REPLICATES }, () => 1 + bias + deviation * normal());
+  return { problem: "p", source, estimator: "crude", output: "mean", n, estimates };
 }

@@ -1,0 +1,83 @@
+/**
+ * Calibration of the bias tests: how often sound sources raise a false alarm, and how often a planted bias is found.
+ * Seeds are fixed, so every run gives the same counts; the bounds are those of Clopper & Pearson (1934) at 99.9 %, so a
+ * correct program would fail one of these checks with probability below 0.001 for a fresh seed. TOLERAND_STUDIES sets the
+ * number of studies (docs/calibration.md holds the counts for more).
+ */
+import { describe, expect, it } from "vitest";
+import { screeningLevel } from "../../src/findings/bias.js";
+import { clopperPearson } from "../../src/numeric/binomial.js";
+import { draws, gaussian, lognormal, rareEvent, rareEventByStudent, rarePayment } from "./integrands.js";
+import { runNullStudies } from "./null-harness.js";
+import { powerOf } from "./planted.js";
+
+const STUDIES = Number(process.env["TOLERAND_STUDIES"] ?? 2000);
+const FALSE_ALARMS = 0.01;
+const SURE = 0.999;
+
+/** Interval of a share that was seen `count` times. */
+const interval = (count: number, of = STUDIES) => clopperPearson(count, of, SURE);
+
+describe(`${STUDIES} null studies`, () => {
+  it("of exactly normal estimates have a candidate as often as the screen's level says", async () => {
+    const cases = ["a", "b", "c", "d"].map(gaussian);
+    const found = await runNullStudies(cases, draws, {
+      studies: STUDIES,
+      replicates: 32,
+      falseAlarms: FALSE_ALARMS,
+    });
+    const [low, high] = interval(found.withCandidate);
+    // Holm's first step at level a is exact to (1 - a/4)^4, 0.0963 for a = 0.1.
+    const expected = 1 - (1 - screeningLevel(FALSE_ALARMS) / 4) ** 4;
+    expect(low).toBeLessThan(expected);
+    expect(high).toBeGreaterThan(expected);
+    expect(interval(found.withConfirmed)[0]).toBeLessThanOrEqual(FALSE_ALARMS);
+  });
+
+  it("of skewed and rare-event integrands confirm no more biases than the stated level", async () => {
+    const cases = [
+      gaussian(),
+      lognormal(1, 64),
+      lognormal(1.5, 64),
+      rarePayment(0.01, 256),
+      rarePayment(0.004, 256),
+      rarePayment(0.001, 256),
+      rareEvent(0.02, 256),
+      rareEventByStudent(0.02, 256),
+    ];
+    const found = await runNullStudies(cases, draws, {
+      studies: STUDIES,
+      replicates: 32,
+      falseAlarms: FALSE_ALARMS,
+    });
+    report("mixed", found);
+    expect(interval(found.withConfirmed)[0]).toBeLessThanOrEqual(FALSE_ALARMS);
+    // The share itself, not only its lower limit.
+    expect(found.withConfirmed / STUDIES).toBeLessThanOrEqual(FALSE_ALARMS);
+  });
+});
+
+describe("a planted bias", () => {
+  const trials = Math.max(500, STUDIES / 2);
+
+  it("of one detectable unit is confirmed in 80 % of studies", () => {
+    const { found, kinds } = powerOf(1, trials, FALSE_ALARMS);
+    report("one unit", { found, trials });
+    const [low, high] = interval(found, trials);
+    expect(kinds).toEqual(["student"]);
+    // The formula's power is 0.80 within 0.02 for 31 degrees of freedom (numeric/power.ts).
+    expect(low).toBeLessThan(0.82);
+    expect(high).toBeGreaterThan(0.78);
+  });
+
+  it("of two detectable units is confirmed in more than 99.9 % of studies", () => {
+    const { found } = powerOf(2, trials, FALSE_ALARMS);
+    report("two units", { found, trials });
+    expect(interval(found, trials)[1]).toBeGreaterThan(0.999);
+    expect(found / trials).toBeGreaterThan(0.995);
+  });
+});
+
+function report(what: string, counts: object): void {
+  if (process.env["TOLERAND_STUDIES"] !== undefined) console.log(what, counts);
+}

@@ -15,7 +15,8 @@ import { FINITE, NOT_NEGATIVE, NumberReader, POSITIVE, readConstants, wholeFrom 
 import type { Constants, Range } from "./numbers.js";
 import { problemSchema, suiteSchema } from "./schema.js";
 import type { ProblemFile, SuiteFile } from "./schema.js";
-import { checkStudy } from "./study.js";
+import { checkSource, checkStudy } from "./study.js";
+import type { SourceCheck } from "./study.js";
 
 /** Names with a meaning of their own. Those of plain objects are among them: data keyed by name would find them. */
 const TAKEN = new Map<string, string>([
@@ -199,8 +200,14 @@ async function checkIntegrand(text: string, scope: FormulaScope, findings: Findi
   }
 }
 
+const anySource: SourceCheck = () => undefined;
+
 /** The problem in a file. Throws ProblemError with every finding. */
-export async function checkProblem(document: YamlDocument, id: string): Promise<Problem> {
+export async function checkProblem(
+  document: YamlDocument,
+  id: string,
+  check: SourceCheck = anySource,
+): Promise<Problem> {
   const findings = new Findings(document);
   const file = parts(problemSchema, findings);
   const numbers = new NumberReader(findings);
@@ -223,7 +230,8 @@ export async function checkProblem(document: YamlDocument, id: string): Promise<
     file.tolerance === undefined ? null : await checkTolerance(file.tolerance, unit, numbers, findings);
   const declared = await checkDeclared(file.declared ?? [], numbers, findings);
   const inUse = file.inUse === undefined ? null : await checkInUse(file.inUse, numbers);
-  const study = await checkStudy(file.study ?? {}, numbers, findings);
+  if (file.inUse !== undefined) checkSource(file.inUse.source, ["inUse", "source"], check, findings);
+  const study = await checkStudy(file.study ?? {}, numbers, check, findings);
   if (findings.issues.length > 0 || tolerance === null || file.integrand === undefined) {
     throw new ProblemError(findings.inOrder());
   }
@@ -248,10 +256,11 @@ export async function checkProblem(document: YamlDocument, id: string): Promise<
 /** The settings in a `suite.yaml`. Throws ProblemError with every finding. */
 export async function checkSuite(
   document: YamlDocument,
+  check: SourceCheck = anySource,
 ): Promise<Omit<SuiteFile, "study"> & { study: Problem["study"] }> {
   const findings = new Findings(document);
   const { study, ...rest } = parts(suiteSchema, findings);
-  const settings = await checkStudy(study ?? {}, new NumberReader(findings), findings);
+  const settings = await checkStudy(study ?? {}, new NumberReader(findings), check, findings);
   if (findings.issues.length > 0) throw new ProblemError(findings.inOrder());
   return { ...rest, study: settings };
 }

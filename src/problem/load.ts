@@ -9,6 +9,7 @@ import { parseYaml, readText } from "./document.js";
 import type { YamlDocument } from "./document.js";
 import { ProblemError, fileError } from "./errors.js";
 import type { ProblemIssue } from "./errors.js";
+import type { SourceCheck } from "./study.js";
 
 const EXTENSIONS = new Set([".yaml", ".yml"]);
 /** Problem ids become names of files and keys of records. */
@@ -49,11 +50,11 @@ async function kindOf(path: string): Promise<"file" | "folder" | null> {
   return found === null ? null : found.isDirectory() ? "folder" : "file";
 }
 
-async function readSuite(folder: string): Promise<Suite | null> {
+async function readSuite(folder: string, check?: SourceCheck): Promise<Suite | null> {
   const file = join(folder, SUITE_FILE);
   if ((await kindOf(file)) === null) return null;
   const document = parseYaml(file, await readText(file));
-  const { title, about, study, problems = [] } = await checkSuite(document);
+  const { title, about, study, problems = [] } = await checkSuite(document, check);
   const issues: ProblemIssue[] = [];
   for (const [i, entry] of problems.entries()) {
     if ((await shippedProblemFile(entry)) !== null) continue;
@@ -69,7 +70,7 @@ async function readSuite(folder: string): Promise<Suite | null> {
   return { name, folder, title: title ?? name, about: about?.trim() ?? "", study, problems };
 }
 
-async function readProblem(file: string, suite: Suite | null): Promise<LoadedProblem> {
+async function readProblem(file: string, suite: Suite | null, check?: SourceCheck): Promise<LoadedProblem> {
   const id = basename(file, extname(file));
   if (!ID.test(id)) {
     throw fileError(
@@ -78,11 +79,11 @@ async function readProblem(file: string, suite: Suite | null): Promise<LoadedPro
     );
   }
   const document = parseYaml(file, await readText(file));
-  return { problem: await checkProblem(document, id), document, suite };
+  return { problem: await checkProblem(document, id, check), document, suite };
 }
 
 /** Loads one problem file, with the suite.yaml beside it if there is one. Throws ProblemError with all findings. */
-export async function loadProblem(path: string): Promise<LoadedProblem> {
+export async function loadProblem(path: string, check?: SourceCheck): Promise<LoadedProblem> {
   if (!EXTENSIONS.has(extname(path))) {
     throw fileError(
       path,
@@ -95,12 +96,15 @@ export async function loadProblem(path: string): Promise<LoadedProblem> {
       "holds the settings of a suite, not a problem; name its folder, or a problem file in it",
     );
   }
-  return readProblem(path, await readSuite(dirname(path)));
+  return readProblem(path, await readSuite(dirname(path), check), check);
 }
 
 /** Loads all problems of a folder, by file name; findings of all files are thrown together as one ProblemError. */
-export async function loadSuite(folder: string): Promise<{ suite: Suite; problems: LoadedProblem[] }> {
-  const found = await readSuite(folder);
+export async function loadSuite(
+  folder: string,
+  check?: SourceCheck,
+): Promise<{ suite: Suite; problems: LoadedProblem[] }> {
+  const found = await readSuite(folder, check);
   const name = basename(resolve(folder));
   const suite: Suite = found ?? { name, folder, title: name, about: "", study: {}, problems: [] };
   const idOf = (file: string): string => basename(file, extname(file));
@@ -121,7 +125,7 @@ export async function loadSuite(folder: string): Promise<{ suite: Suite; problem
   const issues: ProblemIssue[] = [];
   for (const path of paths) {
     try {
-      problems.push(await readProblem(path, suite));
+      problems.push(await readProblem(path, suite, check));
     } catch (error) {
       if (!(error instanceof ProblemError)) throw error;
       issues.push(...error.issues);
@@ -131,22 +135,25 @@ export async function loadSuite(folder: string): Promise<{ suite: Suite; problem
   return { suite, problems };
 }
 
-async function loadOne(given: string): Promise<{ name: string; problems: readonly LoadedProblem[] }> {
+async function loadOne(
+  given: string,
+  check?: SourceCheck,
+): Promise<{ name: string; problems: readonly LoadedProblem[] }> {
   // A path wins over the name of a shipped suite.
   const kind = await kindOf(given);
   if (kind === "file") {
-    const loaded = await loadProblem(given);
+    const loaded = await loadProblem(given, check);
     return { name: loaded.problem.id, problems: [loaded] };
   }
   const suites = await shippedSuites();
   const folder = kind === "folder" ? given : suites.includes(given) ? shippedFolder(given) : null;
   if (folder !== null) {
-    const { suite, problems } = await loadSuite(folder);
+    const { suite, problems } = await loadSuite(folder, check);
     return { name: suite.name, problems };
   }
   const file = await shippedProblemFile(given);
   if (file !== null) {
-    const loaded = await loadProblem(file);
+    const loaded = await loadProblem(file, check);
     return { name: loaded.problem.id, problems: [loaded] };
   }
   const guess = nearest(given, suites);
@@ -156,15 +163,16 @@ async function loadOne(given: string): Promise<{ name: string; problems: readonl
 
 /**
  * Loads what a command was given: problem files, folders, names of shipped suites, or suite/problem. Two problems of
- * one name cannot be told apart in a record and are refused. Throws ProblemError with the findings of all.
+ * one name cannot be told apart in a record and are refused. `check` is the parser of sources (sources/choice.ts); with
+ * it an unknown source is a finding with its line. Throws ProblemError with the findings of all.
  */
-export async function loadPaths(paths: readonly string[]): Promise<LoadedProblems> {
+export async function loadPaths(paths: readonly string[], check?: SourceCheck): Promise<LoadedProblems> {
   const names: string[] = [];
   const byId = new Map<string, LoadedProblem>();
   const issues: ProblemIssue[] = [];
   for (const path of paths) {
     try {
-      const { name, problems } = await loadOne(path);
+      const { name, problems } = await loadOne(path, check);
       names.push(name);
       for (const loaded of problems) {
         const { id } = loaded.problem;

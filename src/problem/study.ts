@@ -1,6 +1,7 @@
 /** The `study` settings of a file, read and held against their ranges. */
-import type { StudySettings } from "./contract.js";
+import type { SourceSpec, StudySettings } from "./contract.js";
 import { ESTIMATORS, LIMITS } from "./defaults.js";
+import type { Path } from "./document.js";
 import { show } from "./errors.js";
 import type { Findings } from "./findings.js";
 import { nearest } from "../numeric/nearest.js";
@@ -16,7 +17,23 @@ const FALSE_ALARMS: Range = {
 const REPLICATES = wholeFrom(2, LIMITS.replicates);
 const SEED = wholeFrom(0, Number.MAX_SAFE_INTEGER, "2^53 - 1");
 
-function checkSources(sources: NonNullable<StudyFile["sources"]>, findings: Findings): void {
+/**
+ * Refuses a source that does not exist by throwing a TypeError or RangeError. The registry of sources is another room's:
+ * a caller that knows it hands in its parser, so that an unknown source is shown at its line.
+ */
+export type SourceCheck = (source: SourceSpec) => unknown;
+
+/** Notes at `path` what `check` has against `source`. */
+export function checkSource(source: SourceSpec, path: Path, check: SourceCheck, findings: Findings): void {
+  try {
+    check(source);
+  } catch (error) {
+    if (!(error instanceof RangeError || error instanceof TypeError)) throw error;
+    findings.add(path, error.message.replace(/^source: /, ""));
+  }
+}
+
+function checkSources(sources: readonly SourceSpec[], check: SourceCheck, findings: Findings): void {
   const seen = new Set<string>();
   for (const [i, source] of sources.entries()) {
     const path = ["study", "sources", i];
@@ -24,6 +41,7 @@ function checkSources(sources: NonNullable<StudyFile["sources"]>, findings: Find
     if (seen.has(text))
       findings.add(path, `expected each source once, found ${show(source)} again; remove it`);
     seen.add(text);
+    checkSource(source, path, check, findings);
   }
 }
 
@@ -31,12 +49,13 @@ function checkSources(sources: NonNullable<StudyFile["sources"]>, findings: Find
 export async function checkStudy(
   file: NonNullable<StudyFile>,
   numbers: NumberReader,
+  check: SourceCheck,
   findings: Findings,
 ): Promise<StudySettings> {
   const path = ["study"];
   const settings: { -readonly [K in keyof StudySettings]: StudySettings[K] } = {};
   if (file.sources !== undefined) {
-    checkSources(file.sources, findings);
+    checkSources(file.sources, check, findings);
     settings.sources = file.sources;
   }
   if (file.sizes !== undefined) {

@@ -5,6 +5,7 @@ import { afterEach, beforeEach, describe, expect, test } from "vitest";
 import { copySuite, listProblems } from "../../src/problem/catalogue.js";
 import { loadPaths, loadProblem, loadSuite } from "../../src/problem/load.js";
 import { newProblem, problemTemplate } from "../../src/problem/template.js";
+import { parseSource } from "../../src/sources/choice.js";
 import { fileWith } from "./text.js";
 
 let folder = "";
@@ -121,6 +122,29 @@ describe("names", () => {
       await expect(loadPaths([name])).rejects.toThrow(/no such file, folder|found none/);
     },
   );
+});
+
+describe("sources", () => {
+  test("an unknown source is shown at its line, in problems and suites, when the parser of sources is given", async () => {
+    const study = "{ sources: [pcg64, philox4x23] }";
+    const inUse = "{ source: sobol+owne, points: 100 }";
+    const path = await put("a.yaml", fileWith({ study, inUse }));
+    expect(ids((await loadPaths([path])).problems)).toEqual(["a"]);
+    await expect(loadPaths([path], parseSource)).rejects.toThrow(
+      new RegExp(
+        `^${path}:4:27: study\\.sources item 2: unknown source "philox4x23"; did you mean "philox4x32"\\?.*\n` +
+          `${path}:5:18: inUse\\.source: .*owne`,
+      ),
+    );
+    const suite = await put("suite.yaml", "study:\n  sources:\n    - mt19938\n");
+    await expect(loadPaths([folder], parseSource)).rejects.toThrow(
+      `${suite}:3:7: study.sources item 1: unknown source "mt19938"; did you mean "mt19937"?`,
+    );
+  });
+
+  test("the shipped suites name sources that there are", async () => {
+    await expect(loadPaths(["classic", "planes", "tidal", "tour"], parseSource)).resolves.toBeDefined();
+  });
 });
 
 describe("copies", () => {

@@ -7,6 +7,7 @@ import { problemJsonSchema, suiteJsonSchema } from "../../src/problem/schema.js"
 import { problemTemplate } from "../../src/problem/template.js";
 import { join } from "node:path";
 import { keyTable } from "./key-table.js";
+import { problemIn } from "./text.js";
 
 test("the tables of docs/problem-file.md are those of the schema", async () => {
   const text = await readFile(new URL("../../docs/problem-file.md", import.meta.url), "utf8");
@@ -19,6 +20,13 @@ test("the tables of docs/problem-file.md are those of the schema", async () => {
     const table = text.split(`<!-- ${name} keys -->`)[1]?.split("<!-- end -->")[0] ?? "";
     expect(squeeze(table), `table of ${name} keys`).toBe(squeeze(keyTable(schema)));
   }
+});
+
+test("the example of docs/problem-file.md is a problem", async () => {
+  const text = await readFile(new URL("../../docs/problem-file.md", import.meta.url), "utf8");
+  const examples = [...text.matchAll(/```yaml\n(.*?)```/gs)].map((match) => match[1] ?? "");
+  expect(examples).toHaveLength(1);
+  expect((await problemIn(examples[0] ?? "")).dimension).toBe(64);
 });
 
 test("the published schema is valid and accepts every shipped file and the template", async () => {

@@ -2,6 +2,7 @@
 import type { Source, SourceDescription } from "./contract.js";
 import { halton } from "./halton.js";
 import { kronecker } from "./kronecker.js";
+import { lattice } from "./lattice.js";
 import { minstd16807, minstd48271 } from "./minstd.js";
 import { mt19937 } from "./mt19937.js";
 import { pcg64 } from "./pcg64.js";
@@ -21,6 +22,7 @@ export type SourceId =
   | "philox4x32"
   | "sobol"
   | "halton"
+  | "lattice"
   | "kronecker";
 
 const sources: Readonly<Record<SourceId, Source>> = {
@@ -33,6 +35,7 @@ const sources: Readonly<Record<SourceId, Source>> = {
   philox4x32,
   sobol,
   halton,
+  lattice,
   kronecker,
 };
 

@@ -1,0 +1,89 @@
+/**
+ * Rank-1 lattices {k z / n}, k = 0...n - 1 (N. M. Korobov, "The approximate computation of multiple integrals", Doklady
+ * Akademii Nauk SSSR 124, 1959, 1207-1210; I. H. Sloan and S. Joe, "Lattice Methods for Multiple Integration", Oxford,
+ * 1994), built for one n. The vector z is constructed component by component for the weights w_j = 1/j^2 and n a power of
+ * two (numeric/lattice-construction); components do not depend on how many follow.
+ *
+ * Good for: smooth periodic integrands (orders of 2 and more), smooth ones after `shift+tent`. Bad for: integrands with
+ * jumps; the vector favours the first coordinates.
+ */
+import type { Kernels } from "../kernels/instance.js";
+import { constructVector, inverseSquareWeights, LARGEST_LATTICE } from "../numeric/lattice-construction.js";
+import type { OpenRequest, PointStream, Seekable, Source } from "./contract.js";
+import { openRotation, ROTATION_RANDOMISATIONS } from "./rotation.js";
+
+const LARGEST_SIZE = 2 ** 20;
+
+const about = {
+  family: "quasi-random",
+  method: "rank-1 lattice",
+  outputBits: 52,
+  period: null,
+  nesting: "per-size",
+  randomisations: ROTATION_RANDOMISATIONS,
+  knownStructure: null,
+} as const;
+
+export const lattice: Source = {
+  ...about,
+  id: "lattice",
+  title: "Rank-1 lattice, vector component by component with weights 1/j^2",
+  citation:
+    "D. Nuyens and R. Cools, Fast component-by-component construction of rank-1 lattice rules with a non-prime number of points, Journal of Complexity 22 (2006) 4-28",
+  largestDimension: 1000,
+  nearestSize: (n) => 2 ** Math.round(Math.log2(Math.min(n, LARGEST_SIZE))),
+  open: (request, kernels) =>
+    openLattice(lattice, () => vectorOf(request.n, request.dimension), request, kernels),
+};
+
+/** Vectors built so far in this process: the longest one of each size. */
+const built = new Map<number, Uint32Array>();
+
+function vectorOf(n: number, dimension: number): Uint32Array {
+  const known = built.get(n);
+  if (known !== undefined && known.length >= dimension) return known;
+  const vector = constructVector(n, inverseSquareWeights(dimension));
+  built.set(n, vector);
+  return vector;
+}
+
+/**
+ * The lattice of a vector of one's own, for any n below 2^26. Throws RangeError unless the components are whole numbers
+ * from 0 to 2^53 - 1.
+ */
+export function ownLattice(id: string, vector: readonly number[]): Source {
+  for (const [j, component] of vector.entries()) {
+    if (Number.isSafeInteger(component) && component >= 0) continue;
+    const expected = "expected a whole number from 0 to 2^53 - 1";
+    throw new RangeError(`source.lattice.vector: ${expected} in place ${j + 1}, found ${component}`);
+  }
+  const source: Source = {
+    ...about,
+    family: "own",
+    id,
+    title: `Rank-1 lattice with the vector (${vector.slice(0, 6).join(", ")}${vector.length > 6 ? ", ..." : ""})`,
+    citation:
+      "the user's own; method: I. H. Sloan and S. Joe, Lattice Methods for Multiple Integration (1994)",
+    largestDimension: vector.length,
+    nearestSize: (n) => Math.min(n, LARGEST_LATTICE - 1),
+    open: (request, kernels) => openLattice(source, () => vector, request, kernels),
+  };
+  return source;
+}
+
+function openLattice(
+  source: Source,
+  vector: () => ArrayLike<number>,
+  request: OpenRequest,
+  kernels: Kernels,
+): PointStream & Seekable {
+  const alphas = (dimension: number): bigint[] => {
+    const n = BigInt(request.n);
+    const components = vector();
+    return Array.from({ length: dimension }, (_, j) => {
+      const residue = BigInt(components[j] ?? 0) % n;
+      return ((residue << 128n) + n - 1n) / n;
+    });
+  };
+  return openRotation(source, alphas, request, kernels);
+}

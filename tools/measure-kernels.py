@@ -7,6 +7,7 @@ values that must be exact (NaN, infinities, the sign of zero).
 import json
 import sys
 from array import array
+from statistics import NormalDist
 
 from mpmath import inf, isinf, isnan, mp, mpf, nan
 
@@ -44,6 +45,37 @@ def clipped(f):
     return lambda x: f(max(min(x, mpf(800)), mpf(-800)))
 
 
+def normal_cdf(x):
+    return mp.erfc(-x / mp.sqrt(2)) / 2
+
+
+def normal_quantile(p):
+    """Two steps of Newton's method from a value of double precision; the smaller tail throughout."""
+    if not 0 <= p <= 1:
+        return nan
+    if p in (0, 1):
+        return -inf if p == 0 else inf
+    tail = min(p, 1 - p)
+    if tail < mpf(2) ** -1000:
+        x = -mp.sqrt(-2 * mp.log(tail))
+        steps = 6
+    else:
+        x = mpf(NormalDist().inv_cdf(float(tail)))
+        steps = 2
+    for _ in range(steps):
+        x -= (mp.log(normal_cdf(x)) - mp.log(tail)) * normal_cdf(x) / mp.npdf(x)
+    return x if p < 0.5 else -x
+
+
+def gamma(x):
+    """The poles are +infinity, as in mathjs."""
+    if isnan(x) or x == -inf:
+        return nan
+    if x <= 0 and x == mp.floor(x):
+        return inf
+    return inf if x > 200 else mp.gamma(x)
+
+
 FUNCTIONS = {
     "exp": clipped(mp.exp),
     "expm1": clipped(mp.expm1),
@@ -63,6 +95,13 @@ FUNCTIONS = {
     "sinh": clipped(mp.sinh),
     "cosh": clipped(mp.cosh),
     "tanh": clipped(mp.tanh),
+    "erf": mp.erf,
+    "erfc": mp.erfc,
+    "normalPdf": clipped(mp.npdf),
+    "normalCdf": clipped(normal_cdf),
+    "normalQuantile": normal_quantile,
+    "gamma": gamma,
+    "lgamma": lambda x: inf if x == 0 else nan if not x > 0 else mp.loggamma(x),
 }
 
 

@@ -14,3 +14,6 @@ export { vec_log2, vec_log10, log2_special, log10_special } from "./log-bases";
 export { vec_cbrt, cbrt_special } from "./cbrt";
 export { vec_sin, vec_cos, vec_tan, sin_special, cos_special, tan_special } from "./sine";
 export { sortRows } from "./sort-rows";
+export { vec_atan, vec_atan2, atan_special, atan2_special } from "./atan";
+export { vec_asin, vec_acos } from "./asin";
+export { vec_sinh, vec_cosh, vec_tanh, sinh_special, cosh_special, tanh_special } from "./hyperbolic";

@@ -5,6 +5,7 @@
 import { readFileSync } from "node:fs";
 import { describe, expect, it } from "vitest";
 import { instantiateKernels } from "../../src/kernels/instance.js";
+import { valuesOf } from "../formula/run.js";
 import { expectClose, stats } from "../published/stats-data.js";
 import { mapKernels } from "./map-kernel.js";
 
@@ -72,6 +73,16 @@ describe.each(names)("%s", (name) => {
     points.forEach(([x], i) => expect(beside[2 * i], `${name}(${x})`).toBe(found[i]));
     const shifted = values(name, [0.3, ...xs]);
     expect(shifted.slice(1).map(bits)).toEqual(beside.map(bits));
+  });
+
+  it("has the same bits when spliced into a formula", async () => {
+    const scope = { inputs: [{ name: "a", length: null, first: 0 }], constants: {} };
+    const spliced = await valuesOf(
+      `${name}(a)`,
+      scope,
+      points.map(([x]) => [x]),
+    );
+    expect(spliced.map(bits)).toEqual(found.map(bits));
   });
 
   it("gives NaN for NaN", () => {

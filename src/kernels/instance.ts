@@ -5,6 +5,8 @@ import type { KernelExports } from "./exports.js";
 /** One instance of the kernel module (alone or with a formula spliced in) and its memory. */
 export interface Kernels {
   readonly exports: KernelExports;
+  /** The spliced formula of this module (formula/contract.ts), where there is one. */
+  readonly formula: unknown;
   readonly arena: Arena;
   /** View of `length` doubles at byte address `pointer`; do not keep it over an allocation. */
   f64(pointer: number, length: number): Float64Array;
@@ -77,6 +79,7 @@ export function instantiateKernels(module: WebAssembly.Module = kernelModule()):
   const memory = exports.memory;
   return {
     exports,
+    formula: instance.exports["integrand"],
     arena: new Arena(memory, exports.heapBase()),
     f64: (pointer, length) => new Float64Array(memory.buffer, pointer, length),
     u64: (pointer, length) => new BigUint64Array(memory.buffer, pointer, length),

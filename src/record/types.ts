@@ -50,7 +50,7 @@ export interface RecordSource extends Omit<SourceDescription, "id" | "period" | 
 export interface NonFinite {
   /** Points with a non-finite value, over all replicates. */
   readonly count: number;
-  /** The first offending point: replicate, index, and the inputs' values in order of coordinates. */
+  /** The first offending point, and what the integrand was given there, in order of coordinates. */
   readonly first: {
     readonly replicate: number;
     readonly index: number;

@@ -1,0 +1,109 @@
+/**
+ * The main line of the program: spec → plan → run → confirm → record. It touches no file but the journal that it is
+ * handed; reading problems and writing reports are its neighbours' work.
+ */
+import { assembleRecord, candidatesOf } from "./findings/assemble.js";
+import type { Confirmation } from "./findings/bias.js";
+import { consensusOf } from "./findings/consensus.js";
+import type { Consensus, Environment, RawCell, StudyRecord, StudySpec } from "./record/types.js";
+import { collectCells, type CellInfo } from "./study/collect.js";
+import type { Executor } from "./study/executor.js";
+import type { RunnableProblem } from "./study/runnable.js";
+import { confirmationTasks, recordSources, referenceTasks, studyTasks } from "./study/spec.js";
+import type { Task, TaskResult } from "./study/tasks.js";
+
+/** Progress of a stage; units are coordinates evaluated. */
+export interface Stage {
+  advance(work: number): void;
+  finish(): void;
+}
+
+export interface StudyRun {
+  readonly spec: StudySpec;
+  readonly problems: readonly RunnableProblem[];
+  readonly executor: Executor;
+  /** What an earlier run left, by task id, and where each new result goes. */
+  readonly journal: { readonly done: ReadonlyMap<string, TaskResult>; add(result: TaskResult): void };
+  readonly signal: AbortSignal;
+  readonly stage: (title: string, work: number) => Stage;
+  /** Where and when, which only the caller knows; `complete` is false after an interruption. */
+  readonly environment: (complete: boolean) => Environment;
+  /** Said in the record before what the findings add. */
+  readonly warnings: readonly string[];
+}
+
+/** Runs a study and gives its record; after an abort the record holds what is done and says so. */
+export async function runStudy(run: StudyRun): Promise<StudyRecord> {
+  const { spec } = run;
+  const results = new Map(run.journal.done);
+
+  const references = referenceTasks(spec);
+  if (references.length > 0) await runStage(run, "reference", references, results);
+  const consensus = formConsensus(spec, cellsOf(run, references, results));
+
+  const tasks = studyTasks(spec);
+  await runStage(run, "study", tasks, results);
+  const rawCells = cellsOf(run, tasks, results);
+  const measured = { spec, problems: spec.problems, sources: recordSources(spec), rawCells, consensus };
+
+  const candidates = run.signal.aborted ? [] : candidatesOf(measured);
+  const fresh = confirmationTasks(spec, candidates);
+  if (fresh.length > 0) await runStage(run, "confirmation", fresh, results);
+  const confirmations: Confirmation[] = run.signal.aborted ? [] : cellsOf(run, fresh, results);
+
+  const environment = run.environment(!run.signal.aborted);
+  return assembleRecord({ ...measured, environment, confirmations, warnings: run.warnings });
+}
+
+async function runStage(
+  run: StudyRun,
+  title: string,
+  tasks: readonly Task[],
+  results: Map<string, TaskResult>,
+): Promise<void> {
+  const open = tasks.filter((task) => !results.has(task.id));
+  const dimensions = new Map(run.spec.problems.map(({ id, dimension }) => [id, dimension]));
+  const work = (task: Task): number => workOf(task) * (dimensions.get(task.problem) ?? 1);
+  const byId = new Map(open.map((task) => [task.id, task]));
+  const stage = run.stage(
+    title,
+    open.reduce((total, task) => total + work(task), 0),
+  );
+  await run.executor.run(
+    open,
+    (result) => {
+      results.set(result.id, result);
+      run.journal.add(result);
+      stage.advance(work(byId.get(result.id) as Task));
+    },
+    run.signal,
+  );
+  stage.finish();
+}
+
+/** Points that a task evaluates. */
+function workOf(task: Task): number {
+  return (task.sizes.at(-1) ?? 0) * (task.to - task.from);
+}
+
+function cellsOf(run: StudyRun, tasks: readonly Task[], results: ReadonlyMap<string, TaskResult>): RawCell[] {
+  const info = new Map(
+    run.problems.map(({ id, formula: { dimension, indicator } }): [string, CellInfo] => [
+      id,
+      { dimension, indicator },
+    ]),
+  );
+  return collectCells(tasks, results, (problem) => info.get(problem) as CellInfo);
+}
+
+/** One consensus per problem without a reference; after an interruption with the members that are there. */
+function formConsensus(spec: StudySpec, cells: readonly RawCell[]): Consensus[] {
+  return spec.problems
+    .filter((problem) => problem.reference === null)
+    .map(({ id }) =>
+      consensusOf(
+        id,
+        cells.filter((cell) => cell.problem === id),
+      ),
+    );
+}

@@ -1,0 +1,54 @@
+/** Executors: they take tasks and hand over results as they come, in any order. */
+import { setImmediate } from "node:timers/promises";
+import { Piscina } from "piscina";
+import type { RunnableProblem } from "./runnable.js";
+import { TaskRunner } from "./run-task.js";
+import type { Task, TaskResult } from "./tasks.js";
+
+export interface Executor {
+  /**
+   * Runs the tasks, calling `done` for each result. Resolves when all are done, or, after `signal` is aborted, when
+   * the tasks in flight are. Rejects with the first error of a task.
+   */
+  run(tasks: readonly Task[], done: (result: TaskResult) => void, signal: AbortSignal): Promise<void>;
+  close(): Promise<void>;
+}
+
+/** Runs tasks one after the other in this thread: for tests and for the library. */
+export function inProcess(problems: readonly RunnableProblem[]): Executor {
+  const runner = new TaskRunner(problems);
+  return {
+    async run(tasks, done, signal) {
+      for (const task of tasks) {
+        if (signal.aborted) return;
+        done(runner.run(task));
+        await setImmediate();
+      }
+    },
+    close: () => Promise.resolve(),
+  };
+}
+
+/** Runs tasks on worker threads. Two tasks a thread are in flight, so that no thread waits and an interruption is quick. */
+export function threads(problems: readonly RunnableProblem[], count: number): Executor {
+  const pool = new Piscina({
+    filename: new URL("../../dist/study/worker.js", import.meta.url).href,
+    minThreads: count,
+    maxThreads: count,
+    concurrentTasksPerWorker: 1,
+    workerData: { problems },
+  });
+  return {
+    async run(tasks, done, signal) {
+      let next = 0;
+      const lane = async (): Promise<void> => {
+        while (next < tasks.length && !signal.aborted) {
+          const task = tasks[next++] as Task;
+          done((await pool.run(task)) as TaskResult);
+        }
+      };
+      await Promise.all(Array.from({ length: Math.min(tasks.length, 2 * count) }, lane));
+    },
+    close: () => pool.close({ force: true }),
+  };
+}

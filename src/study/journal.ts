@@ -1,0 +1,71 @@
+/**
+ * The journal of a running study: one line of JSON per finished task, appended as it comes, so that an interrupted or
+ * killed run loses at most the tasks in flight. The first line names the spec; a journal of another spec is not taken
+ * up. A last line that was cut by a crash is ignored.
+ */
+import { appendFileSync, existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { dirname } from "node:path";
+import { canonicalJson, numberFrom } from "../record/json.js";
+import type { ReplicateResult, TaskResult } from "./tasks.js";
+
+export const JOURNAL_FILE = "journal.jsonl";
+
+/** The spec digest that the journal at `path` belongs to, or null where there is none. */
+export function journalOwner(path: string): string | null {
+  if (!existsSync(path)) return null;
+  const head = parseLine(readFileSync(path, "utf8").split("\n", 1)[0] ?? "") as { spec?: unknown } | null;
+  return typeof head?.spec === "string" ? head.spec : null;
+}
+
+/** A journal opened for appending, with what it already held. */
+export interface Journal {
+  /** Results by task id from an earlier run of the same spec. */
+  readonly done: ReadonlyMap<string, TaskResult>;
+  add(result: TaskResult): void;
+  /** Removes the file: the record has taken its place. */
+  remove(): void;
+}
+
+/** Opens the journal at `path` for the spec with digest `spec`; `resume` keeps what an earlier run of it left. */
+export function openJournal(path: string, spec: string, resume: boolean): Journal {
+  mkdirSync(dirname(path), { recursive: true });
+  const done = new Map<string, TaskResult>();
+  if (resume && journalOwner(path) === spec) {
+    for (const line of readFileSync(path, "utf8").split("\n").slice(1)) {
+      const result = parseLine(line);
+      if (result !== null) done.set((result as TaskResult).id, revive(result as TaskResult));
+    }
+  }
+  // Rewritten whole, so that a cut last line does not stay in the middle.
+  const lines = [{ spec }, ...done.values()].map((entry) => canonicalJson(entry));
+  writeFileSync(path, `${lines.join("\n")}\n`);
+  return {
+    done,
+    add: (result) => {
+      appendFileSync(path, `${canonicalJson(result)}\n`);
+    },
+    remove: () => {
+      rmSync(path, { force: true });
+    },
+  };
+}
+
+function parseLine(line: string): unknown {
+  try {
+    return JSON.parse(line) as unknown;
+  } catch {
+    return null;
+  }
+}
+
+/** Non-finite numbers come back from their strings. */
+function revive(result: TaskResult): TaskResult {
+  const numbers = (values: readonly unknown[]): number[] => values.map(numberFrom);
+  const results = result.results.map((r): ReplicateResult => ({
+    ...r,
+    estimates: numbers(r.estimates),
+    withinVariances: r.withinVariances.map((v) => (v === null ? null : numberFrom(v))),
+  }));
+  const offences = result.offences.map((offence) => ({ ...offence, inputs: numbers(offence.inputs) }));
+  return { ...result, results, offences };
+}

@@ -1,0 +1,85 @@
+/** Running one task: open the source for each replicate, integrate, estimate. Pure: the same task, the same result. */
+import { estimatorOf } from "../estimators/registry.js";
+import { parseSource, type SourceChoice } from "../sources/choice.js";
+import { makeKey } from "../sources/key.js";
+import { Integrator } from "./integrator.js";
+import type { RunnableProblem } from "./runnable.js";
+import type { Offence, ReplicateResult, Task, TaskResult } from "./tasks.js";
+
+/** Keeps what a thread needs again: one integrator per problem, one parsed source per id. */
+export class TaskRunner {
+  readonly #problems: ReadonlyMap<string, RunnableProblem>;
+  readonly #integrators = new Map<string, Integrator>();
+  readonly #sources = new Map<string, SourceChoice>();
+
+  constructor(problems: readonly RunnableProblem[]) {
+    this.#problems = new Map(problems.map((problem) => [problem.id, problem]));
+  }
+
+  run(task: Task): TaskResult {
+    const started = performance.now();
+    const integrator = this.#integrator(task.problem);
+    const source = this.#source(task);
+    const dimension = this.#problem(task.problem).formula.dimension;
+    const estimators = task.estimators.map(estimatorOf);
+    const n = task.sizes.at(-1) ?? 0;
+    const results: ReplicateResult[] = [];
+    const offences: Offence[] = [];
+    const { arena } = integrator.kernels;
+    const mark = arena.mark();
+    for (let replicate = task.from; replicate < task.to; replicate++) {
+      const { seed, purpose, problem, sourceId } = task;
+      const key = makeKey({
+        seed,
+        purpose,
+        problem,
+        source: sourceId,
+        replicate,
+        ...(task.perSize ? { n } : {}),
+      });
+      const stream = source.open(
+        { dimension, n, key: source.deterministic ? null : key },
+        integrator.kernels,
+      );
+      const integration = integrator.run(stream, task.sizes);
+      arena.release(mark);
+      if (integration.offending !== null) offences.push({ replicate, ...integration.offending });
+      for (const size of integration.sizes) {
+        const estimates = estimators.map((estimator) => estimator.estimate(size.moments));
+        results.push({
+          replicate,
+          n: size.n,
+          estimates: estimates.map((e) => e.estimate),
+          withinVariances: estimates.map((e) => e.withinVariance),
+          nonFinite: size.nonFinite,
+        });
+      }
+    }
+    const points = n * (task.to - task.from);
+    return { id: task.id, results, offences, points, seconds: (performance.now() - started) / 1000 };
+  }
+
+  #problem(id: string): RunnableProblem {
+    const problem = this.#problems.get(id);
+    if (problem === undefined) throw new Error(`task for unknown problem "${id}"`);
+    return problem;
+  }
+
+  #integrator(id: string): Integrator {
+    let integrator = this.#integrators.get(id);
+    if (integrator === undefined) {
+      integrator = new Integrator(this.#problem(id));
+      this.#integrators.set(id, integrator);
+    }
+    return integrator;
+  }
+
+  #source(task: Task): SourceChoice {
+    let source = this.#sources.get(task.sourceId);
+    if (source === undefined) {
+      source = parseSource(task.source);
+      this.#sources.set(task.sourceId, source);
+    }
+    return source;
+  }
+}

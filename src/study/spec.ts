@@ -1,0 +1,134 @@
+/** From problems and their resolved settings to the spec of a study, and from the spec to its tasks. */
+import type { Problem, SourceSpec } from "../problem/contract.js";
+import type { RecordSource, StudySpec } from "../record/types.js";
+import { parseSource, type SourceChoice } from "../sources/choice.js";
+import { planTasks, type Task } from "./tasks.js";
+
+/** Most points per replicate at which what is in use is run itself; above, the fitted curve speaks for it. */
+export const LARGEST_IN_USE = 2 ** 22;
+
+/** Replicates of the second stage of a bias test (method of the study: fresh keys, 256 of them). */
+export const CONFIRMATION_REPLICATES = 256;
+
+/** The sources that a missing reference is formed from: three families, each sound and randomised. */
+export function referenceSources(dimension: number): readonly string[] {
+  const candidates = ["sobol+owen", "lattice+shift", "philox4x32", "pcg64"];
+  return candidates.filter((id) => parseSource(id).source.largestDimension >= dimension).slice(0, 3);
+}
+
+/** A consensus is formed at this multiple of the study's largest size. */
+const REFERENCE_FACTOR = 4;
+
+/** Distinct valid sizes of a source for the sizes asked for, ascending. */
+export function validSizes(choice: SourceChoice, sizes: readonly number[]): number[] {
+  return [...new Set(sizes.map((n) => choice.source.nearestSize(n)))].sort((a, b) => a - b);
+}
+
+/** Sizes of `choice` on `problem`: the study's, and the number of points in use where this source is the one in use. */
+function sizesFor(spec: StudySpec, problem: Problem, choice: SourceChoice): number[] {
+  const sizes = spec.sizes[problem.id] ?? [];
+  const { inUse } = problem;
+  const own = inUse !== null && choice.id === parseSource(inUse.source).id && inUse.points <= LARGEST_IN_USE;
+  return validSizes(choice, own ? [...sizes, inUse.points] : sizes);
+}
+
+interface Row {
+  readonly problem: Problem;
+  readonly choice: SourceChoice;
+  readonly spec: SourceSpec;
+}
+
+function rows(spec: StudySpec): Row[] {
+  return spec.problems.flatMap((problem) =>
+    (spec.sources[problem.id] ?? []).map((source) => ({
+      problem,
+      choice: parseSource(source),
+      spec: source,
+    })),
+  );
+}
+
+function request(spec: StudySpec, { problem, choice, spec: source }: Row) {
+  return {
+    problem: problem.id,
+    dimension: problem.dimension,
+    source,
+    sourceId: choice.id,
+    perSize: choice.source.nesting === "per-size",
+    estimators: spec.estimators[problem.id] ?? [],
+    seed: spec.seed,
+  };
+}
+
+/** The first stage: every problem x source, all sizes. A deterministic source has one replicate. */
+export function studyTasks(spec: StudySpec): Task[] {
+  return rows(spec).flatMap((row) => {
+    const replicates = row.choice.deterministic ? 1 : (spec.replicates[row.problem.id] ?? 1);
+    const sizes = sizesFor(spec, row.problem, row.choice);
+    return planTasks({ ...request(spec, row), purpose: "study", replicates, sizes });
+  });
+}
+
+/** The long runs that a missing reference is formed from. */
+export function referenceTasks(spec: StudySpec): Task[] {
+  return spec.problems
+    .filter((problem) => problem.reference === null)
+    .flatMap((problem) =>
+      referenceSources(problem.dimension).flatMap((source) => {
+        const choice = parseSource(source);
+        const n = choice.source.nearestSize(REFERENCE_FACTOR * Math.max(...(spec.sizes[problem.id] ?? [1])));
+        const row = { problem, choice, spec: source };
+        const replicates = spec.replicates[problem.id] ?? 1;
+        const estimators = ["crude"];
+        return planTasks({ ...request(spec, row), estimators, purpose: "reference", replicates, sizes: [n] });
+      }),
+    );
+}
+
+/** A candidate of the first stage, to be confirmed at its own n. */
+export interface ConfirmationRequest {
+  readonly problem: string;
+  readonly source: string;
+  readonly estimator: string;
+  readonly n: number;
+}
+
+/** The second stage: fresh keys for the candidates. */
+export function confirmationTasks(spec: StudySpec, candidates: readonly ConfirmationRequest[]): Task[] {
+  const wanted = (row: Row) =>
+    candidates.filter((c) => c.problem === row.problem.id && c.source === row.choice.id);
+  return rows(spec).flatMap((row) => {
+    const sizes = [...new Set(wanted(row).map((c) => c.n))].sort((a, b) => a - b);
+    const estimators = [...new Set(wanted(row).map((c) => c.estimator))];
+    if (sizes.length === 0) return [];
+    const replicates = CONFIRMATION_REPLICATES;
+    return planTasks({ ...request(spec, row), estimators, purpose: "confirmation", replicates, sizes });
+  });
+}
+
+/** The sources of a study as the record describes them, each once. */
+export function recordSources(spec: StudySpec): RecordSource[] {
+  const byId = new Map(rows(spec).map(({ choice }) => [choice.id, choice]));
+  return [...byId.values()].map((choice) => {
+    const { source, randomisations, deterministic, id } = choice;
+    const { title, citation, family, method, outputBits, period, largestDimension, nesting, knownStructure } =
+      source;
+    const described = {
+      title,
+      citation,
+      family,
+      method,
+      outputBits,
+      largestDimension,
+      nesting,
+      knownStructure,
+    };
+    return {
+      ...described,
+      id,
+      period: period === null ? null : period.toString(),
+      deterministic,
+      randomisations,
+    };
+  });
+}

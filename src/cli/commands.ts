@@ -1,0 +1,128 @@
+/** The table of commands: help and the check of flags come from it; bodies are imported when they run. */
+import type { Options } from "yargs";
+import type { Command } from "./command.js";
+
+const text = (describe: string): Options => ({ type: "string", requiresArg: true, describe });
+const flag = (describe: string): Options => ({ type: "boolean", describe });
+
+const json = flag("print one JSON document instead of a table");
+const seed = text("seed of the study (a whole number)");
+const source = text("a source: id, inline mapping, or @file.yaml; repeatable");
+const dimension: Options = { ...text("coordinates per point"), alias: "dimensions" };
+
+const studySettings = {
+  source,
+  sources: text("ids of sources, with commas between"),
+  sizes: text('numbers of points, e.g. "2^8..2^16", "1000..1000000 by 10" or "1000,5000"'),
+  replicates: text("independent replicates per source"),
+  estimators: text("estimators, with commas between"),
+  "false-alarms": text("level of the family of bias tests, e.g. 0.01"),
+  seed,
+};
+
+export const commands: readonly Command[] = [
+  {
+    name: "new",
+    positional: "<name>",
+    summary: "write a commented problem file that runs as it is",
+    options: { kind: { ...text("what to write"), choices: ["problem"], default: "problem" } },
+    load: () => import("./commands/new.js"),
+  },
+  {
+    name: "study",
+    positional: "<paths..>",
+    summary: "run problems under sources, write a report folder, print the verdicts",
+    options: {
+      ...studySettings,
+      out: text("report folder (default: reports/NAME)"),
+      threads: text("worker threads (default: all processors)"),
+      resume: flag("go on with an interrupted run of the same study"),
+      replace: flag("overwrite a report folder that holds another study"),
+      "dry-run": flag("print tasks and expected time, run nothing"),
+      undecided: {
+        ...text("what an undecided verdict of what is in use does to the exit code"),
+        choices: ["pass", "fail"],
+      },
+      images: flag("write the figures as SVG files too"),
+      json,
+    },
+    load: () => import("./commands/study.js"),
+  },
+  {
+    name: "check",
+    positional: "<paths..>",
+    summary: "validate problem files and print what the program understood",
+    options: {
+      ...studySettings,
+      at: text(
+        "evaluate the integrand at this point of the unit cube: one number for all coordinates, or one each",
+      ),
+      resolved: flag("print every setting and where it comes from"),
+      json,
+    },
+    load: () => import("./commands/check.js"),
+  },
+  {
+    name: "points",
+    positional: "<source>",
+    summary: "write points of a source, or its own integers",
+    options: {
+      dimension,
+      points: text("how many points (with --format integers: how many outputs)"),
+      first: text("index of the first point, 0-based"),
+      seed,
+      state: text("the source's own starting state in published form, or @file"),
+      format: {
+        ...text("form of the output"),
+        choices: ["csv", "f64le", "u64le", "u32le", "integers"],
+        default: "csv",
+      },
+    },
+    load: () => import("./commands/points.js"),
+  },
+  {
+    name: "sources",
+    positional: "",
+    summary: "list the sources",
+    options: { json },
+    load: () => import("./commands/sources.js"),
+  },
+  {
+    name: "problems",
+    positional: "",
+    summary: "list the shipped problems, or copy a suite",
+    options: { json, copy: text("name of a shipped suite to copy into the working folder") },
+    load: () => import("./commands/problems.js"),
+  },
+  {
+    name: "functions",
+    positional: "",
+    summary: "list the functions of the formula language",
+    options: { json },
+    load: () => import("./commands/functions.js"),
+  },
+  {
+    name: "estimators",
+    positional: "",
+    summary: "list the estimators",
+    options: { json },
+    load: () => import("./commands/estimators.js"),
+  },
+  {
+    name: "report",
+    positional: "<record>",
+    summary: "redraw a report from its record (a report folder will do)",
+    options: {
+      out: text("folder to write to (default: where the record is)"),
+      images: flag("write the figures as SVG files too"),
+    },
+    load: () => import("./commands/report.js"),
+  },
+  {
+    name: "schema",
+    positional: "",
+    summary: "print the JSON Schema of the problem file, or of the record",
+    options: { record: flag("of the record") },
+    load: () => import("./commands/schema.js"),
+  },
+];

@@ -1,0 +1,38 @@
+/** The words of the command line, in one place; tests hold them word for word. */
+
+export const usage = [
+  "tolerand measures, explains and budgets the error of Monte Carlo and quasi-Monte Carlo integration.",
+  "",
+  "  tolerand study tour          see it work: a dozen sources on six integrands, with a report",
+  "  tolerand new season          your formula: a commented file to begin with",
+  "  tolerand check season.yaml   what the program understands of it",
+  "  tolerand study season.yaml   run it, judge it against its tolerance",
+  "  tolerand sources             the generators and sequences there are",
+  "",
+  "  tolerand --help lists every command, tolerand COMMAND --help its flags.",
+  "",
+].join("\n");
+
+export const messages = {
+  unknownCommand: (found: string, near: string | null, known: readonly string[]) =>
+    `command: expected one of ${known.join(", ")}, found "${found}"${proposal(near)}`,
+  unknownFlag: (command: string, found: string, near: string | null) =>
+    `--${found}: not a flag of "tolerand ${command}"${proposal(near && `--${near}`)}; see tolerand ${command} --help`,
+  internal: (message: string) =>
+    `internal error: ${message}\nThis is a fault of the program, not of your input. Run again with TOLERAND_TRACE=1 to see where it happened.`,
+  wholeNumber: (flag: string, least: number, found: string) =>
+    `--${flag}: expected a whole number of at least ${least}, found "${found}"`,
+  interrupted: (folder: string, command: string) =>
+    `Interrupted. What is done stands in ${folder}.\nNext: ${command}${command.includes(" --resume") ? "" : " --resume"}\n`,
+  unfinished: (folder: string) =>
+    `--out: ${folder} holds an unfinished run of this study; go on with --resume, or start anew with --replace`,
+  otherJournal: (folder: string) =>
+    `--resume: ${folder} holds an unfinished run of another study (other problems, sources, sizes or seed); choose another folder with --out, or give it up with --replace`,
+  otherStudy: (folder: string) =>
+    `--out: ${folder} holds the record of another study and is not overwritten; choose another folder with --out, or overwrite it with --replace`,
+  next: (text: string) => `Next: ${text}\n`,
+};
+
+function proposal(near: string | null): string {
+  return near === null ? "" : `; did you mean ${near}?`;
+}

@@ -24,7 +24,13 @@ export default tseslint.config(
     files: ["**/*.js", "**/*.mjs"],
     extends: [tseslint.configs.disableTypeChecked],
     languageOptions: {
-      globals: { process: "readonly", console: "readonly", URL: "readonly", performance: "readonly" },
+      globals: {
+        process: "readonly",
+        console: "readonly",
+        URL: "readonly",
+        performance: "readonly",
+        WebAssembly: "readonly",
+      },
     },
   },
 );

@@ -61,12 +61,12 @@ try {
       stdio: "inherit",
     });
   });
+  step("tables", [...common, ...tables], [], () => {
+    for (const file of tables) cpSync(file, file.replace(join(root, "src"), join(root, "dist")));
+  });
   step("typescript", [...common, join(root, "tsconfig.json"), ...hostSources], ["dist/cli/main.js"], () => {
     execFileSync(bin("tsc"), ["-p", "tsconfig.json"], { cwd: root, stdio: "inherit" });
     chmodSync(join(root, "dist", "cli", "main.js"), 0o755);
-  });
-  step("tables", [...common, ...tables], [], () => {
-    for (const file of tables) cpSync(file, file.replace(join(root, "src"), join(root, "dist")));
   });
 } catch (error) {
   if (error.status === undefined) throw error;

@@ -20,6 +20,7 @@ export function signed(value: number, uncertainty: number | null): string {
 
 /** A value to the digits that its interval supports (a 95 % interval is about four standard errors wide). */
 export function withInterval(value: number, interval: readonly [number, number] | null): string {
+  if (value === 0) return "0";
   return formatValue(value, interval === null ? null : (interval[1] - interval[0]) / 4);
 }
 

@@ -67,7 +67,8 @@ function subjectLines(subject: Subject, colour: boolean): string[] {
     rows.map((r) => [r.shape, r.row.label, r.n, r.word, r.total, r.largestLine, r.reach, r.cost]),
   );
   const lines = table.map((line, i) => `  ${i === 0 ? line : paint(line, rows[i - 1]?.shape ?? "", colour)}`);
-  return [head, ...lines];
+  const used = subject.inUseSentence;
+  return [head, ...lines, ...(used === null ? [] : [`  ${plainText(used)}`])];
 }
 
 /**

@@ -132,7 +132,7 @@ export function biasMap(view: View): Chart | null {
     },
     {
       data: { values: data.filter((d) => d["confirmed"]) },
-      mark: { type: "rect", fillOpacity: 0, stroke: PAGE.ink.light, strokeWidth: 1.4 },
+      mark: { type: "rect", fill: null, stroke: PAGE.ink.light, strokeWidth: 1.4 },
       encoding: { x: x("x"), x2: { field: "x2" }, y: y("y"), y2: { field: "y2" }, description },
     },
     {
@@ -144,7 +144,7 @@ export function biasMap(view: View): Chart | null {
       data: { values: heads },
       mark: {
         type: "text",
-        angle: -40,
+        angle: 320,
         align: "left",
         baseline: "middle",
         color: PAGE.ink.light,

@@ -15,7 +15,6 @@ import {
   type Spec,
   Marks,
   counted,
-  familyKey,
   framed,
   listed,
   sourceChannels,
@@ -94,7 +93,7 @@ function scaleFor(
 }
 
 /** The chart of one subject, or null where no bias is known. */
-export function biasChart(view: View, subject: Subject): Chart | null {
+export function biasChart(_view: View, subject: Subject): Chart | null {
   const all = found(subject.rows);
   if (all.length === 0) return null;
   const height = all.length * STEP;
@@ -206,8 +205,7 @@ export function biasChart(view: View, subject: Subject): Chart | null {
     says,
     caption:
       "A point is the measured bias, its bar two standard errors either way, replicates and reference together. The grey ticks beside it stand at the smallest bias, of either sign, that the test would have found with 80 % power. " +
-      "A filled diamond is a bias confirmed on fresh keys. The shaded band is the tolerance." +
-      ` ${familyKey(view, false)}`,
+      "A filled diamond is a bias confirmed on fresh keys. The shaded band is the tolerance.",
     alt: `Bias of ${counted(all.length, "source")} on ${subject.title}, tolerance ${toleranceWords(subject)}. ${title}`,
     notDrawn:
       all.length < subject.rows.length

@@ -95,7 +95,7 @@ export interface FrameParts {
 /** The whole specification: title and plain line above, layers within fixed margins. */
 export function framed(parts: FrameParts): Spec {
   const { margins, width } = parts;
-  const limit = Math.floor((width + margins.left + margins.right - 20) / 7.5);
+  const limit = Math.floor((width + margins.left + margins.right - 20) / 8.1);
   const text = wrapped(parts.title, limit);
   const subtitle = wrapped(parts.says, Math.floor(limit * 1.15));
   const head = text.length * 19 + subtitle.length * 16 + 18;
@@ -107,7 +107,7 @@ export function framed(parts: FrameParts): Spec {
     height: parts.height,
     autosize: { type: "none" },
     padding: { left: margins.left, right: margins.right, bottom: margins.bottom, top: margins.top + head },
-    title: { text, subtitle, anchor: "start", x: 8 - margins.left, frame: "bounds", offset: margins.top },
+    title: { text, subtitle, anchor: "start", dx: 8 - margins.left, frame: "group", offset: margins.top },
     layer: parts.layer,
     config: {
       font: FONT,

@@ -38,7 +38,7 @@ export async function figure(chart: Chart): Promise<Markup> {
       <summary>The numbers</summary>
       ${dataTable(chart.table)}
     </details>
-    <p class="aside">
+    <p class="aside file">
       <a href="charts/${chart.name}.vl.json">${chart.name}.vl.json</a> (the chart as a Vega-Lite
       specification)
     </p>

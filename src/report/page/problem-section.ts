@@ -96,8 +96,8 @@ function ranking(subject: Subject): Markup {
       </table>
     </div>
     <p class="aside">
-      The total error adds the lines of the budget at the problem's confidence, in units of the quantity. ≈
-      marks an n beyond four times the largest measured. Cost is the time of one thread for that n.
+      The total error adds the lines of the budget at the problem's confidence, in units of the quantity. An n
+      to tolerance is read off the fitted curve; cost is the time of one thread for it.
     </p>`;
 }
 
@@ -143,7 +143,7 @@ function remarks(subject: Subject): Markup[] {
   for (const row of subject.rows) {
     const { budget } = row;
     if (budget === null || budget.reason === null) continue;
-    const key = `${budget.verdict}: ${budget.reason}`;
+    const key = `${budget.verdict === "none" ? "no verdict" : budget.verdict} (${budget.reason})`;
     reasons.set(key, [...(reasons.get(key) ?? []), row.label]);
   }
   const why = [...reasons].map(

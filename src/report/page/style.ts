@@ -90,27 +90,31 @@ dd{margin-bottom:.5rem}
 }
 @media (prefers-reduced-motion:no-preference){.chart [data-s]{transition:opacity .15s}}
 @media print{
-@page{margin:14mm}
-html{color-scheme:light}
-body{font-size:9.5pt;line-height:1.4;background:#fff}
-nav,.controls,details,#tip,#following{display:none!important}
+@page{size:A4;margin:12mm}
+html{color-scheme:light;font-size:8pt}
+body{font-size:1rem;line-height:1.35;background:#fff}
+nav,.controls,details,.file,#tip,#following{display:none!important}
 .sheet{display:block;padding:0;max-width:none}
+main>header,main>section>*,.item>*,figure h4,figure .says,figcaption,figure .aside{max-width:none}
 .scroll{overflow:visible}
-h2{margin-top:0}
-h3{margin-top:0;font-size:13pt}
+h2,h3{margin-top:0}
+h4{margin-top:1rem}
 main>section,.problem{break-before:page}
 main>section:first-of-type,.problem:first-of-type{break-before:auto}
 h2,h3,h4{break-after:avoid}
-figure,tr,pre{break-inside:avoid}
-figure{margin:.6rem 0}
-.problem .chart{max-height:78mm;width:auto;min-width:0}
-.chart{min-width:0}
-table{font-size:8pt;margin:.4rem 0}
-th,td{padding:.12rem .6rem .12rem 0}
-figcaption,.aside,.says{font-size:8pt;line-height:1.35}
+figure,tr,pre,.item{break-inside:avoid}
+figure{margin:.6rem 0 0}
+figcaption{margin:.2rem 0}
+.says{margin:0 0 .2rem}
+.chart{min-width:0;max-width:100%}
+.problem .chart{width:auto;max-height:56mm}
+.problem figure:last-child .chart{max-height:42mm}
+table{margin:.3rem 0}
+th,td{padding-top:.1rem;padding-bottom:.1rem}
 dl{margin:.4rem 0;gap:.05rem 1rem}
-p{margin:.3rem 0}
-.item{break-inside:avoid}
+dt{line-height:1.5}
+p{margin:.25rem 0}
+a{color:inherit;text-decoration:none}
 }
 `;
 

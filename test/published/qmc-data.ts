@@ -36,6 +36,8 @@ interface QmcReference {
       { numerators_gray: string[]; at_n: Record<string, { gray: string; natural: string }> }
     >;
     readonly direction_integers_v_k_32bit: Record<string, string[]>;
+    /** Keys like "dims1..3", then m: the least t of the first 2^m points. */
+    readonly "t_values_first_2^m_points": Record<string, Record<string, number>>;
   };
   readonly halton: {
     readonly primes: number[];

@@ -31,10 +31,15 @@ export const lattice: Source = {
   citation:
     "D. Nuyens and R. Cools, Fast component-by-component construction of rank-1 lattice rules with a non-prime number of points, Journal of Complexity 22 (2006) 4-28",
   largestDimension: 1000,
-  nearestSize: (n) => 2 ** Math.round(Math.log2(Math.min(n, LARGEST_SIZE))),
+  nearestSize: nearestPowerOfTwo,
   open: (request, kernels) =>
     openLattice(lattice, () => vectorOf(request.n, request.dimension), request, kernels),
 };
+
+function nearestPowerOfTwo(n: number): number {
+  const below = 2 ** Math.floor(Math.log2(Math.min(n, LARGEST_SIZE)));
+  return n - below < 2 * below - n || below === LARGEST_SIZE ? below : 2 * below;
+}
 
 /** Vectors built so far in this process: the longest one of each size. */
 const built = new Map<number, Uint32Array>();

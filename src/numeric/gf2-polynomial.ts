@@ -77,12 +77,17 @@ function reversed(polynomial: bigint, length: number): bigint {
 /** A linear map of state words. */
 export type LinearStep = (state: readonly bigint[]) => readonly bigint[];
 
-/** Minimal polynomial of the sequence of lowest bits of the first word from `start`: that of `step` for full-period generators. */
+/**
+ * Minimal polynomial of the sequence of lowest bits of the words' sum over GF(2), from `start`: that of `step` itself
+ * where every part of the state shows in that bit, as it does for full-period generators and combinations of them.
+ * `size` is at least the degree.
+ */
 export function characteristicPolynomial(step: LinearStep, start: readonly bigint[], size: number): bigint {
   const bits: (0 | 1)[] = [];
   let state = start;
   for (let i = 0; i < 2 * size; i++) {
-    bits.push((state[0] ?? 0n) & 1n ? 1 : 0);
+    const sum = state.reduce((total, word) => total ^ word, 0n);
+    bits.push(sum & 1n ? 1 : 0);
     state = step(state);
   }
   return berlekampMassey(bits);

@@ -13,7 +13,15 @@ import { nearest } from "../numeric/nearest.js";
 import { congruential, LARGEST_MODULUS } from "./congruential.js";
 import type { Source } from "./contract.js";
 import { bitsOf, type Bits } from "./conversion.js";
-import { isPseudoRandom, pseudoRandom, USUAL, type Recurrence, type Tuples } from "./pseudo-random.js";
+import {
+  isPseudoRandom,
+  pseudoRandom,
+  USUAL,
+  type PseudoRandomSource,
+  type Recurrence,
+  type Tuples,
+  type Usage,
+} from "./pseudo-random.js";
 import { findSource, isSourceId, sourceIds } from "./registry.js";
 
 /** Outputs that `strided` may pass over: beyond it a run is nearly all waste. */
@@ -61,13 +69,14 @@ export function parseOwnSource(written: Readonly<Record<string, unknown>>): Sour
   if (!result.success) throw new TypeError(explain(result.error.issues[0], written));
   const mapping = result.data;
   if (isSourceId(mapping.name)) fail("name", `"${mapping.name}"`, "a name that no source of the program has");
-  const recurrence = baseOf(mapping);
+  const { recurrence, usage } = baseOf(mapping);
   return pseudoRandom(
     { ...recurrence, about: { ...recurrence.about, id: mapping.name } },
     {
       tuples: parseTuples(mapping.tuples),
-      endpoint: mapping.endpoint ?? USUAL.endpoint,
-      bits: parseBits(mapping.bits, bitsOf(recurrence.output.modulus)),
+      endpoint: mapping.endpoint ?? usage.endpoint,
+      bits:
+        mapping.bits === undefined ? usage.bits : parseBits(mapping.bits, bitsOf(recurrence.output.modulus)),
     },
     "own",
   );
@@ -77,19 +86,20 @@ function fail(key: string, found: string, allowed = ALLOWED[key] ?? ""): never {
   throw new RangeError(`source.${key}: expected ${allowed}, found ${found}`);
 }
 
-function baseOf(mapping: Mapping): Recurrence {
+/** The generator and, for one of the registry, how it is used there. */
+function baseOf(mapping: Mapping): { recurrence: Recurrence; usage: Usage } {
   if (mapping.source !== undefined && mapping.congruential !== undefined) {
     fail("congruential", "both", 'one of "congruential" and "source"');
   }
-  if (mapping.source !== undefined) return recurrenceOf(mapping.source);
+  if (mapping.source !== undefined) return named(mapping.source);
   if (mapping.congruential === undefined)
     fail("congruential", "neither", 'one of "congruential" and "source"');
-  return ownCongruential(mapping.name, mapping.congruential);
+  return { recurrence: ownCongruential(mapping.name, mapping.congruential), usage: USUAL };
 }
 
-function recurrenceOf(id: string): Recurrence {
+function named(id: string): PseudoRandomSource {
   const source = findSource(id);
-  if (isPseudoRandom(source)) return source.recurrence;
+  if (isPseudoRandom(source)) return source;
   const all = sourceIds().filter((candidate) => isPseudoRandom(findSource(candidate)));
   return fail("source", `"${id}"`, `a pseudo-random source (${all.join(", ")})`);
 }
@@ -129,8 +139,8 @@ function parseTuples(written = "successive"): Tuples {
   return fail("tuples", `"${written}"`, `"strided k" with k from 1 to ${LARGEST_STRIDE}`);
 }
 
-function parseBits(written: string | undefined, available: number): Bits | null {
-  const [end, digits] = (written ?? "all").split(" ");
+function parseBits(written: string, available: number): Bits | null {
+  const [end, digits] = written.split(" ");
   if (end !== "top" && end !== "low") return null;
   const count = Number(digits);
   if (count >= 1 && count <= available) return { end, count };

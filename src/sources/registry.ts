@@ -3,22 +3,81 @@ import type { Source, SourceDescription } from "./contract.js";
 import { halton } from "./halton.js";
 import { kronecker } from "./kronecker.js";
 import { lattice } from "./lattice.js";
+import {
+  drand48,
+  lcg1103515245,
+  lcg1664525,
+  lcg6364136223846793005,
+  lcg69069,
+  lrand48,
+  mrand48,
+} from "./lcg-binary.js";
+import {
+  lcg1226874159,
+  lcg1343714438,
+  lcg1583458089,
+  lcg62089911,
+  lcg742938285,
+  lcg784588716,
+  lcg950706376,
+} from "./lcg-prime.js";
+import { lecuyer1988 } from "./lecuyer1988.js";
 import { minstd16807, minstd48271 } from "./minstd.js";
+import { mrg32k3a } from "./mrg32k3a.js";
 import { mt19937 } from "./mt19937.js";
+import { pcg32 } from "./pcg32.js";
+import { pcg64Dxsm } from "./pcg64-dxsm.js";
 import { pcg64 } from "./pcg64.js";
 import { philox4x32 } from "./philox4x32.js";
 import { randu } from "./randu.js";
+import { sfc64 } from "./sfc64.js";
 import { sobol } from "./sobol.js";
-import { xoshiro256PlusPlus } from "./xoshiro256.js";
+import { splitMix64 } from "./splitmix64.js";
+import { lfsr113, taus88 } from "./tausworthe.js";
+import { wichmannHill } from "./wichmann-hill.js";
+import { xoroshiro128Plus, xoroshiro128PlusPlus, xoroshiro128StarStar } from "./xoroshiro128.js";
+import { xorshift128, xorshift32, xorshift64Star } from "./xorshift.js";
+import { xoshiro256Plus, xoshiro256PlusPlus, xoshiro256StarStar } from "./xoshiro256.js";
 
 /** Every id, in the order of listings; an id without an entry in the table does not compile. */
 export type SourceId =
   | "randu"
   | "minstd-16807"
   | "minstd-48271"
+  | "lcg-742938285"
+  | "lcg-950706376"
+  | "lcg-1226874159"
+  | "lcg-62089911"
+  | "lcg-1343714438"
+  | "lcg-1583458089"
+  | "lcg-784588716"
+  | "lcg-69069"
+  | "lcg-1103515245"
+  | "lcg-1664525"
+  | "lcg-6364136223846793005"
+  | "drand48"
+  | "lrand48"
+  | "mrand48"
+  | "wichmann-hill"
+  | "lecuyer1988"
+  | "mrg32k3a"
   | "mt19937"
+  | "taus88"
+  | "lfsr113"
+  | "xorshift32"
+  | "xorshift64*"
+  | "xorshift128"
+  | "xoroshiro128+"
+  | "xoroshiro128++"
+  | "xoroshiro128**"
+  | "xoshiro256+"
   | "xoshiro256++"
+  | "xoshiro256**"
+  | "pcg32"
   | "pcg64"
+  | "pcg64-dxsm"
+  | "sfc64"
+  | "splitmix64"
   | "philox4x32"
   | "sobol"
   | "halton"
@@ -29,9 +88,40 @@ const sources: Readonly<Record<SourceId, Source>> = {
   randu,
   "minstd-16807": minstd16807,
   "minstd-48271": minstd48271,
+  "lcg-742938285": lcg742938285,
+  "lcg-950706376": lcg950706376,
+  "lcg-1226874159": lcg1226874159,
+  "lcg-62089911": lcg62089911,
+  "lcg-1343714438": lcg1343714438,
+  "lcg-1583458089": lcg1583458089,
+  "lcg-784588716": lcg784588716,
+  "lcg-69069": lcg69069,
+  "lcg-1103515245": lcg1103515245,
+  "lcg-1664525": lcg1664525,
+  "lcg-6364136223846793005": lcg6364136223846793005,
+  drand48,
+  lrand48,
+  mrand48,
+  "wichmann-hill": wichmannHill,
+  lecuyer1988,
+  mrg32k3a,
   mt19937,
+  taus88,
+  lfsr113,
+  xorshift32,
+  "xorshift64*": xorshift64Star,
+  xorshift128,
+  "xoroshiro128+": xoroshiro128Plus,
+  "xoroshiro128++": xoroshiro128PlusPlus,
+  "xoroshiro128**": xoroshiro128StarStar,
+  "xoshiro256+": xoshiro256Plus,
   "xoshiro256++": xoshiro256PlusPlus,
+  "xoshiro256**": xoshiro256StarStar,
+  pcg32,
   pcg64,
+  "pcg64-dxsm": pcg64Dxsm,
+  sfc64,
+  splitmix64: splitMix64,
   philox4x32,
   sobol,
   halton,

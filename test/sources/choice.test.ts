@@ -5,6 +5,10 @@ import { listSources, sourceIds } from "../../src/sources/registry.js";
 
 const house = { modulus: "2^31", multiplier: 65539, increment: 0 };
 
+function pseudoRandomIds(): string[] {
+  return listSources().flatMap(({ id, family }) => (family === "pseudo-random" ? [id] : []));
+}
+
 function message(spec: unknown): string {
   try {
     parseSource(spec as SourceSpec);
@@ -25,7 +29,8 @@ describe("listing", () => {
       expect(citation).toMatch(/\d{4}/);
       expect(method).not.toBe("");
       expect(outputBits).toBeGreaterThan(0);
-      expect(period === null).toBe(family !== "pseudo-random");
+      // the cycle of a chaotic generator is known by its least length alone
+      if (method !== "chaotic with counter") expect(period === null).toBe(family !== "pseudo-random");
     }
   });
 });
@@ -44,7 +49,7 @@ describe("ids", () => {
     expect(message("mt19973")).toBe(
       `source: unknown source "mt19973"; did you mean "mt19937"? (known: ${sourceIds().join(", ")})`,
     );
-    expect(message("xoshiro256")).toContain('did you mean "xoshiro256++"?');
+    expect(message("xoshiro256")).toContain('did you mean "xoshiro256+"?');
     expect(message("philox4x23+owen")).toContain('did you mean "philox4x32"?');
     expect(message("a name that nothing here resembles")).toBe(
       `source: unknown source "a name that nothing here resembles" (known: ${sourceIds().join(", ")})`,
@@ -153,7 +158,7 @@ describe("the user's own source", () => {
     ],
     [
       { name: "house", source: "nothing" },
-      'source.source: expected a pseudo-random source (randu, minstd-16807, minstd-48271, mt19937, xoshiro256++, pcg64, philox4x32), found "nothing"',
+      `source.source: expected a pseudo-random source (${pseudoRandomIds().join(", ")}), found "nothing"`,
     ],
   ])("%j is refused", (spec, expected) => {
     expect(message(spec)).toBe(expected);

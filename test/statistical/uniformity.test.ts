@@ -90,6 +90,15 @@ describe("sources with known structure fail where their structure shows", () => 
     expect(triples("randu")).toBeGreaterThan(100);
   });
 
+  test("kronecker: sqrt(2) and sqrt(5) nearly line up, and the pair is uneven where its neighbours are far too even", () => {
+    const [u = new Float64Array(), v = new Float64Array(), w = new Float64Array()] = rowsOf(
+      parseSource("kronecker"),
+    );
+    expect(deviate(countCells([u, w], 32))).toBeGreaterThan(30);
+    expect(deviate(countCells([u, v], 32))).toBeLessThan(-10);
+    expect(deviate(countCells([v, w], 32))).toBeLessThan(-10);
+  });
+
   test("a sound source passes the same test", () => {
     for (const id of ["philox4x32", "pcg64", "mt19937"]) expect(Math.abs(triples(id))).toBeLessThan(LIMIT);
   });

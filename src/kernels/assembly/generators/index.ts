@@ -8,8 +8,14 @@ export {
   rowsScaled32,
   rowsScaled64,
 } from "./convert";
+export { fillLecuyer1988, fillMrg32k3a, fillWichmannHill } from "./combined";
 export { fillFolded, fillGeneral, fillPowerOfTwo, fillShort, fractionWords } from "./congruential";
 export { fillMt19937 } from "./mt19937";
-export { fillPcg64 } from "./pcg64";
+export { fillPcg32 } from "./pcg32";
+export { fillPcg64, fillPcg64Dxsm } from "./pcg64";
 export { fillPhilox4x32 } from "./philox4x32";
-export { fillXoshiro256PlusPlus } from "./xoshiro256";
+export { fillSfc64, fillSplitMix64 } from "./small64";
+export { fillLfsr113, fillTaus88 } from "./tausworthe";
+export { fillXoroshiro128Plus, fillXoroshiro128PlusPlus, fillXoroshiro128StarStar } from "./xoroshiro128";
+export { fillXorshift128, fillXorshift32, fillXorshift64Star } from "./xorshift";
+export { fillXoshiro256Plus, fillXoshiro256PlusPlus, fillXoshiro256StarStar } from "./xoshiro256";

@@ -21,3 +21,25 @@ export function fillPcg64(state: usize, out: usize, count: i32): void {
   store<u64>(state, lo);
   store<u64>(state, hi, 8);
 }
+
+// PCG64 DXSM: the double xorshift multiply output of the same author (2019), with a 64-bit multiplier.
+const CHEAP: u64 = 0xda942042e4dd58b5;
+
+/** The next `count` 64-bit words: each is taken from the state before the step. Layout as above. */
+export function fillPcg64Dxsm(state: usize, out: usize, count: i32): void {
+  let lo = load<u64>(state), hi = load<u64>(state, 8), incLo = load<u64>(state, 16), incHi = load<u64>(state, 24);
+  for (let i = 0; i < count; i++) {
+    let word = hi;
+    word ^= word >> 32;
+    word *= CHEAP;
+    word ^= word >> 48;
+    store<u64>(out, word * (lo | 1));
+    out += 8;
+    let productLo = lo * CHEAP;
+    let productHi = mulHigh(lo, CHEAP) + hi * CHEAP;
+    lo = productLo + incLo;
+    hi = productHi + incHi + (lo < productLo ? 1 : 0);
+  }
+  store<u64>(state, lo);
+  store<u64>(state, hi, 8);
+}

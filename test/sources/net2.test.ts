@@ -145,7 +145,7 @@ describe("owen", () => {
     }
   });
 
-  it("the kernel's hash is lowbias32 with two key words", () => {
+  it("the kernel's hash is lowbias32 behind a round with two key words", () => {
     const kernels = instantiateKernels();
     const pointer = kernels.arena.allocate(8);
     const word = fc.nat(0xffffffff);

@@ -2,12 +2,14 @@
 
 const WORD = 0xffffffffn;
 
-/** lowbias32 (C. Wellons, 2018) with key words k0 and k1, in plain 32-bit arithmetic. */
+/** lowbias32 (C. Wellons, 2018) behind one round keyed by k0 and k1, in plain 32-bit arithmetic. */
 export function referenceHash(prefix: number, k0: number, k1: number): number {
   let h = BigInt(prefix);
   h = (h + BigInt(k0)) & WORD;
   h ^= h >> 16n;
-  h = (h * 0x7feb352dn + BigInt(k1)) & WORD;
+  h = ((h * 0x9e3779b9n) & WORD) ^ BigInt(k1);
+  h ^= h >> 16n;
+  h = (h * 0x7feb352dn) & WORD;
   h ^= h >> 15n;
   h = (h * 0x846ca68bn) & WORD;
   return Number(h ^ (h >> 16n));

@@ -8,7 +8,9 @@
 // interval of length 2^-32).
 //
 // The hash is lowbias32 (C. Wellons, "Prospecting for hash functions", 2018; multipliers 7feb352d and 846ca68b from
-// memory, avalanche measured in the tests), with one key word added before and one after the first multiplication.
+// memory, avalanche measured in the tests) behind one keyed round with the golden ratio multiplier 9e3779b9 (D. E. Knuth,
+// vol. 3, section 6.4): one key word is added before that round, the other xored after it, so that every bit of the prefix
+// and of both key words passes through all of lowbias32.
 //
 // The 15 node bits in a word, as coefficients: with digits d0, d1, d2, d3 of the group, the flip of the digit at depth q
 // is a uniformly random Boolean function of the q digits before it. Bit 3 of nibble 0 is the function of depth 0; bit 2
@@ -20,6 +22,7 @@ import { sub } from "../vector";
 const BELOW_ONE: f64 = 1.0 - 1.1102230246251565e-16;
 
 // Splat constants; loads are cheaper than v128.const in V8.
+const M0 = memory.data<u32>([0x9e3779b9, 0x9e3779b9, 0x9e3779b9, 0x9e3779b9], 16);
 const M1 = memory.data<u32>([0x7feb352d, 0x7feb352d, 0x7feb352d, 0x7feb352d], 16);
 const M2 = memory.data<u32>([0x846ca68b, 0x846ca68b, 0x846ca68b, 0x846ca68b], 16);
 const NODES = memory.data<u32>([0x1111337f, 0x1111337f, 0x1111337f, 0x1111337f], 16);
@@ -33,7 +36,9 @@ export function owenHash(prefix: u32, keys: usize): u32 {
 function hash(prefix: v128, keys: usize): v128 {
   let h = i32x4.add(prefix, v128.load32_splat(keys));
   h = v128.xor(h, i32x4.shr_u(h, 16));
-  h = i32x4.add(i32x4.mul(h, v128.load(M1)), v128.load32_splat(keys, 4));
+  h = v128.xor(i32x4.mul(h, v128.load(M0)), v128.load32_splat(keys, 4));
+  h = v128.xor(h, i32x4.shr_u(h, 16));
+  h = i32x4.mul(h, v128.load(M1));
   h = v128.xor(h, i32x4.shr_u(h, 15));
   h = i32x4.mul(h, v128.load(M2));
   return v128.xor(h, i32x4.shr_u(h, 16));

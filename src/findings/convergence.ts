@@ -1,8 +1,8 @@
 /**
  * Convergence of one series: order, floor, and the points and cost to reach the tolerance.
  *
- * - Order: slope of ln RMSE on ln n by weighted least squares, weights from the jackknife variance at each n; 95 %
- *   interval by jackknife over replicates, left out at all n together, because errors at nested n are correlated.
+ * - Order: slope of ln RMSE on ln n by weighted least squares, weights R - 1 (spread.ts says why); 95 % interval
+ *   by jackknife over replicates, left out at all n together, because errors at nested n are correlated.
  * - Floor: the larger of the upper limit of |bias| and the plateau of s (spread.ts); its lower limit counts a bias only
  *   where it is confirmed. "Never" needs a lower limit above the tolerance and last three doublings that reject decay.
  * - Reach: the n at which k s(n) and the known bias lines together keep the tolerance. The resolution of the study (the

@@ -8,36 +8,37 @@ export function formatValue(value: number, uncertainty: number | null = null): s
   if (!Number.isFinite(value)) return String(value);
   if (value === 0 && uncertainty === null) return "0";
   if (uncertainty === null || !(uncertainty > 0) || !Number.isFinite(uncertainty)) return plain(value, 2);
+  const size = Math.abs(value);
   const place = Math.floor(Math.log10(uncertainty)) - 1;
-  const digits = Math.floor(Math.log10(Math.abs(value) || uncertainty)) - place + 1;
-  // Below its own uncertainty a value keeps the places of the uncertainty.
-  if (digits < 1) return place < 0 ? fixed(0 * value, -place) : "0";
-  return plain(value, Math.min(17, digits));
+  const digits = Math.min(17, Math.floor(Math.log10(size)) - place + 1);
+  // A value far below its own uncertainty keeps the places of the uncertainty.
+  if ((size < 1e-4 || size >= 1e9) && digits >= 1) return exponential(value, digits);
+  return place < 0 ? fixed(value, -place) : fixed(Math.round(value / 10 ** place) * 10 ** place, 0);
 }
 
 /** `digits` significant digits, with an exponent only below 1e-4 or from 1e9 on. */
 function plain(value: number, digits: number): string {
   const size = Math.abs(value);
-  if (size !== 0 && (size < 1e-4 || size >= 1e9)) {
-    return minus(value.toExponential(digits - 1).replace("e+", "e"));
-  }
+  if (size !== 0 && (size < 1e-4 || size >= 1e9)) return exponential(value, digits);
   const rounded = Number(value.toPrecision(digits));
-  const places = digits - 1 - Math.floor(Math.log10(Math.abs(rounded) || 1));
-  return places > 0 ? fixed(rounded, places) : minus(grouped(rounded));
+  return fixed(rounded, Math.max(0, digits - 1 - Math.floor(Math.log10(Math.abs(rounded) || 1))));
 }
 
+function exponential(value: number, digits: number): string {
+  return minus(value.toExponential(digits - 1).replace("e+", "e"));
+}
+
+/** Fixed places after the point, thousands apart before it. */
 function fixed(value: number, places: number): string {
-  return minus(value.toFixed(Math.min(100, places)));
+  const [whole = "", part] = value.toFixed(Math.min(100, places)).split(".");
+  const apart = whole.replace(/\B(?=(\d{3})+$)/g, ",");
+  return minus(part === undefined ? apart : `${apart}.${part}`);
 }
 
 /** A true minus sign in place of the hyphen, none before zeros. */
 function minus(text: string): string {
   if (!text.startsWith("-")) return text;
   return /[1-9]/.test(text) ? text.replace("-", "\u2212") : text.slice(1);
-}
-
-function grouped(value: number): string {
-  return value.toFixed(0).replace(/\B(?=(\d{3})+$)/g, ",");
 }
 
 /** An interval with the digits that its own width supports. */
@@ -49,12 +50,13 @@ export function formatInterval([low, high]: readonly [number, number]): string {
 /** A whole number with thousands separated: 262,144; from a million on, if `about`, "2.0 million". */
 export function formatCount(count: number, about = false): string {
   if (!Number.isFinite(count)) return String(count);
-  if (!about) return grouped(Math.round(count));
+  if (!about) return fixed(count, 0);
+  if (count >= 1e15) return plain(count, 2);
   for (const [size, name] of SCALES) {
     if (count >= 0.9995 * size) return `${(count / size).toPrecision(count < 9.95 * size ? 2 : 3)} ${name}`;
   }
   // Two digits: a fitted number of points supports no more.
-  return grouped(Number(count.toPrecision(2)));
+  return fixed(Number(count.toPrecision(2)), 0);
 }
 
 const SCALES = [

@@ -33,13 +33,19 @@ export function usableCells(series: Series) {
   return series.cells.filter((cell) => cell.replicateDeviation !== null && cell.replicateDeviation > 0);
 }
 
-/** Weights 1 / variance of a logarithm, from its own jackknife; 1 where that is not known. */
-export function jackknifeWeights(logs: readonly LeaveOneOut[]): number[] {
-  const errors = logs.map((log) => jackknife(log.all, log.without)?.standardError ?? NaN);
-  if (!errors.every((error) => error > 0)) return logs.map(() => 1);
-  // No size may count less than a ninth of the best: the weights are themselves noisy, more so for heavy tails.
-  const least = Math.min(...errors);
-  return errors.map((error) => 1 / Math.min(error, 3 * least) ** 2);
+/**
+ * Weights of the logarithms of deviations: R - 1, since the variance of such a logarithm is about 1/(2 (R - 1)) whatever
+ * its size (more for heavy tails). The jackknife's own variance at each n makes worse weights: it comes out small just
+ * where the deviation does [95 % intervals of the order from 32 skewed replicates held it in 88 % with such weights, 92 %
+ * with these; of s at a planned n, 80 % and 90 %].
+ */
+function weightsOf(logs: readonly LeaveOneOut[]): number[] {
+  return logs.map((log) => log.without.length - 1);
+}
+
+/** A weighted sum of values. */
+function weighted(values: readonly number[], coefficients: readonly number[]): number {
+  return values.reduce((total, value, i) => total + value * (coefficients[i] ?? 0), 0);
 }
 
 export function spreadOf(series: Series, pseudoRandom: boolean): Spread | null {
@@ -81,20 +87,42 @@ interface LogCurve {
   reach(values: readonly number[], y: number): number;
 }
 
-/** s^2 against 1/n by weighted least squares, weights 1 / s^4 (the variance of a sample variance is 2 s^4 / (R - 1)). */
-function squareFit(sizes: readonly number[], values: readonly number[]) {
-  const squares = values.map((value) => Math.exp(2 * value));
+/** The line s^2 = P^2 + C^2 / n, as functions of the values of ln s. */
+interface SquareLine {
+  readonly level: (values: readonly number[]) => number;
+  readonly slope: (values: readonly number[]) => number;
+}
+
+/**
+ * The line by weighted least squares. A sample variance has variance 2 s^4 / (R - 1), so the weights are 1 / s^4 with s
+ * from a first fit that takes them as n^2; from the measured s themselves they would favour what came out small.
+ */
+function squareLine(sizes: readonly number[], logs: readonly LeaveOneOut[]): SquareLine {
+  const squares = (values: readonly number[]) => values.map((value) => Math.exp(2 * value));
   const inverse = sizes.map((x) => Math.exp(-x));
-  // Relative to the largest size, so that no weight overflows.
-  const scale = squares.at(-1) ?? 1;
-  const weights = squares.map((square) => (scale / square) ** 2);
-  return fitLine(inverse, squares, weights);
+  const measured = squares(logs.map((log) => log.all));
+  const first = fitLine(
+    inverse,
+    measured,
+    sizes.map((x) => Math.exp(2 * (x - (sizes.at(-1) ?? x)))),
+  );
+  const least = Math.min(...measured);
+  const fitted = inverse.map((x) => Math.max(least, first.intercept + first.slope * x));
+  const line = fitLine(
+    inverse,
+    measured,
+    fitted.map((square) => (least / square) ** 2),
+  );
+  return {
+    level: (values) => weighted(squares(values), line.interceptCoefficients),
+    slope: (values) => weighted(squares(values), line.slopeCoefficients),
+  };
 }
 
 function plateauOf(sizes: readonly number[], logs: readonly LeaveOneOut[]): Spread["plateau"] {
-  const level = combine(logs, (values) => squareFit(sizes, values).intercept);
+  const level = combine(logs, squareLine(sizes, logs).level);
   const lower = jackknife(level.all, level.without)?.interval[0] ?? 0;
-  // A plateau counts only where s also stopped falling (method of the last three doublings).
+  // A plateau counts only where s also stopped falling over the last three doublings.
   if (!(lower > 0) || !decayRejected(sizes, logs)) return null;
   return { value: Math.sqrt(level.all), lower: Math.sqrt(lower) };
 }
@@ -116,37 +144,30 @@ export function decayRejected(sizes: readonly number[], logs: readonly LeaveOneO
   return interval !== undefined && interval[0] > STALLED;
 }
 
-/** Weighted slope of the logarithms on ln n, replicate by replicate; the weights stay those of all replicates. */
+/** Weighted slope of the logarithms on ln n, replicate by replicate. */
 export function slopeOver(sizes: readonly number[], logs: readonly LeaveOneOut[]): LeaveOneOut {
-  const { slopeCoefficients } = fitLine(
-    sizes,
-    logs.map((log) => log.all),
-    jackknifeWeights(logs),
-  );
-  return combine(logs, (values) =>
-    values.reduce((total, value, i) => total + value * (slopeCoefficients[i] ?? 0), 0),
-  );
+  const coefficients = slopeCoefficientsOf(sizes, logs);
+  return combine(logs, (values) => weighted(values, coefficients));
+}
+
+function slopeCoefficientsOf(sizes: readonly number[], logs: readonly LeaveOneOut[]): readonly number[] {
+  return sizes.length > 1 ? fitLine(sizes, sizes, weightsOf(logs)).slopeCoefficients : [0];
 }
 
 function rootCurve(sizes: readonly number[], logs: readonly LeaveOneOut[], plateau: boolean): LogCurve {
   if (plateau) {
-    const fitted = (values: readonly number[]) => squareFit(sizes, values);
+    const line = squareLine(sizes, logs);
+    const level = (values: readonly number[]) => Math.max(0, line.level(values));
     return {
-      at(values, x) {
-        const { intercept, slope } = fitted(values);
-        return Math.log(Math.max(0, intercept) + slope * Math.exp(-x)) / 2;
-      },
-      reach(values, y) {
-        const { intercept, slope } = fitted(values);
-        return Math.log(slope / (Math.exp(2 * y) - Math.max(0, intercept)));
-      },
+      at: (values, x) => Math.log(level(values) + line.slope(values) * Math.exp(-x)) / 2,
+      reach: (values, y) => Math.log(line.slope(values) / (Math.exp(2 * y) - level(values))),
     };
   }
-  const weights = jackknifeWeights(logs);
+  const weights = weightsOf(logs);
   const total = weights.reduce((a, b) => a + b, 0);
   // ln C as the weighted mean of ln(s sqrt(n)).
-  const level = (values: readonly number[]) =>
-    values.reduce((a, value, i) => a + (weights[i] ?? 0) * (value + (sizes[i] ?? 0) / 2), 0) / total;
+  const roots = (values: readonly number[]) => values.map((value, i) => value + (sizes[i] ?? NaN) / 2);
+  const level = (values: readonly number[]) => weighted(roots(values), weights) / total;
   return {
     at: (values, x) => level(values) - x / 2,
     reach: (values, y) => 2 * (level(values) - y),
@@ -154,9 +175,8 @@ function rootCurve(sizes: readonly number[], logs: readonly LeaveOneOut[], plate
 }
 
 function polygon(sizes: readonly number[], logs: readonly LeaveOneOut[]): LogCurve {
-  const { slopeCoefficients } = sizes.length > 1 ? fitLine(sizes, sizes, jackknifeWeights(logs)) : noSlope;
-  const slopeOf = (values: readonly number[]) =>
-    values.reduce((total, value, i) => total + value * (slopeCoefficients[i] ?? 0), 0);
+  const coefficients = slopeCoefficientsOf(sizes, logs);
+  const slopeOf = (values: readonly number[]) => weighted(values, coefficients);
   const last = sizes.length - 1;
   const size = (i: number) => sizes[i] ?? NaN;
   return {
@@ -183,8 +203,6 @@ function polygon(sizes: readonly number[], logs: readonly LeaveOneOut[]): LogCur
     },
   };
 }
-
-const noSlope = { slopeCoefficients: [0] };
 
 /** ln RMSE of every usable cell of a series, for its order. */
 export function logErrors(series: Series, reference: number): { sizes: number[]; logs: LeaveOneOut[] } {

@@ -16,6 +16,7 @@ export interface Line {
   readonly residualSquares: number;
   /** The slope as a linear function of the y: slope = sum of coefficient times y. */
   readonly slopeCoefficients: readonly number[];
+  readonly interceptCoefficients: readonly number[];
 }
 
 /** Fits a line; weights are positive and default to 1. At least two different x. */
@@ -39,6 +40,7 @@ export function fitLine(x: readonly number[], y: readonly number[], weights?: re
     x.map((value, i) => at(w, i) * (at(y, i) - level - slope * (value - centre)) ** 2),
   );
   const scale = Math.sqrt(residualSquares / (x.length - 2));
+  const slopeCoefficients = x.map((value, i) => (at(w, i) * (value - centre)) / spread);
   const slopeErrorKnown = 1 / Math.sqrt(spread);
   return {
     slope,
@@ -47,6 +49,7 @@ export function fitLine(x: readonly number[], y: readonly number[], weights?: re
     slopeError: x.length > 2 ? slopeErrorKnown * scale : NaN,
     interceptError: x.length > 2 ? Math.sqrt(1 / total + (centre * centre) / spread) * scale : NaN,
     residualSquares,
-    slopeCoefficients: x.map((value, i) => (at(w, i) * (value - centre)) / spread),
+    slopeCoefficients,
+    interceptCoefficients: slopeCoefficients.map((c, i) => at(w, i) / total - centre * c),
   };
 }

@@ -71,6 +71,13 @@ export function rareEventByStudent(p: number, n: number, id = `rare-event-t-${p}
   return drawnCase(id, p, n, draw, { indicator: true, source: scrambled });
 }
 
+/** The same case with an uncertain reference. */
+export function withUncertainty(one: DrawnCase, uncertainty: number): DrawnCase {
+  const { reference } = one.problem;
+  if (reference === null) return one;
+  return { ...one, problem: { ...one.problem, reference: { ...reference, uncertainty } } };
+}
+
 /** A different seed for every (case, study, purpose, replicate): FNV-1a (Fowler, Noll & Vo) of the parts. */
 export function seedOf(parts: readonly (string | number)[]): number {
   let hash = 0x811c9dc5;

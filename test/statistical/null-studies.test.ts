@@ -7,7 +7,18 @@
 import { describe, expect, it } from "vitest";
 import { screeningLevel } from "../../src/findings/bias.js";
 import { clopperPearson } from "../../src/numeric/binomial.js";
-import { draws, gaussian, lognormal, rareEvent, rareEventByStudent, rarePayment } from "./integrands.js";
+import { normals } from "../findings/make.js";
+import {
+  draws,
+  gaussian,
+  lognormal,
+  rareEvent,
+  rareEventByStudent,
+  rarePayment,
+  seedOf,
+  withUncertainty,
+  type DrawnCase,
+} from "./integrands.js";
 import { runNullStudies } from "./null-harness.js";
 import { powerOf } from "./planted.js";
 
@@ -54,6 +65,26 @@ describe(`${STUDIES} null studies`, () => {
     expect(interval(found.withConfirmed)[0]).toBeLessThanOrEqual(FALSE_ALARMS);
     // The share itself, not only its lower limit.
     expect(found.withConfirmed / STUDIES).toBeLessThanOrEqual(FALSE_ALARMS);
+  });
+});
+
+describe(`${STUDIES} null studies with an uncertain reference`, () => {
+  it("hold the level although both stages share the reference's error", async () => {
+    // The reference is off by a draw of its stated uncertainty, which is as large as the study's standard error (stage 1)
+    // or four times larger; four problems, each with its own reference.
+    for (const size of [1, 4]) {
+      const uncertainty = size / 16 / Math.sqrt(32);
+      const cases = ["a", "b", "c", "d"].map((id) => withUncertainty(gaussian(id), uncertainty));
+      const shifted = (one: DrawnCase, study: number, purpose: string, replicates: number) => {
+        // Shifting the estimates by the reference's error leaves their difference as it would be.
+        const error = uncertainty * normals(seedOf([one.problem.id, study, "reference", size]))();
+        return draws(one, study, purpose, replicates).map((estimate) => estimate - error);
+      };
+      const settings = { studies: STUDIES, replicates: 32, falseAlarms: FALSE_ALARMS };
+      const found = await runNullStudies(cases, shifted, settings);
+      report(`uncertainty of ${size} standard errors`, found);
+      expect(interval(found.withConfirmed)[0]).toBeLessThanOrEqual(FALSE_ALARMS);
+    }
   });
 });
 

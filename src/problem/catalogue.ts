@@ -13,7 +13,7 @@ const ROOT = fileURLToPath(new URL("../../problems/", import.meta.url));
 export const SUITE_FILE = "suite.yaml";
 
 /** A shipped problem as a listing shows it, read without evaluating anything. */
-export interface CatalogueEntry {
+interface CatalogueEntry {
   /** suite/problem, as commands take it. */
   readonly name: string;
   readonly id: string;

@@ -7,7 +7,7 @@ import { show } from "./errors.js";
 import type { ProblemIssue } from "./errors.js";
 
 /** `study.sources item 2`: how a message names a part of the file. */
-export function nameOf(path: Path): string {
+function nameOf(path: Path): string {
   let text = "";
   for (const part of path) {
     text += typeof part === "number" ? ` item ${part + 1}` : text === "" ? part : `.${part}`;

@@ -8,7 +8,7 @@ import { z } from "zod";
 import { DEFAULT_CONFIDENCE, DEFAULT_SETTINGS, DEFAULT_SIZES_TEXT, LIMITS } from "./defaults.js";
 
 /** Names of inputs and constants: as a formula writes them. */
-export const NAME = /^[A-Za-z][A-Za-z0-9_]*$/;
+const NAME = /^[A-Za-z][A-Za-z0-9_]*$/;
 
 const name = z.string().regex(NAME, { error: "a name of letters, digits and _ that begins with a letter" });
 

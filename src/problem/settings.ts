@@ -3,9 +3,9 @@ import type { StudySettings } from "./contract.js";
 import { DEFAULT_SETTINGS } from "./defaults.js";
 import type { FullSettings } from "./defaults.js";
 
-export type Origin = "flag" | "problem" | "suite" | "default";
+type Origin = "flag" | "problem" | "suite" | "default";
 
-export interface Resolved<T> {
+interface Resolved<T> {
   readonly value: T;
   readonly from: Origin;
 }

@@ -63,10 +63,13 @@ function tint(z: number | null): string {
   return step.light;
 }
 
+/** One decimal below 10, whole numbers up to 9,999, thousands as `k` beyond. */
 function standardised(z: number | null): string {
   if (z === null) return "–";
-  if (Math.abs(z) >= 9999.5) return signed(Number(z.toPrecision(1)), null).replace(/0{3}$/, "k");
-  return signed(z, Math.abs(z) >= 10 ? 10 : 1);
+  const size = Math.abs(z);
+  const text =
+    size < 9.95 ? size.toFixed(1) : size < 9999.5 ? size.toFixed(0) : `${(size / 1000).toPrecision(2)}k`;
+  return `${z < 0 ? "−" : "+"}${text}`;
 }
 
 function finding(cells: readonly MapCell[], tests: number, level: number): string {
@@ -85,7 +88,7 @@ export function biasMap(view: View): Chart | null {
   const cells = mapCells(view);
   if (cells.length === 0) return null;
   const labels = [...new Set(cells.map((c) => c.row.label))];
-  const wide = Math.max(34, Math.min(60, Math.floor(640 / view.subjects.length)));
+  const wide = Math.max(44, Math.min(60, Math.floor(640 / view.subjects.length)));
   const [width, height] = [view.subjects.length * wide, labels.length * ROW];
   const margins: Margins = { left: 170, right: 120, top: HEAD, bottom: 14 };
   const marks = new Marks();

@@ -35,8 +35,8 @@ function verdictTable(view: View): Markup {
       <thead>
         <tr>
           <th scope="col">Problem</th>
-          ${used && html`<th scope="col" class="src">in use</th>`}${columns.map(
-            (c) => html`<th scope="col" class="src">${sourceName(c.owner, c.label)}</th>`,
+          ${used && html`<th scope="col" class="src"><span>in use</span></th>`}${columns.map(
+            (c) => html`<th scope="col" class="src"><span>${sourceName(c.owner, c.label)}</span></th>`,
           )}
         </tr>
       </thead>

@@ -42,7 +42,8 @@ th.num,td.num{text-align:right;white-space:nowrap}
 tbody th{font-weight:500}
 .verdicts td{white-space:nowrap}
 .verdicts th[scope=row]{min-width:10rem;max-width:16rem;position:sticky;left:0;background:var(--paper)}
-.verdicts.many thead th.src{writing-mode:vertical-rl;transform:rotate(180deg);text-align:left;padding:.4rem 0;vertical-align:bottom}
+.verdicts.many thead th.src{text-align:center;padding:.4rem .5rem .4rem 0}
+.verdicts.many thead th.src span{display:inline-block;writing-mode:vertical-rl;transform:rotate(180deg);white-space:nowrap}
 .verdicts.many td{font-size:.75rem;padding-right:.5rem}
 .verdicts.many .shape{display:block;text-align:center}
 .verdicts.many td{text-align:center}

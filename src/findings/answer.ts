@@ -33,33 +33,45 @@ export function byEffort(all: readonly Convergence[]): Convergence[] {
   return reaching.sort(compared);
 }
 
+/** The least effort, and the least of another family than the best, which is what a reader compares it with. */
+function efforts(here: readonly Convergence[], record: StudyRecord): Convergence[] {
+  const sourceOf = (one: Convergence) => record.sources.find((source) => source.id === one.source);
+  const family = (one: Convergence) => sourceOf(one)?.family;
+  // A source of known structure is no advice, however cheap it is here.
+  const all = byEffort(here);
+  const sound = all.filter((one) => (sourceOf(one)?.knownStructure ?? null) === null);
+  const [best, ...others] = sound.length > 0 ? sound : all;
+  if (best === undefined) return [];
+  const other = others.find((one) => family(one) !== family(best)) ?? others[0];
+  return other === undefined ? [best] : [best, other];
+}
+
 /** The sentence for one problem and output of `record`. */
 export function answerOf(problem: Problem, output: string, record: StudyRecord): string {
   const tolerance = toleranceOf(problem, referencesOf([problem], record.consensus).get(problem.id));
   if (tolerance === null)
     return "The tolerance is not known, because there is no reference; nothing is judged.";
+  const here = <T extends { problem: string; output: string }>(all: readonly T[]): T[] =>
+    all.filter((one) => one.problem === problem.id && one.output === output);
+  const convergence = here(record.convergence);
   const held = `\u00b1${String(Number(tolerance.toPrecision(3)))} at ${formatPercent(problem.tolerance.confidence)}`;
-  const here = record.convergence.filter((one) => one.problem === problem.id && one.output === output);
-  const [best, ...others] = byEffort(here);
-  const never = here.filter((one) => one.never);
+  const [best, other] = efforts(convergence, record);
   const parts: string[] = [];
   if (best === undefined) parts.push(`No source is known to stay inside ${held}`);
   else parts.push(`${best.source} stays inside ${held} with ${effort(best)}`);
-  const dearest = others.at(-1);
-  if (dearest !== undefined) parts.push(`${dearest.source} needs ${effort(dearest)}`);
-  const first = never[0];
-  if (first !== undefined) {
-    const test = record.tests.find((one) => seriesKey(one) === seriesKey(first));
-    const found = test?.confirmed === true ? test.confirmation : null;
-    const off =
-      never.length === 1 && found !== null
-        ? `: it is off by ${formatValue(found.bias, found.standardError)} whatever n`
-        : "";
-    parts.push(`${names(never)} never ${never.length === 1 ? "does" : "do"}${off}`);
+  if (other !== undefined) parts.push(`${other.source} needs ${effort(other)}`);
+  const confirmed = here(record.tests).filter((test) => test.confirmed);
+  for (const { source, confirmation } of confirmed.slice(0, NAMED)) {
+    if (confirmation === null) continue;
+    const { bias, standardError } = confirmation;
+    parts.push(`${source} is off by ${bias > 0 ? "+" : ""}${formatValue(bias, standardError)} whatever n`);
   }
-  const judged = record.budgets.filter(
-    (one) => one.problem === problem.id && one.output === output && !one.inUse,
+  if (confirmed.length > NAMED) parts.push(`${confirmed.length - NAMED} more sources are biased`);
+  const flat = convergence.filter(
+    (one) => one.never && !confirmed.some((test) => seriesKey(test) === seriesKey(one)),
   );
+  if (flat.length > 0) parts.push(`${names(flat)} never ${flat.length === 1 ? "does" : "do"}`);
+  const judged = here(record.budgets).filter((one) => !one.inUse && one.verdict !== "none");
   const undecided = judged.filter((one) => one.verdict === "undecided").length;
   if (undecided > 0)
     parts.push(`${formatCount(undecided)} of ${formatCount(judged.length)} verdicts undecided`);

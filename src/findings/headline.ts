@@ -127,7 +127,8 @@ export function formatReach(reach: NonNullable<Convergence["reach"]>): string {
   return `\u2248 ${formatCount(reach.n, true)}`;
 }
 
-function biasSentences(problem: Problem, record: StudyRecord): string[] {
+/** What the tests of one problem found: each confirmed bias, then what they could have found elsewhere. */
+export function biasSentences(problem: Problem, record: StudyRecord): string[] {
   const tests = record.tests.filter((test) => test.problem === problem.id);
   const confirmed = tests.filter((test) => test.confirmed);
   const clear = tests.filter((test) => test.kind !== "none" && !test.confirmed);

@@ -25,7 +25,7 @@ function subjectPart(subject: Subject): string[] {
   return [
     `## ${escapeMarkdown(subject.title)}`,
     "",
-    escapeMarkdown([subject.inUseSentence ?? "", subject.answer].join(" ").trim()),
+    escapeMarkdown([subject.inUseSentence ?? "", subject.answer, ...subject.biases].join(" ").trim()),
     "",
     escapeMarkdown(
       `d ${formatCount(subject.problem.dimension)}, reference ${referenceWords(subject)}, tolerance ${toleranceWords(subject)}.`,
@@ -52,7 +52,7 @@ export function summary(view: View, title: string): string {
     `- Seed ${spec.seed}; ${formatCount(family.tests)} tests of bias in one family at level ${family.level}`,
     `- Specification SHA-256 ${specDigest}`,
     `- Estimates SHA-256 ${digest}`,
-    `- ${escapeMarkdown(`${environment.program}, Node ${environment.node}, ${environment.platform}`)}`,
+    `- ${escapeMarkdown(`tolerand ${environment.program}, Node ${environment.node}, ${environment.platform}`)}`,
     ...warnings.map((text) => `- Warning: ${escapeMarkdown(text)}`),
     "",
   ];

@@ -12,7 +12,7 @@ import type {
   StudyRecord,
 } from "../record/types.js";
 import { answerOf } from "../findings/answer.js";
-import { headlinesOf } from "../findings/headline.js";
+import { biasSentences, headlinesOf } from "../findings/headline.js";
 import { type KnownReference, referencesOf, toleranceOf } from "../findings/reference.js";
 import type { Problem } from "../problem/contract.js";
 import { FAMILIES, type FamilyLook, type Ink } from "./look.js";
@@ -64,6 +64,8 @@ export interface Subject {
   readonly inUseSentence: string | null;
   /** The answer in one sentence. */
   readonly answer: string;
+  /** What the tests of bias found, in sentences. */
+  readonly biases: readonly string[];
 }
 
 export interface View {
@@ -166,6 +168,7 @@ export function viewRecord(record: StudyRecord): View {
       inUse: budgets.find((budget) => budget.inUse) ?? null,
       inUseSentence: headlines.find((one) => one.problem === problem.id)?.inUse?.sentence ?? null,
       answer: answerOf(problem, output, record),
+      biases: biasSentences(problem, record),
     };
   });
   return { record, subjects, sources };

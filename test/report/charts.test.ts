@@ -97,7 +97,7 @@ describe("charts", () => {
 describe("error against n", () => {
   it("leaves exact zeros off the log axis and counts them", () => {
     const chart = named("error-against-n-weakest");
-    expect(chart.notDrawn.join(" ")).toContain("9 exact results (error 0)");
+    expect(chart.notDrawn.join(" ")).toContain("9 exact results (error 0, or within rounding)");
     expect(dataOf(chart).some((datum) => datum["rmse"] === 0)).toBe(false);
     // They are in the table all the same.
     expect(chart.table.rows.filter((row) => row[0] === "lattice+shift+tent").map((row) => row[2])).toContain(
@@ -107,6 +107,19 @@ describe("error against n", () => {
 
   it("counts cells without a finite error", () => {
     expect(named("error-against-n-guarantee").notDrawn.join(" ")).toContain("9 cells without a finite error");
+  });
+
+  it("shows the one error of a deterministic source, without an error bar", () => {
+    const halton = dataOf(named("error-against-n-ridge")).filter(
+      (d) => d["series"] === "halton" && "about" in d,
+    );
+    expect(halton.length).toBeGreaterThan(0);
+    for (const datum of halton) expect(datum["about"]).toContain("no error bar");
+    expect(named("error-against-n-ridge").title).not.toContain("halton");
+  });
+
+  it("says that a source is exact rather than that another errs least", () => {
+    expect(named("error-against-n-weakest").title).toMatch(/^lattice\+shift\+tent is exact to rounding/);
   });
 
   it("draws lines through measured points only", () => {
@@ -138,7 +151,7 @@ describe("error against n", () => {
 
   it("draws nothing where nothing is known", () => {
     const empty = structuredClone(sample) as unknown as { cells: { rmse: number | null }[] };
-    for (const cell of empty.cells) cell.rmse = null;
+    for (const cell of empty.cells) Object.assign(cell, { rmse: null, bias: null });
     const names = charts(empty as unknown as StudyRecord).map((chart) => chart.name);
     expect(names.some((name) => name.startsWith("error-against-n"))).toBe(false);
   });

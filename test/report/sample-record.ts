@@ -150,7 +150,7 @@ export function sampleRecord(size: SampleSize = SMALL): StudyRecord {
       const at0 = size.sizes.map((n): Cell => {
         const s = exact ? 0 : law.scale * n ** law.order * (1 + 0.15 * ripple(problem.id, source.id, n));
         const bias = exact ? 0 : (biased ? law.bias : 0) + (s / 5.7) * 1.5 * ripple(n, source.id, problem.id);
-        const rmse = broken ? null : Math.hypot(s, bias);
+        const rmse = broken || law.deterministic === true ? null : Math.hypot(s, bias);
         const bar = !law.deterministic && !broken;
         return {
           ...key,
@@ -304,7 +304,7 @@ export function sampleRecord(size: SampleSize = SMALL): StudyRecord {
     specDigest: "ab".repeat(32),
     digest: "cd".repeat(32),
     environment: {
-      program: "tolerand 0.1.0",
+      program: "0.1.0",
       node: "v24.0.0",
       platform: "linux x64",
       threads: 2,

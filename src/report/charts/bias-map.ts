@@ -20,7 +20,7 @@ import {
 import { pixelY, rowLabels } from "./rows-frame.js";
 
 const ROW = 26;
-const HEAD = 130;
+const HEAD = 150;
 
 interface MapCell {
   readonly subject: Subject;
@@ -39,7 +39,12 @@ function mapCells(view: View): MapCell[] {
       const cell = row.cells.find((c) => c.n === row.test?.n) ?? row.last;
       if (cell === null) return [];
       const { bias, biasStandardError: error } = cell;
-      const usable = bias !== null && error !== null && error > 0 && Number.isFinite(bias / error);
+      const usable =
+        row.test?.kind !== "none" &&
+        bias !== null &&
+        error !== null &&
+        error > 0 &&
+        Number.isFinite(bias / error);
       return [
         {
           subject,
@@ -69,6 +74,7 @@ function standardised(z: number | null): string {
   const size = Math.abs(z);
   const text =
     size < 9.95 ? size.toFixed(1) : size < 9999.5 ? size.toFixed(0) : `${(size / 1000).toPrecision(2)}k`;
+  if (text === "0.0") return text;
   return `${z < 0 ? "−" : "+"}${text}`;
 }
 
@@ -90,12 +96,12 @@ export function biasMap(view: View): Chart | null {
   const labels = [...new Set(cells.map((c) => c.row.label))];
   const wide = Math.max(44, Math.min(60, Math.floor(640 / view.subjects.length)));
   const [width, height] = [view.subjects.length * wide, labels.length * ROW];
-  const margins: Margins = { left: 170, right: 120, top: HEAD, bottom: 14 };
+  const margins: Margins = { left: 170, right: 165, top: HEAD, bottom: 14 };
   const marks = new Marks();
 
   const data = cells.map((c): Datum => {
     const column = view.subjects.indexOf(c.subject);
-    const how = c.z === null ? "no error bar" : `${standardised(c.z)} standard errors`;
+    const how = c.z === null ? "not tested" : `${standardised(c.z)} standard errors`;
     const about = `${c.row.label} on ${c.subject.title}, n = ${formatCount(c.n)}: bias ${
       c.bias === null ? "not known" : signed(c.bias, c.error)
     } (${how})${c.confirmed ? "; confirmed on fresh keys" : ""}`;
@@ -118,7 +124,7 @@ export function biasMap(view: View): Chart | null {
   const x = (field: string): Spec => ({ field, type: "quantitative", ...xScale });
   const y = (field: string): Spec => pixelY(height, field);
   const description = { field: "about", type: "nominal" };
-  const heads = view.subjects.map((s, i) => ({ at: (i + 0.5) * wide, label: fitted(s.title, 165) }));
+  const heads = view.subjects.map((s, i) => ({ at: (i + 0.5) * wide, label: fitted(s.title, 205) }));
   const sourceLabels = labels.map((label, i): Datum => ({ label, series: label, y: (i + 0.5) * ROW }));
   const layer: Spec[] = [
     {
@@ -171,7 +177,7 @@ export function biasMap(view: View): Chart | null {
     caption:
       "Values within about ±2 are what an unbiased source gives; warm cells lie above the reference, cool ones below, deeper from 4 and from 10 standard errors on. " +
       "A diamond and an outline mark a bias that passed the test of the whole family and was confirmed on fresh keys; a deep colour without them is a candidate that was not confirmed. " +
-      "A dash means that there is no error bar: a deterministic source, or no finite estimate.",
+      "A dash means that there was nothing to test: a deterministic source, estimates that are all equal, or none that is finite.",
     alt: `Grid of ${labels.length} sources by ${view.subjects.length} problems with the bias in standard errors. ${title}`,
     notDrawn: [],
     table: {

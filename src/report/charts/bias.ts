@@ -3,7 +3,7 @@
  * the smallest bias that the test could have found and the tolerance. The axis is linear within about the tolerance and
  * logarithmic beyond (sign(x) log(1 + |x|/c), c the tolerance) once a bias exceeds three tolerances.
  */
-import { formatValue, formatCount } from "../../findings/format.js";
+import { formatCount, formatPValue, formatValue } from "../../findings/format.js";
 import { plainNumber, signed, orDash } from "../numbers.js";
 import { PAGE } from "../look.js";
 import { toleranceWords } from "../verdict-row.js";
@@ -17,6 +17,7 @@ import {
   counted,
   framed,
   listed,
+  powersOfTen,
   sourceChannels,
 } from "./chart.js";
 import { markedLine, pixelY, rowLabels, rulings } from "./rows-frame.js";
@@ -80,12 +81,11 @@ function scaleFor(
   const reach = all.flatMap((f) => [Math.abs(f.bias) + 2 * (f.error ?? 0), f.detectable ?? 0]);
   const largest = Math.max(...reach, tolerance ?? 0, Number.MIN_VALUE) * 1.08;
   if (tolerance !== null && largest > 3 * tolerance) {
-    const values = [0];
-    for (let v = tolerance; v <= largest; v *= 10) values.push(v, -v);
-    const thin = values.filter((v) => v === 0 || Math.abs(v) > tolerance * 1.5 || largest < 1000 * tolerance);
+    const beyond = powersOfTen(tolerance * 1.5, largest);
+    const values = [0, ...[tolerance, ...beyond].flatMap((v) => [v, -v])].sort((x, y) => x - y);
     return {
       scale: { type: "symlog", constant: tolerance, domain: [-largest, largest], nice: false },
-      values: thin.map((v) => Number(v.toPrecision(3))).sort((a, b) => a - b),
+      values,
       bent: true,
     };
   }
@@ -227,7 +227,7 @@ export function biasChart(_view: View, subject: Subject): Chart | null {
         signed(f.bias, f.error),
         f.error === null ? "–" : formatValue(f.error),
         f.detectable === null ? "–" : formatValue(f.detectable),
-        orDash(f.row.test?.pValueAdjusted, formatValue),
+        orDash(f.row.test?.pValueAdjusted, formatPValue),
         String(data[i]?.["side"] ?? ""),
       ]),
     },

@@ -18,9 +18,9 @@ import {
 } from "./chart.js";
 import { pixelY, rowLabels, rulings } from "./rows-frame.js";
 
-const WIDTH = 560;
+const WIDTH = 520;
 const STEP = 34;
-const MARGINS: Margins = { left: 190, right: 170, top: 14, bottom: 48 };
+const MARGINS: Margins = { left: 250, right: 170, top: 14, bottom: 48 };
 /** Part of the plot left free for the label of the cheapest source. */
 const LABEL_SHARE = 0.24;
 

@@ -2,95 +2,31 @@
  * Error against n, log-log: one line per source, its interval at each n, the tolerance as a line, and two reference
  * slopes (-1/2, what independent points give; -1). Lines join measured points only.
  */
-import { formatCount, formatInterval, formatValue } from "../../findings/format.js";
-import { orDash, plainNumber, withInterval } from "../numbers.js";
+import { formatCount, formatValue } from "../../findings/format.js";
+import { plainNumber } from "../numbers.js";
 import { PAGE } from "../look.js";
 import { toleranceWords } from "../verdict-row.js";
 import type { Row, Subject, View } from "../view.js";
 import {
   type Chart,
-  type ChartTable,
   type Datum,
   type Margins,
   type Spec,
   Marks,
-  counted,
   familyKey,
   fitted,
   framed,
-  listed,
   powersOfTen,
   sourceChannels,
   spread,
   POWER_LABELS,
 } from "./chart.js";
+import { drawable, finding, notes, table } from "./error-points.js";
 
 const WIDTH = 600;
 const HEIGHT = 380;
 const MARGINS: Margins = { left: 70, right: 200, top: 14, bottom: 48 };
 const LABEL_GAP = 14;
-
-interface Point {
-  readonly row: Row;
-  readonly n: number;
-  readonly rmse: number;
-  readonly low: number | null;
-  readonly high: number | null;
-}
-
-function drawable(rows: readonly Row[]): { points: Point[]; exact: number; missing: number } {
-  const points: Point[] = [];
-  let [exact, missing] = [0, 0];
-  for (const row of rows) {
-    for (const cell of row.cells) {
-      const { n, rmse, rmseInterval } = cell;
-      if (rmse === 0) exact++;
-      else if (rmse === null || !(rmse > 0) || !Number.isFinite(rmse)) missing++;
-      else {
-        const [low, high] = rmseInterval ?? [null, null];
-        points.push({ row, n, rmse, low: low !== null && low > 0 ? low : null, high });
-      }
-    }
-  }
-  return { points, exact, missing };
-}
-
-function finding(subject: Subject, points: readonly Point[]): string {
-  const ends = subject.rows.flatMap((row) => points.filter((p) => p.row === row).slice(-1));
-  const best = [...ends].sort((a, b) => a.rmse - b.rmse)[0];
-  if (best === undefined) return "No error could be drawn for this problem.";
-  const never = subject.rows.filter((row) => row.convergence?.never === true);
-  const judged = subject.rows.filter((row) => row.budget !== null && row.budget.verdict !== "none");
-  const within = judged.filter((row) => row.budget?.verdict === "within");
-  const lead = `${best.row.label} errs least, by ${formatValue(best.rmse)} at ${formatCount(best.n)} points`;
-  if (never.length > 0)
-    return `${lead}; ${listed(never.map((r) => r.label))} never ${never.length === 1 ? "comes" : "come"} within the tolerance.`;
-  if (judged.length === 0) return `${lead}.`;
-  if (within.length === judged.length) return `${lead}; every source judged ends within the tolerance.`;
-  return `${lead}; ${within.length} of ${judged.length} sources judged end within the tolerance.`;
-}
-
-function table(subject: Subject): ChartTable {
-  const columns = [
-    { title: "Source", align: "left" },
-    { title: "n", align: "right" },
-    { title: "RMSE", align: "right" },
-    { title: "95 % interval", align: "right" },
-    { title: "Standard deviation over replicates", align: "right" },
-    { title: "Replicates", align: "right" },
-  ] as const;
-  const rows = subject.rows.flatMap((row) =>
-    row.cells.map((cell) => [
-      row.label,
-      formatCount(cell.n),
-      orDash(cell.rmse, (rmse) => withInterval(rmse, cell.rmseInterval)),
-      cell.rmseInterval === null ? "–" : formatInterval(cell.rmseInterval),
-      orDash(cell.replicateDeviation, formatValue),
-      formatCount(cell.replicates),
-    ]),
-  );
-  return { columns, rows };
-}
 
 /** A guide of the given slope from the upper left corner of the data, cut to the drawing. */
 function guide(slope: number, from: [number, number], right: number, bottom: number): Datum[] {
@@ -106,23 +42,6 @@ function guide(slope: number, from: [number, number], right: number, bottom: num
 function labelFor(row: Row): string {
   if (row.test?.confirmed === true) return `${row.label}: biased`;
   return row.view.source.deterministic ? `${row.label}: no error bar` : row.label;
-}
-
-function notes(exact: number, missing: number, rows: readonly Row[]): string[] {
-  const heavy = rows.filter((row) => row.cells.some((cell) => cell.heavyTailed)).map((row) => row.label);
-  return [
-    ...(exact > 0
-      ? [
-          `${counted(exact, "exact result")} (error 0) cannot stand on a log axis and ${exact === 1 ? "is" : "are"} not drawn.`,
-        ]
-      : []),
-    ...(missing > 0
-      ? [`${counted(missing, "cell")} without a finite error ${missing === 1 ? "is" : "are"} not drawn.`]
-      : []),
-    ...(heavy.length > 0
-      ? [`Heavy-tailed errors, so the RMSE is a lower bound only: ${listed(heavy, 6)}.`]
-      : []),
-  ];
 }
 
 /** The chart of one subject, or null where nothing can be drawn. */
@@ -239,7 +158,7 @@ export function errorAgainstN(view: View, subject: Subject): Chart | null {
     title,
     says,
     caption:
-      "Lower is better, steeper improves faster: dotted guides show the slopes −½ (independent points) and −1. Bars are 95 % intervals of the RMSE. " +
+      "Lower is better, steeper improves faster: dotted guides show the slopes −½ (independent points) and −1. Bars are 95 % intervals of the RMSE; hollow marks have none: a deterministic source makes one error per n, and that is drawn. " +
       "A curve that turns flat has met its bias. The line across is the tolerance itself; to keep it with the stated confidence the RMSE must lie well below. " +
       familyKey(view, true),
     alt: `Line chart of root mean square error against n for ${subject.title}, tolerance ${toleranceWords(subject)}. ${title} At the largest n: ${lowest.join("; ")}.`,

@@ -12,6 +12,7 @@ import {
   counted,
   familyKey,
   framed,
+  listed,
   sourceChannels,
 } from "./chart.js";
 import { markedLine, pixelY, rowLabels, rulings } from "./rows-frame.js";
@@ -37,16 +38,23 @@ function fits(view: View): Fitted[] {
   );
 }
 
+/** The middle one of a sorted list (the lower of two). */
+function middle(values: readonly number[]): number {
+  return [...values].sort((a, b) => a - b)[Math.floor((values.length - 1) / 2)] ?? 0;
+}
+
 function finding(all: readonly Fitted[]): string {
+  const sound = all.filter((f) => f.row.test?.confirmed !== true);
   const parts = FAMILY_ORDER.flatMap((family) => {
-    const orders = all.filter((f) => f.row.view.source.family === family).map((f) => f.order);
+    const orders = sound.filter((f) => f.row.view.source.family === family).map((f) => f.order);
     if (orders.length === 0) return [];
-    const [high, low] = [Math.max(...orders), Math.min(...orders)];
-    const span =
-      orders.length === 1 ? `is ${formatValue(high)}` : `from ${formatValue(high)} to ${formatValue(low)}`;
-    return [`${span} for ${family === "own" ? "your own sources" : `${family} sources`}`];
+    return [
+      `${formatValue(middle(orders))} for ${family === "own" ? "your own sources" : `${family} sources`}`,
+    ];
   });
-  return `The error falls with orders ${parts.join(", ")}.`.replace("orders is", "order");
+  if (parts.length === 0) return "Every source with a known order has a confirmed bias.";
+  const apart = sound.length < all.length ? ", confirmed biases apart" : "";
+  return `Orders of convergence centre on ${listed(parts)}${apart}.`;
 }
 
 /** Pixels between the marks of one row: closer where there are many problems. */

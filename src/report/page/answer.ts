@@ -1,10 +1,21 @@
 /** The first section: one sentence per problem, and the verdicts of every problem and source. */
-import type { View } from "../view.js";
+import { formatCount } from "../../findings/format.js";
+import type { Subject, View } from "../view.js";
 import { type Markup, html } from "./html.js";
-import { sourceName, verdictMark } from "./parts.js";
+import { sourceName, tied, verdictMark } from "./parts.js";
 
 /** From this many sources on, column titles stand upright. */
 const MANY = 9;
+
+/** The n at which most sources of a subject are judged. */
+function usualSize(subject: Subject): number {
+  const counts = new Map<number, number>();
+  for (const row of subject.rows) {
+    const n = row.budget?.n ?? row.last?.n ?? 0;
+    counts.set(n, (counts.get(n) ?? 0) + 1);
+  }
+  return [...counts].sort((a, b) => b[1] - a[1] || a[0] - b[0])[0]?.[0] ?? 0;
+}
 
 function verdictTable(view: View): Markup {
   const labels = new Map(view.subjects.flatMap((s) => s.rows.map((row) => [row.label, row.view] as const)));
@@ -13,10 +24,15 @@ function verdictTable(view: View): Markup {
     .map(([label, owner]) => ({ label, owner }));
   const used = view.subjects.some((subject) => subject.inUse !== null);
   const rows = view.subjects.map((subject, i) => {
+    const usual = usualSize(subject);
     const cells = columns.map(({ label }) => {
       const row = subject.rows.find((r) => r.label === label);
       if (row === undefined) return html`<td></td>`;
-      return html`<td>${verdictMark(row.budget?.verdict ?? "none")}</td>`;
+      const n = row.budget?.n ?? row.last?.n ?? 0;
+      const apart = n > 1.5 * usual || n < usual / 1.5;
+      return html`<td>
+        ${verdictMark(row.budget?.verdict ?? "none")}${apart && html`<br /><span class="soft">at ${formatCount(n)}</span>`}
+      </td>`;
     });
     const inUse = subject.inUse;
     const own = !used
@@ -69,8 +85,8 @@ export function answerSection(view: View): Markup {
     const used = subject.inUseSentence;
     return html`<li data-p="${i}">
       <strong><a href="#problem-${subject.slug}">${subject.title}</a>.</strong> ${
-        used !== null && html`${used} `
-      }${subject.answer}
+        used !== null && html`${tied(used)} `
+      }${tied(subject.answer)}
     </li> `;
   });
   const incomplete = view.record.environment.complete
@@ -86,7 +102,8 @@ export function answerSection(view: View): Markup {
     <p class="aside">
       ● within: the error, taken together, keeps the tolerance with the stated confidence. ◆ outside: it does
       not. ◐ undecided: the interval of the total straddles the tolerance. – none: no error bar, so no
-      verdict. Each source is judged at its largest n.
+      verdict. Each source is judged at its largest n; where that is not the n of the others in its row, it
+      stands below.
     </p>
   </section>`;
 }

@@ -2,6 +2,7 @@
 import type { Chart, ChartTable } from "../charts/chart.js";
 import { drawForPage } from "../render.js";
 import { type Markup, html, raw } from "./html.js";
+import { tied } from "./parts.js";
 
 /** A table of text cells; numbers to the right. */
 export function dataTable(table: ChartTable): Markup {
@@ -29,11 +30,11 @@ export function dataTable(table: ChartTable): Markup {
 export async function figure(chart: Chart): Promise<Markup> {
   const drawing = raw(await drawForPage(chart));
   return html`<figure class="wide" id="${chart.name}">
-    <h4>${chart.title}</h4>
+    <h4>${tied(chart.title)}</h4>
     <p class="says">${chart.says}</p>
     <div class="scroll" tabindex="0" role="group" aria-label="Figure: ${chart.title}">${drawing}</div>
     ${chart.notDrawn.map((note) => html`<p class="aside">${note}</p>`)}
-    <figcaption>${chart.caption}</figcaption>
+    <figcaption>${tied(chart.caption)}</figcaption>
     <details>
       <summary>The numbers</summary>
       ${dataTable(chart.table)}

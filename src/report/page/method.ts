@@ -90,8 +90,8 @@ function provenance(view: View): Markup {
       </dd>
       <dt>Program</dt>
       <dd>
-        ${environment.program}, Node ${environment.node}, ${environment.platform}, ${environment.threads}
-        ${environment.threads === 1 ? "thread" : "threads"}
+        tolerand ${environment.program}, Node ${environment.node}, ${environment.platform},
+        ${environment.threads} ${environment.threads === 1 ? "thread" : "threads"}
       </dd>
       <dt>Run</dt>
       <dd>

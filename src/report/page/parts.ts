@@ -6,10 +6,16 @@ import { type Markup, html } from "./html.js";
 
 /** A verdict: its shape and its word; `outside` stands out by weight and colour too. */
 export function verdictMark(verdict: Verdict): Markup {
-  const shape = html`<span class="shape">${VERDICT_MARKS[verdict]}</span> `;
-  return verdict === "outside"
-    ? html`<span class="outside">${shape}${verdict}</span>`
-    : html`${shape}${verdict}`;
+  const look = verdict === "outside" ? "verdict outside" : "verdict";
+  return html`<span class="${look}"><span class="shape">${VERDICT_MARKS[verdict]}</span> ${verdict}</span>`;
+}
+
+/** Binds a number to its unit and to the sign before it, so that no line breaks between them. */
+export function tied(text: string): string {
+  return text
+    .replace(/ ?(≤|>) (?=[\d−])/g, "\u00a0$1\u00a0")
+    .replace(/(≈|=) (?=[\d−])/g, "$1\u00a0")
+    .replace(/(\d) (?=(?:%|µs|ms|s|min|h|days|years|million|billion|points)(?![a-z]))/g, "$1\u00a0");
 }
 
 /** A source's name: leads to its section; with the script it is followed through all figures. */

@@ -2,13 +2,13 @@
 import type { Input } from "../../problem/contract.js";
 import type { Chart } from "../charts/chart.js";
 import { canonicalJson } from "../../record/json.js";
-import { formatValue, formatCount } from "../../findings/format.js";
+import { formatCount, formatPValue, formatValue } from "../../findings/format.js";
 import { plainNumber } from "../numbers.js";
 import type { Subject } from "../view.js";
 import { reachWords, referenceWords, toleranceWords, verdictRows } from "../verdict-row.js";
 import { dataTable, figure } from "./figure.js";
 import { type Markup, html } from "./html.js";
-import { paragraphs, sourceName, verdictMark } from "./parts.js";
+import { paragraphs, sourceName, tied, verdictMark } from "./parts.js";
 
 function inputWords(input: Input): string {
   return `${input.name}: ${input.length === null ? "" : `${formatCount(input.length)} `}${input.distribution}`;
@@ -29,7 +29,7 @@ function referenceBasis(subject: Subject): Markup | null {
       own.uncertainty > 0
         ? `standard uncertainty ${formatValue(own.uncertainty)}`
         : "exact to double precision";
-    return html`<br /><span class="soft">${own.basis}; ${exact}</span>`;
+    return html`<br /><span class="soft">${own.basis.trim().replace(/\.$/, "")}; ${exact}</span>`;
   }
   const consensus = subject.consensus;
   if (consensus === null) return null;
@@ -39,7 +39,7 @@ function referenceBasis(subject: Subject): Markup | null {
     consensus.standardError === null ? "" : `; standard error ${formatValue(consensus.standardError)}`;
   return html`<br /><span class="soft"
       >No reference was given; it stands on ${members}; ${agreement} (Cochran's Q ${formatValue(consensus.q)},
-      p = ${formatValue(consensus.pValue)})${error}</span
+      p = ${formatPValue(consensus.pValue)})${error}</span
     >`;
 }
 
@@ -173,7 +173,7 @@ export async function problemSection(
   ] as const;
   return html`<section class="item problem" id="problem-${subject.slug}" data-section data-p="${at}">
     <h3>${subject.title}</h3>
-    <p>${used !== null && html`${used} `}${subject.answer}</p>
+    <p>${used !== null && html`${tied(used)} `}${tied([subject.answer, ...subject.biases].join(" "))}</p>
     ${paragraphs(subject.problem.about)} ${facts(subject)} ${ranking(subject)} ${remarks(subject)}
     ${budgetTable(subject)}
     ${

@@ -26,13 +26,15 @@ td,th{overflow-wrap:break-word}
 p{margin:.6rem 0}
 pre{margin:.4rem 0;padding:0 0 0 .9rem;border-left:2px solid var(--rule);font:.875rem/1.5 ui-monospace,"Cascadia Mono",Menlo,Consolas,"Liberation Mono",monospace;white-space:pre-wrap;overflow-wrap:anywhere}
 code{font:.9em ui-monospace,"Cascadia Mono",Menlo,Consolas,"Liberation Mono",monospace;overflow-wrap:anywhere}
-dl{margin:.8rem 0;display:grid;grid-template-columns:max-content 1fr;gap:.25rem 1.25rem}
-dt{color:var(--soft);font-size:.875rem;line-height:1.9}
+dl{margin:.8rem 0;display:grid;align-items:baseline;grid-template-columns:max-content 1fr;gap:.25rem 1.25rem}
+dt{color:var(--soft);font-size:.875rem}
 dd{margin:0}
 .soft,.says,figcaption,.aside{color:var(--soft)}
 .aside,figcaption,.says{font-size:.875rem;line-height:1.5}
 .answers{padding:0;list-style:none}
 .answers li{margin:.9rem 0}
+
+.verdict{white-space:nowrap}
 .outside{color:var(--outside);font-weight:600}
 .scroll{overflow-x:auto;max-width:100%}
 table{border-collapse:collapse;font-size:.875rem;line-height:1.4;margin:.8rem 0}
@@ -40,12 +42,11 @@ th,td{padding:.3rem .9rem .3rem 0;text-align:left;vertical-align:baseline;border
 thead th{color:var(--soft);font-weight:500;vertical-align:bottom;border-bottom-color:var(--rule)}
 th.num,td.num{text-align:right;white-space:nowrap}
 tbody th{font-weight:500}
-.verdicts td{white-space:nowrap}
 .verdicts th[scope=row]{min-width:10rem;max-width:16rem;position:sticky;left:0;background:var(--paper)}
 .verdicts.many thead th.src{text-align:center;padding:.4rem .5rem .4rem 0}
 .verdicts.many thead th.src span{display:inline-block;writing-mode:vertical-rl;transform:rotate(180deg);white-space:nowrap}
 .verdicts.many td{font-size:.75rem;padding-right:.5rem}
-.verdicts.many .shape{display:block;text-align:center}
+.verdicts.many .shape{display:block}
 .verdicts.many td{text-align:center}
 figure{margin:2rem 0 2.5rem}
 figure h4{margin:0 0 .2rem}
@@ -108,12 +109,11 @@ figure{margin:.6rem 0 0}
 figcaption{margin:.2rem 0}
 .says{margin:0 0 .2rem}
 .chart{min-width:0;max-width:100%}
-.problem .chart{width:auto;max-height:56mm}
-.problem figure:last-child .chart{max-height:42mm}
+.problem .chart{width:auto;max-height:54mm}
+.problem figure:last-child .chart{max-height:40mm}
 table{margin:.3rem 0}
 th,td{padding-top:.1rem;padding-bottom:.1rem}
 dl{margin:.4rem 0;gap:.05rem 1rem}
-dt{line-height:1.5}
 p{margin:.25rem 0}
 a{color:inherit;text-decoration:none}
 }

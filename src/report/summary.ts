@@ -5,7 +5,7 @@ import { type VerdictRow, referenceWords, toleranceWords, verdictRows } from "./
 import type { Subject, View } from "./view.js";
 
 /** A user's text in Markdown: no markup, no line breaks. */
-export function escapeMarkdown(text: string): string {
+function escapeMarkdown(text: string): string {
   return plainText(text).replace(/[\\`*_{}[\]<>()#+!|~&]/g, "\\$&");
 }
 

@@ -13,7 +13,7 @@ import { summary } from "./summary.js";
 import { viewRecord } from "./view.js";
 
 export interface ReportOptions {
-  /** Also write every chart as SVG, to images/. */
+  /** Also write every chart as SVG, to images/ (PNG would need a native canvas package; a browser or an SVG tool makes it). */
   readonly images?: boolean;
   /** False leaves index.html out. */
   readonly page?: boolean;

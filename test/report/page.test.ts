@@ -113,6 +113,50 @@ describe("the page", () => {
   });
 });
 
+describe("odd records", () => {
+  it("are drawn without figures where nothing was measured yet", async () => {
+    const none = { cells: [], tests: [], convergence: [], budgets: [] };
+    const whole = sampleRecord();
+    const record = { ...whole, ...none, environment: { ...whole.environment, complete: false } };
+    const texts = await reportTexts(record);
+    expect([...texts.keys()].sort()).toEqual(["index.html", "record.json", "summary.md"]);
+    expect(texts.get("index.html")).toContain("The run was interrupted.");
+    expect(texts.get("index.html")).not.toContain("<figure");
+    expect(texts.get("summary.md")).toContain("The run was interrupted");
+  });
+
+  it("name the estimator where there are several, and keep their curves apart", async () => {
+    const whole = sampleRecord();
+    const twice = <T extends { estimator: string }>(all: readonly T[]): T[] =>
+      all.flatMap((one) => [one, { ...one, estimator: "antithetic" }]);
+    const texts = await reportTexts({
+      ...whole,
+      cells: twice(whole.cells),
+      tests: twice(whole.tests),
+      convergence: twice(whole.convergence),
+      budgets: twice(whole.budgets),
+    });
+    expect(texts.get("index.html")).toContain(">philox4x32, antithetic<");
+    expect(texts.get("summary.md")).toContain("philox4x32, crude");
+    expect(texts.get("charts/error-against-n-ridge.vl.json")).toContain("randu, antithetic: biased");
+  });
+
+  it("give several outputs of a problem a section each", async () => {
+    const whole = sampleRecord();
+    const twice = <T extends { output: string }>(all: readonly T[]): T[] =>
+      all.flatMap((one) => [one, { ...one, output: "tail" }]);
+    const texts = await reportTexts({
+      ...whole,
+      cells: twice(whole.cells),
+      tests: twice(whole.tests),
+      convergence: twice(whole.convergence),
+      budgets: twice(whole.budgets),
+    });
+    expect([...texts.keys()]).toContain("charts/bias-ridge-tail.vl.json");
+    expect(texts.get("index.html")).toContain(">Gaussian ridge: tail</h3>");
+  });
+});
+
 describe("the summary", () => {
   it("gives the answer and a table per problem, with users' texts escaped", () => {
     expect(summary).toContain("# Error of integration on 4 problems");

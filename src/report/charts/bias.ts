@@ -7,6 +7,7 @@ import { formatCount, formatPValue, formatValue } from "../../findings/format.js
 import { plainNumber, signed, orDash } from "../numbers.js";
 import { PAGE } from "../look.js";
 import { toleranceWords } from "../verdict-row.js";
+import { biasWord } from "../../findings/headline.js";
 import type { Row, Subject, View } from "../view.js";
 import {
   type Chart,
@@ -107,7 +108,7 @@ export function biasChart(_view: View, subject: Subject): Chart | null {
       f.detectable === null ? "" : `; smallest bias the test would have found ${formatValue(f.detectable)}`;
     const verdict = f.confirmed ? "; confirmed on fresh keys" : "";
     const about = `${f.row.label} at n = ${formatCount(f.n)}: bias ${signed(f.bias, f.error)} (${spreadWords})${limit}${verdict}`;
-    const side = f.confirmed ? "confirmed" : f.detectable === null ? "not tested" : "none found";
+    const word = f.row.test === null ? "not tested" : biasWord(f.row.test);
     return {
       source: f.row.view.index,
       series: marks.name(f.row.view, f.row.label),
@@ -119,7 +120,7 @@ export function biasChart(_view: View, subject: Subject): Chart | null {
       high: f.bias + 2 * (f.error ?? 0),
       ...(f.detectable === null ? {} : { up: f.detectable, down: -f.detectable }),
       confirmed: f.confirmed,
-      side: `${f.confirmed ? "◆ " : ""}${side}`,
+      side: `${f.confirmed ? "◆ " : ""}${word}`,
     };
   });
 
@@ -219,7 +220,7 @@ export function biasChart(_view: View, subject: Subject): Chart | null {
         { title: "Standard error", align: "right" },
         { title: "Detectable bias", align: "right" },
         { title: "p, adjusted (Holm)", align: "right" },
-        { title: "Bias", align: "left" },
+        { title: "Finding", align: "left" },
       ],
       rows: all.map((f, i) => [
         f.row.label,

@@ -68,7 +68,7 @@ export interface Margins {
 const FONT = "system-ui, 'Segoe UI', 'Helvetica Neue', Arial, sans-serif";
 
 /** Lines of at most `limit` characters, broken at spaces. */
-export function wrapped(text: string, limit: number): string[] {
+function wrapped(text: string, limit: number): string[] {
   const lines: string[] = [];
   let line = "";
   for (const word of text.split(" ")) {
@@ -195,32 +195,23 @@ export function counted(n: number, one: string, many = `${one}s`): string {
   return `${n} ${n === 1 ? one : many}`;
 }
 
-/** A colour scale that names each source's own colour. */
-export function sourceColours(views: readonly SourceView[]): Spec {
-  return { domain: views.map((v) => v.index), range: views.map((v) => v.ink.light) };
-}
-
-/** The same for dashes. */
-export function sourceDashes(views: readonly SourceView[]): Spec {
-  return { domain: views.map((v) => v.index), range: views.map((v) => v.family.dash) };
-}
-
-/** The same for point shapes. */
-export function sourceShapes(views: readonly SourceView[]): Spec {
-  return { domain: views.map((v) => v.index), range: views.map((v) => v.family.shape) };
-}
-
 /** The three channels by which a source is told apart, without legends. */
 export function sourceChannels(views: readonly SourceView[]): {
   readonly colour: Spec;
   readonly dash: Spec;
   readonly shape: Spec;
 } {
-  const channel = (scale: Spec): Spec => ({ field: "source", type: "nominal", scale, legend: null });
+  const domain = views.map((view) => view.index);
+  const channel = (pick: (view: SourceView) => unknown): Spec => ({
+    field: "source",
+    type: "nominal",
+    scale: { domain, range: views.map(pick) },
+    legend: null,
+  });
   return {
-    colour: channel(sourceColours(views)),
-    dash: channel(sourceDashes(views)),
-    shape: channel(sourceShapes(views)),
+    colour: channel((view) => view.ink.light),
+    dash: channel((view) => view.family.dash),
+    shape: channel((view) => view.family.shape),
   };
 }
 

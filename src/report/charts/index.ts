@@ -8,13 +8,13 @@ import { errorAgainstN } from "./error-against-n.js";
 import { orders } from "./orders.js";
 
 /** Charts of one subject; null where there is nothing to draw. */
-export const SUBJECT_CHARTS: readonly ((view: View, subject: Subject) => Chart | null)[] = [
+const SUBJECT_CHARTS: readonly ((view: View, subject: Subject) => Chart | null)[] = [
   errorAgainstN,
   biasChart,
 ];
 
 /** Charts across all subjects. */
-export const ACROSS_CHARTS: readonly ((view: View) => Chart | null)[] = [biasMap, orders, costToTolerance];
+const ACROSS_CHARTS: readonly ((view: View) => Chart | null)[] = [biasMap, orders, costToTolerance];
 
 /** All charts of a record: per subject (by slug), and across. */
 export interface ChartSet {

@@ -23,7 +23,7 @@ function statistics(view: View): Markup {
       ${formatCount(family.tests)} tests of this study form one family, held at a false-alarm level of
       ${formatPercent(family.level)} by the step-down procedure of Holm (1979). A rejection is only a
       candidate; it is called a bias when it is found again on fresh keys with 256 replicates, the level being
-      split between the two stages. Beside every “none found” stands the smallest bias that the test would
+      split between the two stages. Beside every “no bias found” stands the smallest bias that the test would
       have found with 80 % power.
     </p>
     <p>
@@ -65,8 +65,8 @@ const CAUTIONS = html`<h3>Cautions</h3>
     </li>
     <li>None of these sources of points is for cryptography.</li>
     <li>
-      A source that is within the tolerance on these problems may fail on others. “None found” is a statement
-      about biases above the detectable one, no more.
+      A source that is within the tolerance on these problems may fail on others. “No bias found” is a
+      statement about biases above the detectable one, no more.
     </li>
     <li>Cost was measured on one machine in one run.</li>
   </ul>`;

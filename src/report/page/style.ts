@@ -70,6 +70,7 @@ nav .part>ol{display:none}
 .controls input,.controls select{font:inherit;color:inherit;background:var(--paper);border:1px solid var(--soft);padding:.15rem .4rem;max-width:14rem}
 .js a.source{text-decoration-style:dotted}
 .js [data-tip],.js .chart [data-s]{cursor:pointer}
+.js figure:not(#bias-map) .chart path[data-tip]:not([stroke]){stroke:transparent;stroke-width:12px;pointer-events:all}
 .away{display:none}
 .dim{opacity:.14}
 tr.followed>*{background:var(--wash)}

@@ -16,7 +16,7 @@ import { CyclicCorrelation } from "./fft.js";
 import { primeFactors } from "./primes.js";
 
 /** Sizes are below this, so that products of two residues stay exact in doubles. */
-export const LARGEST_LATTICE = 2 ** 26;
+const LARGEST_SIZE = 2 ** 26;
 
 /** w_j = 1/j^2, the weights of the built-in vectors. */
 export function inverseSquareWeights(dimension: number): Float64Array {
@@ -70,8 +70,8 @@ function orbitsOf(n: number): { generator: number; orbits: Orbit[] } {
  * another n.
  */
 export function constructVector(n: number, weights: Float64Array): Uint32Array {
-  const prime = n > 1 && Number.isInteger(n) && n < LARGEST_LATTICE && primeFactors(n)[0] === n;
-  if (!prime && !(n >= 1 && n < LARGEST_LATTICE && Number.isInteger(Math.log2(n)))) {
+  const prime = n > 1 && Number.isInteger(n) && n < LARGEST_SIZE && primeFactors(n)[0] === n;
+  if (!prime && !(n >= 1 && n < LARGEST_SIZE && Number.isInteger(Math.log2(n)))) {
     throw new RangeError(`lattice: expected a power of two or a prime below 2^26 points, found ${n}`);
   }
   const { generator, orbits } = orbitsOf(n);

@@ -5,6 +5,7 @@ import type { SourceSpec } from "../problem/contract.js";
 import { checkCapacity } from "./capacity.js";
 import type { PointStream, Randomisation, Resumable, Seekable, Source } from "./contract.js";
 import type { Key } from "./key.js";
+import { isOwnQuasiRandom, parseOwnQuasiRandom } from "./own-quasi-random.js";
 import { parseOwnSource } from "./own-source.js";
 import { checkRandomisations } from "./randomisations.js";
 import { findSource, sourceIds } from "./registry.js";
@@ -34,9 +35,14 @@ export interface SourceChoice {
 /** The source that `spec` names. Throws with what was found, what is allowed and the nearest known id. */
 export function parseSource(spec: SourceSpec): SourceChoice {
   if (typeof spec === "string") return parseId(spec);
-  if (typeof spec === "object" && spec !== null && !Array.isArray(spec))
-    return choose(parseOwnSource(spec), [], spec);
+  if (typeof spec === "object" && spec !== null && !Array.isArray(spec)) return parseMapping(spec);
   throw new TypeError(`source: expected an id like "mt19937" or a mapping, found ${JSON.stringify(spec)}`);
+}
+
+function parseMapping(spec: Readonly<Record<string, unknown>>): SourceChoice {
+  if (!isOwnQuasiRandom(spec)) return choose(parseOwnSource(spec), [], spec);
+  const { source, randomisations } = parseOwnQuasiRandom(spec);
+  return choose(source, randomisations, spec);
 }
 
 /** An id may itself hold "+" (xoshiro256++), so the longest id that the text begins with is the source. */
@@ -62,7 +68,7 @@ function choose(source: Source, randomisations: readonly Randomisation[], spec: 
     id: [source.id, ...randomisations].join("+"),
     source,
     randomisations,
-    deterministic: source.family === "quasi-random" && randomisations.length === 0,
+    deterministic: source.randomisations.length > 0 && randomisations.length === 0,
     spec,
     open: (request, kernels) => {
       checkCapacity(source, request.dimension, request.n);

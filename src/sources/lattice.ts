@@ -8,7 +8,7 @@
  * jumps; the vector favours the first coordinates.
  */
 import type { Kernels } from "../kernels/instance.js";
-import { constructVector, inverseSquareWeights, LARGEST_LATTICE } from "../numeric/lattice-construction.js";
+import { constructVector, inverseSquareWeights } from "../numeric/lattice-construction.js";
 import type { OpenRequest, PointStream, Seekable, Source } from "./contract.js";
 import { openRotation, ROTATION_RANDOMISATIONS } from "./rotation.js";
 
@@ -53,14 +53,15 @@ function vectorOf(n: number, dimension: number): Uint32Array {
 }
 
 /**
- * The lattice of a vector of one's own, for any n below 2^26. Throws RangeError unless the components are whole numbers
- * from 0 to 2^53 - 1.
+ * The lattice of a vector of one's own, for any n. Throws RangeError for a component below 0; larger ones than n are
+ * taken modulo n.
  */
-export function ownLattice(id: string, vector: readonly number[]): Source {
+export function ownLattice(id: string, vector: readonly bigint[]): Source {
   for (const [j, component] of vector.entries()) {
-    if (Number.isSafeInteger(component) && component >= 0) continue;
-    const expected = "expected a whole number from 0 to 2^53 - 1";
-    throw new RangeError(`source.lattice.vector: ${expected} in place ${j + 1}, found ${component}`);
+    if (component >= 0n) continue;
+    throw new RangeError(
+      `source.lattice.vector[${j + 1}]: expected a whole number from 0, found ${component}`,
+    );
   }
   const source: Source = {
     ...about,
@@ -70,7 +71,7 @@ export function ownLattice(id: string, vector: readonly number[]): Source {
     citation:
       "the user's own; method: I. H. Sloan and S. Joe, Lattice Methods for Multiple Integration (1994)",
     largestDimension: vector.length,
-    nearestSize: (n) => Math.min(n, LARGEST_LATTICE - 1),
+    nearestSize: (n) => n,
     open: (request, kernels) => openLattice(source, () => vector, request, kernels),
   };
   return source;
@@ -78,7 +79,7 @@ export function ownLattice(id: string, vector: readonly number[]): Source {
 
 function openLattice(
   source: Source,
-  vector: () => ArrayLike<number>,
+  vector: () => ArrayLike<number | bigint>,
   request: OpenRequest,
   kernels: Kernels,
 ): PointStream & Seekable {

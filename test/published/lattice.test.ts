@@ -38,7 +38,7 @@ describe("component-by-component construction (Nuyens & Cools 2006), qmc.json", 
 
 describe("points {k z / n} of the lattices, exact fractions cut to 52 bits", () => {
   it.each(reference.rank1_lattices.lattices)("$id", ({ n, z, d }) => {
-    const points = pointsOf(ownLattice("own", z), { dimension: d, count: n });
+    const points = pointsOf(ownLattice("own", z.map(BigInt)), { dimension: d, count: n });
     for (const [k, point] of points.entries()) {
       for (const [j, component] of z.entries()) {
         const residue = (BigInt(k) * BigInt(component)) % BigInt(n);

@@ -23,12 +23,20 @@ const own: Readonly<Record<string, SourceSpec>> = {
   "left endpoint, prime modulus": { ...congruential("2^31 - 1", 48271, 1), endpoint: "left" },
 };
 
+const lattice = { vector: [1, 182667, "2^40 + 3", 213, 7, 5, 0] };
+const ownQuasiRandom: Readonly<Record<string, SourceSpec>> = {
+  "a lattice": { name: "house", lattice },
+  "a shifted lattice": { name: "house", lattice, randomisation: "shift" },
+  "a shifted and folded lattice": { name: "house", lattice, randomisation: "shift+tent" },
+};
+
 function congruential(modulus: string | number, multiplier: string | number, increment: string | number) {
   return { name: "house", congruential: { modulus, multiplier, increment } };
 }
 
 for (const choice of allChoices()) describe(choice.id, () => check(choice));
-for (const [name, spec] of Object.entries(own)) describe(`own: ${name}`, () => check(parseSource(spec)));
+for (const [name, spec] of Object.entries({ ...own, ...ownQuasiRandom }))
+  describe(`own: ${name}`, () => check(parseSource(spec)));
 
 function check(choice: ReturnType<typeof parseSource>): void {
   for (const [name, law] of Object.entries(laws)) {

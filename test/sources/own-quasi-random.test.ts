@@ -1,0 +1,59 @@
+import { expect, test } from "vitest";
+import type { SourceSpec } from "../../src/problem/contract.js";
+import { parseSource } from "../../src/sources/choice.js";
+
+const vector = [1, 3, "2^7 - 1"];
+
+test("a lattice has the name given, its randomisation in the id, and any n", () => {
+  const choice = parseSource({ name: "house", lattice: { vector }, randomisation: "shift+tent" });
+  expect(choice.id).toBe("house+shift+tent");
+  expect(choice.source.largestDimension).toBe(3);
+  expect(choice.source.nearestSize(1009)).toBe(1009);
+  expect(choice.deterministic).toBe(false);
+  expect(parseSource({ name: "house", lattice: { vector } }).deterministic).toBe(true);
+});
+
+const refusals: [SourceSpec, string][] = [
+  [
+    { name: "house", lattice: { vector }, randomisation: "owen" },
+    'source: "house" does not take "owen"; expected "house" or "house+shift", "house+shift+tent"',
+  ],
+  [
+    { name: "sobol", lattice: { vector } },
+    'source.name: expected a name that no source of the program has, found "sobol"',
+  ],
+  [
+    { name: "my house", lattice: { vector } },
+    'source.name: expected 1 to 40 letters, digits, dots, dashes or underscores, beginning with a letter or digit, found "my house"',
+  ],
+  [
+    { name: "house", lattice: { vector }, tuples: "successive" },
+    'source: unknown key "tuples"; allowed are name, lattice, randomisation',
+  ],
+  [
+    { name: "house", lattice: { vektor: vector } },
+    'source.lattice: unknown key "vektor", did you mean "vector"?; allowed are vector',
+  ],
+  [{ name: "house", lattice: [1, 2] }, "source.lattice: expected a mapping, found [1,2]"],
+  [
+    { name: "house", lattice: { vector: [] } },
+    "source.lattice.vector: expected a list of whole numbers, found []",
+  ],
+  [{ name: "house", lattice: {} }, "source.lattice.vector: expected a list of whole numbers, found nothing"],
+  [
+    { name: "house", lattice: { vector: [1, -7] } },
+    "source.lattice.vector[2]: expected a whole number from 0, found -7",
+  ],
+  [
+    { name: "house", lattice: { vector: [1, 2.5] } },
+    'source.lattice.vector[2]: expected a whole number (write large ones as text, like "2^64 - 59"), found 2.5',
+  ],
+  [
+    { name: "house", lattice: { vector }, randomisation: ["shift"] },
+    'source.randomisation: expected a text like "shift", found ["shift"]',
+  ],
+];
+
+test.each(refusals)("refuses %j", (spec, message) => {
+  expect(() => parseSource(spec)).toThrow(message);
+});

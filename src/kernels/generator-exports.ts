@@ -30,6 +30,18 @@ export interface GeneratorExports {
   readonly fillMt19937: FillWords;
   readonly fillPcg64: FillWords;
   readonly fillPhilox4x32: FillWords;
+  readonly fillMt19937x64: FillWords;
+  readonly fillPhilox4x64: FillWords;
+  readonly fillThreefry4x64: FillWords;
+  readonly fillChaCha8: FillWords;
+  readonly fillChaCha20: FillWords;
+  readonly fillSubtractive55: FillWords;
+  readonly fillR250: FillWords;
+  readonly fillKnuthArray: FillWords;
+  readonly fillSubtractWithBorrow: FillWords;
+  readonly fillMwc: FillWords;
+  readonly fillKiss99: FillWords;
+  readonly fillKiss64: FillWords;
   readonly fillXoshiro256PlusPlus: FillWords;
   readonly fillMrg32k3a: FillWords;
   readonly fillLecuyer1988: FillWords;

@@ -11,6 +11,7 @@
  * hexadecimal 32-bit words, word 0 first, as in known-answer tables:
  * "243f6a88 85a308d3 13198a2e 03707344;a4093822 299f31d0".
  */
+import { hexWords } from "./counter-based.js";
 import { pseudoRandom, type State } from "./pseudo-random.js";
 
 const WORD = 0xffffffffn;
@@ -29,19 +30,12 @@ function counterOf([low = 0n, high = 0n]: State): bigint {
 }
 
 function parse(text: string): State {
-  const [counter, key, ...more] = text.split(";").map(hexWords);
-  if (counter?.length === 4 && key?.length === 2 && more.length === 0)
-    return pack(join(counter), join(key), 0n);
+  const [counterText = "", keyText = "", ...more] = text.split(";");
+  const [counter, key] = [hexWords(counterText, 4, 8), hexWords(keyText, 2, 8)];
+  if (counter !== null && key !== null && more.length === 0) return pack(join(counter), join(key), 0n);
   throw new RangeError(
     `state: expected "counter;key" as four and two hexadecimal 32-bit words, like "0 0 0 0;0 0", for source "philox4x32", found "${text}"`,
   );
-}
-
-function hexWords(text: string): bigint[] {
-  const words = text.trim().split(/[\s,]+/);
-  return words.every((word) => /^(0x)?[0-9a-f]{1,8}$/i.test(word))
-    ? words.map((word) => BigInt(`0x${word.replace(/^0x/i, "")}`))
-    : [];
 }
 
 /** The four words of one block. */

@@ -22,6 +22,24 @@ import {
   lcg950706376,
 } from "./lcg-prime.js";
 import { lecuyer1988 } from "./lecuyer1988.js";
+import { mt19937x64 } from "./mt19937-64.js";
+import { knuthArray, knuthSubtractive } from "./knuth.js";
+import { r250 } from "./r250.js";
+import {
+  ranlux0,
+  ranlux1,
+  ranlux2,
+  ranlux24,
+  ranlux24Base,
+  ranlux3,
+  ranlux4,
+  ranlux48,
+  ranlux48Base,
+} from "./ranlux.js";
+import { kiss64, kiss99, mwc } from "./kiss.js";
+import { philox4x64 } from "./philox4x64.js";
+import { threefry4x64 } from "./threefry4x64.js";
+import { chacha20, chacha8 } from "./chacha.js";
 import { minstd16807, minstd48271 } from "./minstd.js";
 import { mrg32k3a } from "./mrg32k3a.js";
 import { mt19937 } from "./mt19937.js";
@@ -61,7 +79,23 @@ export type SourceId =
   | "wichmann-hill"
   | "lecuyer1988"
   | "mrg32k3a"
+  | "knuth-subtractive"
+  | "knuth-array"
+  | "r250"
+  | "ranlux-0"
+  | "ranlux-1"
+  | "ranlux-2"
+  | "ranlux-3"
+  | "ranlux-4"
+  | "ranlux24-base"
+  | "ranlux24"
+  | "ranlux48-base"
+  | "ranlux48"
+  | "mwc"
+  | "kiss99"
+  | "kiss64"
   | "mt19937"
+  | "mt19937-64"
   | "taus88"
   | "lfsr113"
   | "xorshift32"
@@ -79,6 +113,10 @@ export type SourceId =
   | "sfc64"
   | "splitmix64"
   | "philox4x32"
+  | "philox4x64"
+  | "threefry4x64"
+  | "chacha8"
+  | "chacha20"
   | "sobol"
   | "halton"
   | "lattice"
@@ -105,7 +143,23 @@ const sources: Readonly<Record<SourceId, Source>> = {
   "wichmann-hill": wichmannHill,
   lecuyer1988,
   mrg32k3a,
+  "knuth-subtractive": knuthSubtractive,
+  "knuth-array": knuthArray,
+  r250,
+  "ranlux-0": ranlux0,
+  "ranlux-1": ranlux1,
+  "ranlux-2": ranlux2,
+  "ranlux-3": ranlux3,
+  "ranlux-4": ranlux4,
+  "ranlux24-base": ranlux24Base,
+  ranlux24,
+  "ranlux48-base": ranlux48Base,
+  ranlux48,
+  mwc,
+  kiss99,
+  kiss64,
   mt19937,
+  "mt19937-64": mt19937x64,
   taus88,
   lfsr113,
   xorshift32,
@@ -123,6 +177,10 @@ const sources: Readonly<Record<SourceId, Source>> = {
   sfc64,
   splitmix64: splitMix64,
   philox4x32,
+  philox4x64,
+  threefry4x64,
+  chacha8,
+  chacha20,
   sobol,
   halton,
   lattice,

@@ -20,6 +20,10 @@ export interface KnownAnswer {
   readonly ctr: string;
   readonly key: string;
   readonly out: string;
+  /** ChaCha blocks alone. */
+  readonly counter?: number;
+  readonly nonce?: string;
+  readonly out_serialized?: string;
 }
 
 export interface Jump {

@@ -3,8 +3,11 @@
  * comes from (GSL 2.7.1, libstdc++ 12, Boost.Random 1.74, NumPy 1.24.2, glibc, or a plain integer implementation of
  * the definition) and with the published values that it was confirmed by.
  */
-import { describe, test } from "vitest";
-import { check, data, settingOf, type Setting } from "./generator-data.js";
+import { describe, expect, test } from "vitest";
+import { instantiateKernels } from "../../src/kernels/instance.js";
+import { USUAL } from "../../src/sources/pseudo-random.js";
+import { coordinateOf } from "../sources/oracle.js";
+import { check, data, pseudoRandomSource, settingOf, type Setting } from "./generator-data.js";
 
 const word = (setting: string, name: string): string => String(settingOf(setting).params[name]);
 const words = (setting: string, name = "state"): string => {
@@ -49,6 +52,7 @@ const named: readonly (readonly [string, string, string, number?])[] = [
   ["mrg32k3a", "mrg32k3a-seed12345x6", "12345,12345,12345,12345,12345,12345"],
   ["mt19937", "mt19937-seed5489", "5489"],
   ["mt19937", "mt19937-seed1", "1"],
+  ["mt19937-64", "mt19937-64-seed5489", "5489"],
   ["taus88", "taus88-341", "341,341,341"],
   ["taus88", "taus2-gsl-seed1", words("taus2-gsl-seed1", "s"), 6],
   ["lfsr113", "gsl-taus113-seed1", taus113Seed(), 10],
@@ -71,12 +75,64 @@ const named: readonly (readonly [string, string, string, number?])[] = [
   ["splitmix64", "splitmix64-seed1234567", "1234567"],
   ["splitmix64", "splitmix64-seed0", "0"],
   ["philox4x32", "philox4x32-10-key0-0-ctr0", "0 0 0 0;0 0"],
+  ["philox4x64", "philox4x64-10-key0-0-ctr0", "0 0 0 0;0 0"],
+  ["philox4x64", "philox4x64-10-key0-0-ctr1", "1 0 0 0;0 0"],
+  ["threefry4x64", "threefry4x64-20-key0-ctr0", "0 0 0 0;0 0 0 0"],
+  ["chacha8", "chacha8-zero-key", `${"0".repeat(64)};0;${"0".repeat(24)}`],
+  ["chacha20", "chacha20-zero-key", `${"0".repeat(64)};0;${"0".repeat(24)}`],
+  ["knuth-subtractive", "subtractive-55-24-mod1e9", "12345"],
+  ["knuth-array", "knuth-ran_array-2002-seed310952", "310952"],
+  ["ranlux24-base", "ranlux24_base-default", "19780503"],
+  ["ranlux-3", "gsl-ranlux-seed1", "1"],
+  ["ranlux-4", "gsl-ranlux389-seed1", "1"],
+  ["ranlux24", "ranlux24-default", "19780503"],
+  ["ranlux48-base", "ranlux48_base-default", "19780503"],
+  ["ranlux48", "ranlux48-default", "19780503"],
+  ["kiss99", "kiss99-defaults", "362436069,521288629,123456789,380116160"],
+  ["kiss99", "kiss99-marsaglia-settable", "12345,65435,34221,12345", 256],
 ];
 
 describe("sources print their published outputs", () => {
   for (const [spec, setting, state, dropped = 0] of named) {
     test(`${spec}: ${setting}`, () => check({ spec, setting, state, dropped }));
   }
+});
+
+describe("values that were printed with the generators", () => {
+  test("knuth-array: the check of Knuth's ran_array, 995235265, by 2010 blocks from seed 310952 (from memory)", () => {
+    const integers = pseudoRandomSource("knuth-array").openIntegers({ key: null, state: "310952" });
+    for (let k = 0; k < 2009 * 100; k++) integers.next();
+    expect(integers.next()).toBe(995235265n);
+  });
+
+  test("r250: the GNU Scientific Library runs the recurrence backwards, x(n) = x(n-147) xor x(n-250)", () => {
+    const source = pseudoRandomSource("r250");
+    const [...start] = source.recurrence.stateFromText("1");
+    const words = [...new Uint32Array(new BigUint64Array(start.slice(0, 125)).buffer)];
+    for (let n = 250; n < 250 + 10_000; n++)
+      words.push(((words[n - 147] ?? 0) ^ (words[n - 250] ?? 0)) >>> 0);
+    const { first10, at } = settingOf("gsl-r250-seed1");
+    expect(words.slice(250, 260).map(String)).toEqual(first10);
+    expect(String(words.at(-1))).toBe(at["10000"]);
+
+    const back = words.toReversed();
+    const state = [...new BigUint64Array(Uint32Array.from(back.slice(0, 250)).buffer), 0n];
+    const integers = source.recurrence.integers(state);
+    for (const word of back.slice(250)) expect(integers.next().value).toBe(BigInt(word));
+  });
+
+  test("kiss64: the hundred millionth output, 1666297717051644203, of the posting of 2009 (from memory)", () => {
+    const kernels = instantiateKernels();
+    const source = pseudoRandomSource("kiss64");
+    const state = "1234567890987654321,123456123456123456,362436362436362436,1066149217761810";
+    const count = 10_000;
+    const row = kernels.arena.allocate(count * 8);
+    const request = { dimension: 1, n: 1e8, randomisations: [], key: null, state };
+    const stream = source.open(request, kernels);
+    for (let done = 0; done < 1e8; done += count) stream.fill(row, count, count);
+    const last = kernels.f64(row, count)[count - 1];
+    expect(last).toBe(coordinateOf(1666297717051644203n, source.recurrence, USUAL));
+  });
 });
 
 describe("the user's own congruential generators print the same", () => {

@@ -1,7 +1,8 @@
 import { describe, expect, test } from "vitest";
+import { isPrime, powerMod } from "../../src/numeric/factor.js";
 import type { SourceSpec } from "../../src/problem/contract.js";
 import { parseSource } from "../../src/sources/choice.js";
-import { listSources, sourceIds } from "../../src/sources/registry.js";
+import { findSource, listSources, sourceIds } from "../../src/sources/registry.js";
 
 const house = { modulus: "2^31", multiplier: 65539, increment: 0 };
 
@@ -29,8 +30,40 @@ describe("listing", () => {
       expect(citation).toMatch(/\d{4}/);
       expect(method).not.toBe("");
       expect(outputBits).toBeGreaterThan(0);
-      // the cycle of a chaotic generator is known by its least length alone
-      if (method !== "chaotic with counter") expect(period === null).toBe(family !== "pseudo-random");
+      if (family !== "pseudo-random") expect(period).toBeNull();
+    }
+  });
+});
+
+describe("periods", () => {
+  /** No exact period is known, or it depends on the seed. */
+  const unknown = ["sfc64", "knuth-subtractive", "kiss99", "kiss64"];
+
+  test("every other pseudo-random source states its exact period", () => {
+    const silent = listSources().filter(
+      ({ family, period }) => family === "pseudo-random" && period === null,
+    );
+    expect(silent.map(({ id }) => id).sort()).toEqual([...unknown].sort());
+  });
+
+  test("mwc: a 2^16 - 1 and a 2^15 - 1 are prime, so that each half has the period a 2^15 - 1", () => {
+    const halves = [36969n, 18000n];
+    for (const a of halves)
+      expect([isPrime(a * 65536n - 1n), isPrime(a * 32768n - 1n)]).toEqual([true, true]);
+    expect(findSource("mwc")?.period).toBe(halves.reduce((product, a) => product * (a * 32768n - 1n), 1n));
+  });
+
+  test("ranlux: the period is the order of the base modulo 2^576 - 2^240 + 1 (2 and 3 do not divide it further)", () => {
+    const modulus = (1n << 576n) - (1n << 240n) + 1n;
+    for (const [id, bits] of [
+      ["ranlux-3", 24n],
+      ["ranlux48", 48n],
+    ] as const) {
+      const period = findSource(id)?.period ?? 0n;
+      expect(powerMod(1n << bits, period, modulus)).toBe(1n);
+      for (const p of [2n, 3n, 5n, 7n, 13n, 17n]) {
+        if (period % p === 0n) expect(powerMod(1n << bits, period / p, modulus)).not.toBe(1n);
+      }
     }
   });
 });

@@ -10,7 +10,12 @@ export {
 } from "./convert";
 export { fillLecuyer1988, fillMrg32k3a, fillWichmannHill } from "./combined";
 export { fillFolded, fillGeneral, fillPowerOfTwo, fillShort, fractionWords } from "./congruential";
+export { fillChaCha20, fillChaCha8 } from "./chacha";
+export { fillPhilox4x64, fillThreefry4x64 } from "./counter4x64";
+export { fillKiss64, fillKiss99, fillMwc } from "./kiss";
+export { fillKnuthArray, fillR250, fillSubtractive55, fillSubtractWithBorrow } from "./lagged";
 export { fillMt19937 } from "./mt19937";
+export { fillMt19937x64 } from "./mt19937-64";
 export { fillPcg32 } from "./pcg32";
 export { fillPcg64, fillPcg64Dxsm } from "./pcg64";
 export { fillPhilox4x32 } from "./philox4x32";

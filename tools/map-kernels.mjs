@@ -13,18 +13,23 @@ export function mapModule(bytes, names, { inline = false } = {}) {
   const module = binaryen.readBinary(bytes);
   module.setFeatures(binaryen.Features.All & ~binaryen.Features.RelaxedSIMD);
   for (const name of names) addLoop(module, name);
-  if (inline) {
-    const kept = binaryen.getPassArgument("no-inline");
-    binaryen.setAlwaysInlineMaxSize(4000);
-    binaryen.setFlexibleInlineMaxSize(4000);
-    binaryen.setPassArgument("no-inline", "*_special*");
-    module.runPasses(["no-inline", "inlining-optimizing"]);
-    binaryen.setPassArgument("no-inline", kept);
-  }
+  if (inline) splice(module);
   if (!module.validate()) throw new Error("the mapped module is not valid");
   const binary = module.emitBinary();
   module.dispose();
   return binary;
+}
+
+function splice(module) {
+  for (let i = 0; i < module.getNumExports(); i++) {
+    const { name, value } = binaryen.getExportInfo(module.getExportByIndex(i));
+    if (!name.endsWith("_special")) continue;
+    binaryen.setPassArgument("no-inline", value);
+    module.runPasses(["no-inline"]);
+  }
+  binaryen.setPassArgument("no-inline", null);
+  binaryen.setAlwaysInlineMaxSize(4000);
+  module.runPasses(["inlining-optimizing"]);
 }
 
 function addLoop(module, name) {

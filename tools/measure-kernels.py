@@ -14,8 +14,9 @@ from mpmath import inf, isinf, isnan, mp, mpf, nan
 mp.prec = 160
 
 
-def real(f, inside=lambda *_: True):
-    return lambda *args: f(*args) if inside(*args) else nan
+def real(f, inside, pole=None):
+    """f where `inside` holds, -infinity at the pole, NaN elsewhere."""
+    return lambda x: f(x) if inside(x) else -inf if x == pole else nan
 
 
 def power(x, y):
@@ -79,10 +80,10 @@ def gamma(x):
 FUNCTIONS = {
     "exp": clipped(mp.exp),
     "expm1": clipped(mp.expm1),
-    "log": real(mp.log, lambda x: x > 0),
-    "log1p": real(mp.log1p, lambda x: x > -1),
-    "log2": real(lambda x: mp.log(x) / mp.log(2), lambda x: x > 0),
-    "log10": real(lambda x: mp.log(x) / mp.log(10), lambda x: x > 0),
+    "log": real(mp.log, lambda x: x > 0, 0),
+    "log1p": real(mp.log1p, lambda x: x > -1, -1),
+    "log2": real(lambda x: mp.log(x) / mp.log(2), lambda x: x > 0, 0),
+    "log10": real(lambda x: mp.log(x) / mp.log(10), lambda x: x > 0, 0),
     "cbrt": lambda x: mp.sign(x) * mp.cbrt(abs(x)),
     "pow": power,
     "sin": mp.sin,
@@ -129,14 +130,14 @@ def main():
             column.frombytes(stream.read(8 * count))
             columns.append(column)
         f = FUNCTIONS[head["name"]]
-        worst, where, total = mpf(-1), None, mpf(0)
+        worst, where = mpf(-1), None
         for i in range(count):
             args = [column[i] for column in columns[:-1]]
             e = error(f(*map(mpf, args)), columns[-1][i])
-            total += e
             if e > worst:
                 worst, where = e, (args, columns[-1][i])
-        print(json.dumps({"worst": float(worst), "args": [repr(a) for a in where[0]], "got": repr(where[1])}), flush=True)
+        largest = float(worst) if worst < inf else None  # JSON has no infinity
+        print(json.dumps({"worst": largest, "args": [repr(a) for a in where[0]], "got": repr(where[1])}), flush=True)
 
 
 if __name__ == "__main__":

@@ -1,5 +1,5 @@
-// What tools/measure-kernels.mjs measures: for each kernel the promised bound in ulp, the interval used for timing, and
-// the samples, each a share of the arguments. A sample is a function of a random source `r` that gives one argument, or
+// What tools/measure-kernels.mjs measures: for each kernel the promised bound in ulp, the interval used for timing, one
+// that takes the rare path (where an interval does), and the samples, each a share of the arguments. A sample is a function of a random source `r` that gives one argument, or
 // a pair for the kernels of two.
 
 /** A seeded source of 64-bit words (the mixing function of G. L. Steele, D. Lea and C. H. Flood, OOPSLA 2014). */
@@ -58,22 +58,42 @@ export const GROUPS = [
   {
     title: "Exponentials, logarithms, powers",
     functions: [
-      { name: "exp", bound: 1, timed: [-5, 5], samples: [middle(-5, 5), middle(-745, 710), small, anything] },
+      {
+        name: "exp",
+        bound: 1,
+        timed: [-5, 5],
+        rare: [691, 709],
+        samples: [middle(-5, 5), middle(-745, 710), small, anything],
+      },
       {
         name: "expm1",
         bound: 1,
         timed: [-5, 5],
+        rare: [691, 709],
         samples: [middle(-1, 1), middle(-40, 710), small, anything],
       },
-      { name: "log", bound: 0.6, timed: [1e-9, 1], samples: logarithm },
-      { name: "log1p", bound: 0.6, timed: [-0.9, 10], samples: [middle(-1, 10), small, anything, tiny] },
-      { name: "log2", bound: 0.6, timed: [1e-9, 10], samples: logarithm },
-      { name: "log10", bound: 0.6, timed: [1e-9, 10], samples: logarithm },
-      { name: "cbrt", bound: 0.6, timed: [-10, 10], samples: [anything, middle(-10, 10), tiny] },
+      { name: "log", bound: 0.6, timed: [1e-9, 1], rare: [1e-310, 2e-308], samples: logarithm },
+      {
+        name: "log1p",
+        bound: 0.6,
+        timed: [-0.9, 10],
+        rare: [1e301, 1e302],
+        samples: [middle(-1, 10), small, anything, tiny],
+      },
+      { name: "log2", bound: 0.6, timed: [1e-9, 10], rare: [1e-310, 2e-308], samples: logarithm },
+      { name: "log10", bound: 0.6, timed: [1e-9, 10], rare: [1e-310, 2e-308], samples: logarithm },
+      {
+        name: "cbrt",
+        bound: 0.6,
+        timed: [-10, 10],
+        rare: [1e-310, 2e-308],
+        samples: [anything, middle(-10, 10), tiny],
+      },
       {
         name: "pow",
         bound: 1,
         timed: [0.1, 10],
+        rare: [1e-310, 2e-308],
         samples: [
           ["x, y in 0 to 10, -20 to 20", (r) => [r.uniform(0, 10), r.uniform(-20, 20)]],
           [
@@ -99,9 +119,9 @@ export const GROUPS = [
   {
     title: "Trigonometric functions",
     functions: [
-      { name: "sin", bound: 1.5, timed: [-10, 10], samples: angles },
-      { name: "cos", bound: 1.5, timed: [-10, 10], samples: angles },
-      { name: "tan", bound: 3, timed: [-10, 10], samples: angles },
+      { name: "sin", bound: 0.75, timed: [-10, 10], rare: [1e5, 1e9], samples: angles },
+      { name: "cos", bound: 0.75, timed: [-10, 10], rare: [1e5, 1e9], samples: angles },
+      { name: "tan", bound: 2.5, timed: [-10, 10], rare: [1e5, 1e9], samples: angles },
     ],
   },
   {
@@ -114,6 +134,7 @@ export const GROUPS = [
         name: "atan2",
         bound: 1.25,
         timed: [-10, 10],
+        rare: [1e200, 1e201],
         samples: [
           ["both in -10 to 10", (r) => [r.uniform(-10, 10), r.uniform(-10, 10)]],
           ["both ±2^-30 to 2^30", (r) => [r.scale(-30, 30), r.scale(-30, 30)]],
@@ -126,9 +147,9 @@ export const GROUPS = [
   {
     title: "Hyperbolic functions",
     functions: [
-      { name: "sinh", bound: 2, timed: [-5, 5], samples: hyperbolic },
-      { name: "cosh", bound: 1.5, timed: [-5, 5], samples: hyperbolic },
-      { name: "tanh", bound: 2.5, timed: [-5, 5], samples: hyperbolic },
+      { name: "sinh", bound: 2, timed: [-5, 5], rare: [691, 709], samples: hyperbolic },
+      { name: "cosh", bound: 1.5, timed: [-5, 5], rare: [691, 709], samples: hyperbolic },
+      { name: "tanh", bound: 2.5, timed: [-5, 5], rare: [346, 800], samples: hyperbolic },
     ],
   },
 ];

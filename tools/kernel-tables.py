@@ -92,21 +92,26 @@ def log_table():
 
 
 def sine_table():
-    values, lows = [], []
+    values = []
     for k in range(128):
-        angle = k * mp.pi / 64
-        sine, cosine = mp.sin(angle), mp.cos(angle)
+        sine, cosine = mp.sin(k * mp.pi / 64), mp.cos(k * mp.pi / 64)
         if k % 64 == 0:
             sine = mpf(0)
         if k % 64 == 32:
             cosine = mpf(0)
+        unit = 1 if cosine >= 0 else -1
         high = double(sine)
-        low = double(sine - mpf(high)) if k % 32 else 0.0
-        values += [bits(high if k % 64 else -0.0), bits(-double(cosine) if k % 64 != 32 else 0.0)]
-        lows += [bits(low)]
-    head = ["Angles k * pi/64, k = 0...127."]
-    table("sine.ts", "SINE_TABLE", head + ["Pairs (sine, -cosine); the zeros of the sine are -0 so that sin(-0) = -0."], values)
-    table("sine-low.ts", "SINE_LOW_TABLE", head + ["What the sine of SINE_TABLE lacks: sine - high."], lows)
+        values += [bits(high if k % 64 else -0.0), bits(double(cosine - unit))]
+        values += [bits(double(sine - mpf(high))), bits(float(unit))]
+    table(
+        "sine.ts",
+        "SINE_TABLE",
+        [
+            "Angles k * pi/64, k = 0...127, as entries (sine, cosine - unit, what the sine lacks, unit) with unit = 1 or -1 of",
+            "the cosine's sign. The zeros of the sine are -0 so that sin(-0) = -0.",
+        ],
+        values,
+    )
 
 
 def two_over_pi():

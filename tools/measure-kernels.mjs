@@ -7,6 +7,7 @@ import { Buffer } from "node:buffer";
 import { spawn } from "node:child_process";
 import { readFileSync, writeFileSync } from "node:fs";
 import { parseArgs } from "node:util";
+import { format } from "prettier";
 import { mapModule } from "./map-kernels.mjs";
 import { GROUPS, randomSource } from "./kernel-samples.mjs";
 
@@ -125,5 +126,5 @@ end of the range, |x| > 8192 in \`sin\`, \`cos\`, \`tan\`), which are calls out 
 is in a column of its own, with the interval of its arguments.
 
 ${sections.join("\n")}`;
-  writeFileSync(new URL("../docs/kernels.md", import.meta.url), text);
+  writeFileSync(new URL("../docs/kernels.md", import.meta.url), await format(text, { parser: "markdown" }));
 }

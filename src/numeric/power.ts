@@ -1,8 +1,9 @@
 /**
  * The smallest bias that a two-sided test finds with a given power: (t_{1 - level/2} + t_{power}) standard errors, both
  * quantiles with the degrees of freedom of the standard error. This is the usual sample-size formula (Snedecor & Cochran,
- * Statistical Methods, 8th ed. 1989, section 6.14) with t in place of normal quantiles; against the exact non-central t
- * its power is within one point of the nominal 80 % for 16 degrees of freedom or more.
+ * Statistical Methods, 8th ed. 1989, section 6.14) with t in place of normal quantiles. Its true power, by the non-central
+ * t, is a little below the nominal 80 % at strict levels: with 31 degrees of freedom 80.0 % at level 0.05 and 78.8 % at
+ * 0.1/144, with 15 degrees 80.0 % and 77.2 % (SciPy 1.17.1, stats.nct).
  */
 import { normalUpperQuantile } from "./normal.js";
 import { studentUpperQuantile } from "./student.js";

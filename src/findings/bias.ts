@@ -15,31 +15,23 @@
  * Stage 2 takes the larger of Student's p-value and that of Hall's transformation, which allows for the skewness of the
  * estimates [64 rare payments as above: 3.3 % of null studies confirmed a bias by Student's t alone, 0.3 % with both].
  *
+ * A source whose replicates all gave the same wrong value (an integrand in step with its lattice) has no deviation of its
+ * own. What is tested then is that it behaves as a sound source does: the deviation of one on the same problem takes the
+ * place of s. Where both show no deviation, or the value is right to rounding, there is no test.
+ *
  * The independence fails where references are uncertain: both stages then share the reference's error. In such a family
  * stage 2 divides by the size of the whole family in place of the number of candidates, and the union bound holds the
  * level whatever the dependence.
  */
-import { binomialTwoSided } from "../numeric/binomial.js";
-import { chiSquareUpper } from "../numeric/chi-square.js";
-import { skewedTwoSided } from "../numeric/comparison.js";
 import { holm } from "../numeric/holm.js";
-import { deviation, skewness } from "../numeric/moments.js";
 import { detectableShift } from "../numeric/power.js";
-import { studentTwoSided } from "../numeric/student.js";
-import { mean, sum } from "../numeric/sums.js";
 import type { BiasTest } from "../record/types.js";
-import type { Context } from "./cells.js";
-import type { KnownReference } from "./reference.js";
+import { examine, untested, type Borrowed, type Outcome, type Subject } from "./bias-outcome.js";
+import { isRounding, type Context } from "./cells.js";
 import { namesOf, seriesKey, type Series, type SeriesName } from "./series.js";
 
 /** Replicates of a confirmation. */
 export const CONFIRMATION_REPLICATES = 256;
-
-/** Fewest expected hits (and misses) for a test of a probability. */
-export const FEWEST_HITS = 100;
-
-/** Below this p-value the spread of the hits contradicts independent points, and Student's t takes the binomial's place. */
-const DISPERSION_LEVEL = 0.001;
 
 /** Estimates on fresh keys for one candidate, at the n of its test. */
 export interface Confirmation extends SeriesName {
@@ -51,28 +43,9 @@ export function screeningLevel(falseAlarms: number): number {
   return Math.sqrt(falseAlarms);
 }
 
-interface Outcome {
-  readonly kind: "student" | "binomial" | "none";
-  readonly pValue: number | null;
-  readonly bias: number;
-  readonly standardError: number;
-  /** Degrees of freedom of the standard error; Infinity for the binomial. */
-  readonly degrees: number;
-  readonly reason: string | null;
-}
-
-interface Subject {
-  readonly estimates: readonly number[];
-  readonly n: number;
-  /** True for a crude probability of a pseudo-random source: exact binomial counts. */
-  readonly counts: boolean;
-  readonly indicator: boolean;
-  readonly reference: KnownReference;
-}
-
 /** Stage 1: one test per series; `candidate` marks those that need a confirmation. */
 export function findCandidates(series: readonly Series[], context: Context, falseAlarms: number): BiasTest[] {
-  const outcomes = series.map((one) => screen(one, context));
+  const outcomes = series.map((one) => screen(one, series, context));
   const family = outcomes.filter((outcome) => outcome.kind !== "none").length;
   const adjusted = adjust(outcomes, family);
   const level = screeningLevel(falseAlarms);
@@ -110,7 +83,7 @@ export function confirmCandidates(
   const outcomes = candidates.map((test): Outcome => {
     const origin = origins.get(seriesKey(test));
     const again = fresh.get(seriesKey(test));
-    const subject = origin === undefined ? null : subjectOf(origin, context);
+    const subject = origin === undefined ? null : subjectOf(origin, series, context);
     if (again === undefined || subject === null) return untested("not confirmed: the study stopped before");
     return examine({ ...subject, estimates: again.estimates, n: again.n }, true);
   });
@@ -132,13 +105,10 @@ export function confirmCandidates(
         standardError: outcome.standardError,
         pValue: outcome.pValue,
       },
+      reason: outcome.reason ?? test.reason,
       confirmed: sameSign && (adjusted[at] ?? 1) <= falseAlarms,
     };
   });
-}
-
-function untested(reason: string): Outcome {
-  return { kind: "none", pValue: null, bias: NaN, standardError: NaN, degrees: NaN, reason };
 }
 
 /** Holm over the outcomes that have a p-value, in a family of `family` tests. */
@@ -149,74 +119,40 @@ function adjust(outcomes: readonly Outcome[], family: number): (number | null)[]
   return outcomes.map((outcome) => (outcome.pValue === null ? null : (values[next++] ?? null)));
 }
 
-function subjectOf(series: Series, context: Context): Subject | null {
-  const { last } = series;
-  const reference = context.references.get(series.problem);
+function subjectOf(one: Series, series: readonly Series[], context: Context): Subject | null {
+  const { last } = one;
+  const reference = context.references.get(one.problem);
   if (reference === undefined) return null;
-  const family = context.sources.get(series.source)?.family;
-  const counts = last.indicator && series.estimator === "crude" && family === "pseudo-random";
-  return { estimates: last.estimates, n: last.n, counts, indicator: last.indicator, reference };
+  const family = context.sources.get(one.source)?.family;
+  const counts = last.indicator && one.estimator === "crude" && family === "pseudo-random";
+  const { estimates, n, indicator } = last;
+  return { estimates, n, counts, indicator, reference, borrowed: borrowedFor(one, series, context) };
 }
 
-function screen(series: Series, context: Context): Outcome {
-  const { last } = series;
-  if (context.sources.get(series.source)?.deterministic === true) {
+/** The deviation that a sound pseudo-random source shows on the same problem, carried to the same n by n^-1/2. */
+function borrowedFor(one: Series, series: readonly Series[], context: Context): Borrowed | null {
+  const lenders = series.filter((other) => {
+    const source = context.sources.get(other.source);
+    const same = seriesKey({ ...other, source: one.source }) === seriesKey(one);
+    const sound = source?.family === "pseudo-random" && source.knownStructure === null;
+    return same && sound && other.source !== one.source && !isRounding(other.last);
+  });
+  const [best] = lenders.sort((a, b) => b.last.n * b.last.replicates - a.last.n * a.last.replicates);
+  const spread = best?.last.replicateDeviation ?? null;
+  if (best === undefined || spread === null) return null;
+  const deviation = spread * Math.sqrt(best.last.n / one.last.n);
+  return { source: best.source, deviation, degrees: best.last.replicates - 1 };
+}
+
+function screen(one: Series, series: readonly Series[], context: Context): Outcome {
+  if (context.sources.get(one.source)?.deterministic === true) {
     return untested("deterministic source: one error, no error bar");
   }
-  const subject = subjectOf(series, context);
+  const subject = subjectOf(one, series, context);
   if (subject === null) return untested("no reference value");
-  if (last.mean === null) return untested("non-finite values of the integrand");
-  if (last.replicates < 2) return untested("one replicate: no error bar");
+  if (one.last.mean === null) return untested("non-finite values of the integrand");
+  if (one.last.replicates < 2) return untested("one replicate: no error bar");
   return examine(subject, false);
-}
-
-function examine(subject: Subject, confirming: boolean): Outcome {
-  const { estimates, n, reference, indicator } = subject;
-  if (!estimates.every(Number.isFinite)) return untested("non-finite values of the integrand");
-  const trials = n * estimates.length;
-  const expected = Math.min(reference.value, 1 - reference.value) * trials;
-  if (indicator && !(expected >= FEWEST_HITS)) {
-    return untested(
-      `${Math.max(0, expected).toPrecision(2)} hits or misses expected, fewer than ${FEWEST_HITS}`,
-    );
-  }
-  const spread = deviation(estimates);
-  const rounding = Number.EPSILON * Math.max(Math.abs(reference.value), Math.abs(mean(estimates)));
-  if (!(spread > 16 * rounding)) return untested("all replicates gave the same value");
-  const binomial = subject.counts ? binomialOutcome(subject) : null;
-  if (binomial !== null) return binomial;
-  // The reference as a double and the integrand's last places are uncertain by some units of rounding themselves.
-  const uncertainty = Math.hypot(reference.uncertainty, 4 * rounding);
-  const standardError = Math.hypot(spread / Math.sqrt(estimates.length), uncertainty);
-  const degrees = estimates.length - 1;
-  const bias = mean(estimates) - reference.value;
-  const t = bias / standardError;
-  const plain = studentTwoSided(t, degrees);
-  const pValue = confirming
-    ? Math.max(plain, skewedTwoSided(t, skewness(estimates), estimates.length))
-    : plain;
-  return { kind: "student", pValue, bias, standardError, degrees, reason: null };
-}
-
-/**
- * Exact test of all hits together. Null where it does not apply: the reference is uncertain by more than a hundredth of
- * the binomial standard error, or the hits spread more from replicate to replicate than independent points would (a bad
- * source's doing, which is no bias).
- */
-function binomialOutcome({ estimates, n, reference }: Subject): Outcome | null {
-  const p = reference.value;
-  const trials = n * estimates.length;
-  const standardError = Math.sqrt((p * (1 - p)) / trials);
-  if (reference.uncertainty > standardError / 100) return null;
-  const hits = estimates.map((estimate) => Math.round(estimate * n));
-  const all = sum(hits);
-  const rate = all / trials;
-  if (rate > 0 && rate < 1) {
-    const dispersion = sum(hits.map((k) => (k - n * rate) ** 2)) / (n * rate * (1 - rate));
-    if (chiSquareUpper(dispersion, estimates.length - 1) < DISPERSION_LEVEL) return null;
-  }
-  const pValue = binomialTwoSided(all, trials, p);
-  return { kind: "binomial", pValue, bias: rate - p, standardError, degrees: Infinity, reason: null };
 }
 
 /** Smallest bias found with 80 % power by both stages, at the most severe step of Holm's procedure. */

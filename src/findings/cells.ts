@@ -19,6 +19,14 @@ export interface Context {
 /** Sample kurtosis of the errors above which a cell is called heavy-tailed (3 for normal errors). */
 export const HEAVY_TAIL = 6;
 
+/** A deviation below this many times the size of the values is rounding, not spread: sixteen units of the last place. */
+export const ROUNDING = 16 * Number.EPSILON;
+
+/** True where the replicates agree to rounding. */
+export function isRounding({ replicateDeviation, mean: centre }: Cell): boolean {
+  return replicateDeviation !== null && !(replicateDeviation > ROUNDING * Math.abs(centre ?? 0));
+}
+
 /** Below this many intervals their coverage is not assessed. */
 export const FEWEST_INTERVALS = 200;
 
@@ -90,7 +98,8 @@ function toCell(raw: RawCell, context: Context, crudeDeviation: number | null): 
         ? null
         : finite((spread / crudeDeviation) ** 2 * raw.n),
     coverage: sound && random ? coverageOf(raw, reference, context) : null,
-    heavyTailed: spread !== null && spread > 0 && kurtosis(raw.estimates) > HEAVY_TAIL,
+    heavyTailed:
+      spread !== null && spread > ROUNDING * Math.abs(centre ?? 0) && kurtosis(raw.estimates) > HEAVY_TAIL,
     digest: digestOf({ estimates: raw.estimates, withinVariances: raw.withinVariances }),
   };
 }

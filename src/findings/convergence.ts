@@ -13,13 +13,15 @@ import { studentFactor } from "../numeric/student.js";
 import { normalUpperQuantile } from "../numeric/normal.js";
 import type { BiasTest, Convergence } from "../record/types.js";
 import { EXTRAPOLATION } from "./budget.js";
-import type { Context } from "./cells.js";
+import { isRounding, type Context } from "./cells.js";
 import { toleranceOf } from "./reference.js";
 import { namesOf, type Series } from "./series.js";
 import { decayRejected, logErrors, slopeOver, spreadOf, type Spread } from "./spread.js";
 import { structureLine, unbiasedBy } from "./structure-line.js";
 
 const FLOOR_CONFIDENCE = 0.95;
+
+const UNKNOWN = 1000;
 
 export function convergenceOf(series: Series, test: BiasTest | undefined, context: Context): Convergence {
   const source = context.sources.get(series.source);
@@ -96,7 +98,14 @@ function reachOf(
 ): Convergence["reach"] {
   const tolerance = toleranceIn(series, context);
   const problem = context.problems.get(series.problem);
-  if (spread === null || tolerance === null || problem === undefined) return null;
+  if (tolerance === null || problem === undefined) return null;
+  if (isRounding(series.last)) {
+    // One and the same wrong value whatever n: no number of points is known to help.
+    if (Math.abs(series.last.bias ?? 0) > tolerance) return null;
+    const n = firstExact(series);
+    if (spread === null) return { n, interval: [n, n], extrapolated: false };
+  }
+  if (spread === null) return null;
   const { confidence } = problem.tolerance;
   const structure = structureLine(series, test, context, confidence);
   const uncertainty = context.references.get(series.problem)?.uncertainty ?? 0;
@@ -110,12 +119,19 @@ function reachOf(
   const room = Math.max(0, tolerance - bias) / factor;
   const found = spread.reach(Math.sqrt(Math.max(0, room ** 2 - Math.hypot(...declared("random")) ** 2)));
   if (found === null) return null;
+  // An n that is not known within a factor of a thousand is not known.
+  if (found.interval === null || found.interval[1] > UNKNOWN * found.interval[0]) return null;
   // Below the smallest size nothing was measured: it is enough that the smallest keeps the tolerance.
   const atLeast = (n: number) => Math.max(Math.ceil(n), spread.smallest);
-  const interval = found.interval;
   return {
     n: atLeast(found.value),
-    interval: interval === null ? null : [atLeast(interval[0]), atLeast(interval[1])],
+    interval: [atLeast(found.interval[0]), atLeast(found.interval[1])],
     extrapolated: found.value > EXTRAPOLATION * spread.largest,
   };
+}
+
+/** The n from which on the replicates agree to rounding. */
+function firstExact(series: Series): number {
+  const last = series.cells.findLast((cell) => !isRounding(cell));
+  return series.cells.find((cell) => cell.n > (last?.n ?? 0))?.n ?? series.last.n;
 }

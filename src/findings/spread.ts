@@ -7,6 +7,7 @@
 import { fitLine } from "../numeric/least-squares.js";
 import { jackknife } from "../numeric/resampling.js";
 import { combine, logDeviation, logRmse, type LeaveOneOut } from "./leave-one-out.js";
+import { ROUNDING } from "./cells.js";
 import type { Series } from "./series.js";
 
 export interface Estimated {
@@ -18,7 +19,7 @@ export interface Estimated {
 export interface Spread {
   /** s at n points. Null where nothing usable was measured. */
   at(n: number): Estimated | null;
-  /** The n with s(n) = target; null where s does not fall to it. */
+  /** The n with s(n) = target (the smallest measured where that is below it); null where s does not fall to it. */
   reach(target: number): Estimated | null;
   /** Level below which s does not fall, and its lower limit; null where none shows. */
   readonly plateau: { readonly value: number; readonly lower: number } | null;
@@ -29,7 +30,7 @@ export interface Spread {
 }
 
 /** Cells with an error bar. */
-export function usableCells(series: Series) {
+function usableCells(series: Series) {
   return series.cells.filter((cell) => cell.replicateDeviation !== null && cell.replicateDeviation > 0);
 }
 
@@ -135,13 +136,18 @@ const STALLED = -0.25;
  * sizes never reject.
  */
 export function decayRejected(sizes: readonly number[], logs: readonly LeaveOneOut[]): boolean {
-  const end = sizes.at(-1) ?? 0;
-  const from = sizes.findIndex((x) => x > end - 3 * Math.LN2 - 1e-9);
+  const from = lastDoublings(sizes);
   const [x, y] = [sizes.slice(from), logs.slice(from)];
   if (x.length < 3 || from === 0) return false;
   const slope = slopeOver(x, y);
   const interval = jackknife(slope.all, slope.without)?.interval;
   return interval !== undefined && interval[0] > STALLED;
+}
+
+/** Index of the first size of the last three doublings. */
+function lastDoublings(sizes: readonly number[]): number {
+  const end = sizes.at(-1) ?? 0;
+  return sizes.findIndex((x) => x > end - 3 * Math.LN2 - 1e-9);
 }
 
 /** Weighted slope of the logarithms on ln n, replicate by replicate. */
@@ -163,9 +169,11 @@ function rootCurve(sizes: readonly number[], logs: readonly LeaveOneOut[], plate
       reach: (values, y) => Math.log(line.slope(values) / (Math.exp(2 * y) - level(values))),
     };
   }
-  const weights = weightsOf(logs);
+  // ln C as the weighted mean of ln(s sqrt(n)) over the last three doublings: what n misses when it is small (a narrow
+  // peak) would pull C down, and nested sizes add little to one another.
+  const from = lastDoublings(sizes);
+  const weights = weightsOf(logs).map((weight, i) => (i < from ? 0 : weight));
   const total = weights.reduce((a, b) => a + b, 0);
-  // ln C as the weighted mean of ln(s sqrt(n)).
   const roots = (values: readonly number[]) => values.map((value, i) => value + (sizes[i] ?? NaN) / 2);
   const level = (values: readonly number[]) => weighted(roots(values), weights) / total;
   return {
@@ -191,22 +199,24 @@ function polygon(sizes: readonly number[], logs: readonly LeaveOneOut[]): LogCur
     reach(values, y) {
       const value = (i: number) => values[i] ?? NaN;
       const slope = slopeOf(values);
-      const beyond = (i: number) => (slope < 0 ? size(i) + (y - value(i)) / slope : NaN);
-      if (value(last) > y) return beyond(last);
+      if (value(last) > y) return slope < 0 ? size(last) + (y - value(last)) / slope : NaN;
       for (let i = last; i > 0; i--) {
         if (value(i - 1) > y) {
           const share = (value(i - 1) - y) / (value(i - 1) - value(i));
           return size(i - 1) + share * (size(i) - size(i - 1));
         }
       }
-      return beyond(0);
+      // Every size measured keeps y: below the smallest nothing is known.
+      return size(0);
     },
   };
 }
 
-/** ln RMSE of every usable cell of a series, for its order. */
+/** ln RMSE at every n where the errors are more than rounding, for the order of a series. */
 export function logErrors(series: Series, reference: number): { sizes: number[]; logs: LeaveOneOut[] } {
-  const cells = usableCells(series);
+  const cells = series.cells.filter(
+    ({ rmse, mean }) => rmse !== null && rmse > ROUNDING * Math.max(Math.abs(reference), Math.abs(mean ?? 0)),
+  );
   return {
     sizes: cells.map((cell) => Math.log(cell.n)),
     logs: cells.map((cell) => logRmse(cell.estimates.map((estimate) => estimate - reference))),

@@ -63,7 +63,7 @@ function sourceWarnings(source: RecordSource, problem: Problem, last: Cell): str
     const coincidences = (replicates * (replicates - 1)) / 2 / Number(source.period);
     if (replicates ** 2 / Number(source.period) >= COINCIDENCE) {
       texts.push(
-        `${source.id}: ${formatCount(replicates)} replicates among ${formatValue(Number(source.period))} states: ` +
+        `${source.id}: ${formatCount(replicates)} replicates among ${formatCount(Number(source.period))} states: ` +
           `${formatValue(coincidences)} pairs with the same points are expected`,
       );
     }

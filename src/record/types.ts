@@ -143,7 +143,7 @@ export interface BiasTest {
     readonly pValue: number;
   } | null;
   readonly confirmed: boolean;
-  /** Why no test was made, in words; null otherwise. */
+  /** Why no test was made, or what is unusual about it, in words; null otherwise. */
   readonly reason: string | null;
 }
 

@@ -190,14 +190,46 @@ describe("probabilities", () => {
   });
 });
 
-describe("what cannot be judged", () => {
-  it("equal replicates make no test", () => {
-    const cells = [256, 512].map((n) => makeCell({ n, estimates: new Array<number>(32).fill(1.5) }));
-    const record = assembleRecord(makeAssembly(cells));
-    expect(record.tests[0]).toMatchObject({ kind: "none", reason: "all replicates gave the same value" });
-    expect(record.budgets[0]).toMatchObject({ verdict: "undecided" });
+describe("replicates that all gave the same value", () => {
+  const sizes = [256, 512, 1024, 2048, 4096];
+  const constant = (value: number, source: string) =>
+    sizes.map((n) => makeCell({ source, n, estimates: new Array<number>(32).fill(value) }));
+  const sources = [makeSource("randu", { knownStructure: "planes" }), makeSource("philox4x32")];
+  const fresh = { ...makeConfirmation(0, 0, "randu"), estimates: new Array<number>(256).fill(1.8) };
+
+  it("are tested with the deviation of a sound source where the value is wrong", () => {
+    const cells = [...constant(1.8, "randu"), ...makeSeries({})];
+    const record = assembleRecord(makeAssembly(cells, { sources, confirmations: [fresh] }));
+    expect(record.tests[0]).toMatchObject({
+      kind: "student",
+      confirmed: true,
+      reason: "all replicates gave the same value; tested with the deviation of philox4x32",
+    });
+    expect(record.budgets[0]).toMatchObject({ verdict: "outside", largestLine: "source structure" });
+    expect(record.convergence[0]).toMatchObject({ never: true, reach: null });
+    expect(record.convergence[0]?.order).toBeCloseTo(0, 12);
   });
 
+  it("make no test without a sound source to borrow from, and the verdict is undecided", () => {
+    const record = assembleRecord(makeAssembly(constant(1.8, "randu"), { sources }));
+    expect(record.tests[0]).toMatchObject({ kind: "none", reason: "all replicates gave the same value" });
+    expect(record.budgets[0]).toMatchObject({ verdict: "undecided" });
+    expect(record.convergence[0]).toMatchObject({ never: false, reach: null });
+  });
+
+  it("make no test where the value is right to rounding, and the verdict is within", () => {
+    const cells = [...constant(1 + 4 * Number.EPSILON, "randu"), ...makeSeries({})];
+    const record = assembleRecord(makeAssembly(cells, { sources }));
+    expect(record.tests[0]).toMatchObject({
+      kind: "none",
+      reason: "all replicates gave the same value, the reference to rounding",
+    });
+    expect(record.budgets[0]).toMatchObject({ verdict: "within" });
+    expect(record.convergence[0]).toMatchObject({ order: null, reach: { n: 256, extrapolated: false } });
+  });
+});
+
+describe("what cannot be judged", () => {
   it("non-finite values empty the statistics and are described", () => {
     const estimates = [1, 2, NaN, 1];
     const nonFinite = { count: 3, first: { replicate: 2, index: 7, inputs: [0.25, 0.5], value: "NaN" } };
@@ -221,7 +253,7 @@ describe("what cannot be judged", () => {
     const sources = [makeSource("philox4x32", { period: "2147483646" })];
     const cells = makeSeries({ replicates: 64 });
     expect(assembleRecord(makeAssembly(cells, { sources })).warnings[0]).toMatch(
-      /64 replicates among 2\.1e9 states/,
+      /64 replicates among 2,147,483,646 states: 9\.4e-7 pairs with the same points/,
     );
   });
 });

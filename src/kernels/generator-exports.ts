@@ -40,6 +40,9 @@ export interface GeneratorExports {
   readonly fillKnuthArray: FillWords;
   readonly fillSubtractWithBorrow: FillWords;
   readonly fillMwc: FillWords;
+  readonly fillRecursive: FillWords;
+  readonly fillXorshiftTriple32: FillWords;
+  readonly fillXorshiftTriple64: FillWords;
   readonly fillKiss99: FillWords;
   readonly fillKiss64: FillWords;
   readonly fillXoshiro256PlusPlus: FillWords;

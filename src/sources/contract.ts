@@ -34,6 +34,8 @@ export interface SourceDescription {
   readonly randomisations: readonly Randomisation[];
   /** Known structure in a few words ("all triples lie on 15 planes"), or null where the source is held to be sound. */
   readonly knownStructure: string | null;
+  /** False where a key has no effect: such a source gives other points every time, and cannot be resumed or split. */
+  readonly repeatable?: false;
 }
 
 /** What a stream is opened with. */

@@ -3,16 +3,16 @@
  *
  *     { name: house, congruential: { modulus: "2^31", multiplier: 65539, increment: 0 },
  *       tuples: successive, endpoint: middle, bits: top 31, seeding: uniform-state }
+ *     { name: house, recursive: { modulus: "2^31 - 1", multipliers: [107374182, 0, 0, 0, 104480] } }
+ *     { name: house, xorshift: { bits: 64, shifts: [13, -7, 17] } }
  *
  * or a pseudo-random source of the registry in another usage: `{ name: house, source: mt19937, tuples: per-coordinate }`.
  */
 import { z } from "zod";
-import { congruentialPeriod } from "../numeric/congruential-period.js";
-import { parseInteger } from "../numeric/integer-formula.js";
 import { nearest } from "../numeric/nearest.js";
-import { congruential, LARGEST_MODULUS } from "./congruential.js";
 import type { Source } from "./contract.js";
 import { bitsOf, type Bits } from "./conversion.js";
+import { ORDERS, ownCongruential, ownRecursive, ownXorshift, refuse } from "./own-recurrence.js";
 import {
   isPseudoRandom,
   pseudoRandom,
@@ -29,10 +29,23 @@ const LARGEST_STRIDE = 4096;
 
 const whole = z.union([z.number(), z.string()]);
 
+const congruential = z.strictObject({ modulus: whole, multiplier: whole, increment: whole.optional() });
+const recursive = z.strictObject({
+  modulus: whole,
+  multipliers: z.array(whole).min(ORDERS.least).max(ORDERS.most),
+  increment: whole.optional(),
+});
+const xorshift = z.strictObject({
+  bits: z.union([z.literal(32), z.literal(64)]),
+  shifts: z.tuple([z.int(), z.int(), z.int()]),
+});
+
 /** The form of the mapping; what it says is checked further below. */
 export const ownSourceSchema = z.strictObject({
   name: z.string().regex(/^[A-Za-z0-9][A-Za-z0-9_.-]{0,39}$/),
-  congruential: z.strictObject({ modulus: whole, multiplier: whole, increment: whole.optional() }).optional(),
+  congruential: congruential.optional(),
+  recursive: recursive.optional(),
+  xorshift: xorshift.optional(),
   source: z.string().optional(),
   tuples: z
     .string()
@@ -48,14 +61,30 @@ export const ownSourceSchema = z.strictObject({
 
 type Mapping = z.infer<typeof ownSourceSchema>;
 
-/** What is allowed at each key, for messages. */
+/** Keys of the mappings inside the mapping. */
+const INNER: Readonly<Record<string, z.ZodObject>> = { congruential, recursive, xorshift };
+
+/** The generator of the mapping stands under one of these. */
+const GENERATORS = ["congruential", "recursive", "xorshift", "source"] as const;
+const ONE_GENERATOR = `one of the keys ${GENERATORS.map((key) => `"${key}"`).join(", ")}`;
+
+/** What is allowed at each key, for messages; numbers in a path stand as *. */
 const ALLOWED: Readonly<Record<string, string>> = {
-  "": 'a mapping with "name" and "congruential" or "source"',
+  "": `a mapping with "name" and ${ONE_GENERATOR}`,
   name: "1 to 40 letters, digits, dots, dashes or underscores, beginning with a letter or digit",
   congruential: 'a mapping with "modulus", "multiplier" and "increment"',
   "congruential.modulus": 'a whole number or a formula like "2^31 - 1"',
   "congruential.multiplier": 'a whole number or a formula like "2^16 + 3"',
   "congruential.increment": "a whole number or a formula",
+  recursive: 'a mapping with "modulus", "multipliers" and "increment"',
+  "recursive.modulus": 'a whole number or a formula like "2^31 - 1"',
+  "recursive.multipliers": `a list of ${ORDERS.least} to ${ORDERS.most} whole numbers or formulas, a1 first`,
+  "recursive.multipliers.*": "a whole number or a formula",
+  "recursive.increment": "a whole number or a formula",
+  xorshift: 'a mapping with "bits" and "shifts"',
+  "xorshift.bits": "32 or 64",
+  "xorshift.shifts": "three whole numbers, positive to the left and negative to the right",
+  "xorshift.shifts.*": "a whole number, positive to the left and negative to the right",
   source: "the id of a pseudo-random source",
   tuples: '"successive", "strided k" (like "strided 2") or "per-coordinate"',
   endpoint: '"middle" or "left"',
@@ -68,7 +97,8 @@ export function parseOwnSource(written: Readonly<Record<string, unknown>>): Sour
   const result = ownSourceSchema.safeParse(written);
   if (!result.success) throw new TypeError(explain(result.error.issues[0], written));
   const mapping = result.data;
-  if (isSourceId(mapping.name)) fail("name", `"${mapping.name}"`, "a name that no source of the program has");
+  if (isSourceId(mapping.name))
+    refuse("name", `"${mapping.name}"`, "a name that no source of the program has");
   const { recurrence, usage } = baseOf(mapping);
   return pseudoRandom(
     { ...recurrence, about: { ...recurrence.about, id: mapping.name } },
@@ -82,61 +112,34 @@ export function parseOwnSource(written: Readonly<Record<string, unknown>>): Sour
   );
 }
 
-function fail(key: string, found: string, allowed = ALLOWED[key] ?? ""): never {
-  throw new RangeError(`source.${key}: expected ${allowed}, found ${found}`);
-}
-
 /** The generator and, for one of the registry, how it is used there. */
 function baseOf(mapping: Mapping): { recurrence: Recurrence; usage: Usage } {
-  if (mapping.source !== undefined && mapping.congruential !== undefined) {
-    fail("congruential", "both", 'one of "congruential" and "source"');
-  }
-  if (mapping.source !== undefined) return named(mapping.source);
-  if (mapping.congruential === undefined)
-    fail("congruential", "neither", 'one of "congruential" and "source"');
-  return { recurrence: ownCongruential(mapping.name, mapping.congruential), usage: USUAL };
+  const given = GENERATORS.filter((key) => mapping[key] !== undefined);
+  const { name, congruential, recursive, xorshift, source } = mapping;
+  if (given.length > 1) refuseGenerators(given.map((key) => `"${key}"`).join(" and "));
+  if (source !== undefined) return named(source);
+  if (recursive !== undefined) return { recurrence: ownRecursive(name, recursive), usage: USUAL };
+  if (xorshift !== undefined) return { recurrence: ownXorshift(name, xorshift), usage: USUAL };
+  if (congruential !== undefined) return { recurrence: ownCongruential(name, congruential), usage: USUAL };
+  return refuseGenerators("none");
+}
+
+function refuseGenerators(found: string): never {
+  throw new RangeError(`source: expected ${ONE_GENERATOR}, found ${found}`);
 }
 
 function named(id: string): PseudoRandomSource {
   const source = findSource(id);
   if (isPseudoRandom(source)) return source;
   const all = sourceIds().filter((candidate) => isPseudoRandom(findSource(candidate)));
-  return fail("source", `"${id}"`, `a pseudo-random source (${all.join(", ")})`);
-}
-
-function ownCongruential(name: string, written: NonNullable<Mapping["congruential"]>): Recurrence {
-  const modulus = within("congruential.modulus", written.modulus, 2n, LARGEST_MODULUS);
-  const multiplier = within("congruential.multiplier", written.multiplier, 1n, modulus - 1n);
-  const increment = within("congruential.increment", written.increment ?? 0, 0n, modulus - 1n);
-  const map = { multiplier, increment, modulus };
-  const about = {
-    id: name,
-    title: `${multiplier} x + ${increment} mod ${modulus}`,
-    citation:
-      "the user's own; method: D. H. Lehmer, Mathematical methods in large-scale computing units (1951)",
-    method: "congruential",
-    outputBits: bitsOf(modulus),
-    period: congruentialPeriod(map),
-    knownStructure: "tuples of successive outputs lie on a lattice",
-  };
-  return congruential(about, map);
-}
-
-function within(key: string, written: number | string, least: bigint, most: bigint): bigint {
-  const value = parseInteger(written, `source.${key}`);
-  if (value < least || value > most) {
-    const found =
-      typeof written === "number" || /^\d+$/.test(written) ? `${value}` : `"${written}" = ${value}`;
-    fail(key, found, `a whole number from ${least} to ${most}`);
-  }
-  return value;
+  return refuse("source", `"${id}"`, `a pseudo-random source (${all.join(", ")})`);
 }
 
 function parseTuples(written = "successive"): Tuples {
   if (written === "per-coordinate") return { kind: "per-coordinate" };
   const step = written === "successive" ? 1 : Number(written.slice("strided ".length));
   if (step >= 1 && step <= LARGEST_STRIDE) return { kind: "strided", step };
-  return fail("tuples", `"${written}"`, `"strided k" with k from 1 to ${LARGEST_STRIDE}`);
+  return refuse("tuples", `"${written}"`, `"strided k" with k from 1 to ${LARGEST_STRIDE}`);
 }
 
 function parseBits(written: string, available: number): Bits | null {
@@ -144,20 +147,17 @@ function parseBits(written: string, available: number): Bits | null {
   if (end !== "top" && end !== "low") return null;
   const count = Number(digits);
   if (count >= 1 && count <= available) return { end, count };
-  return fail("bits", `"${end} ${count}"`, `1 to ${available} bits (an output has ${available})`);
+  return refuse("bits", `"${end} ${count}"`, `1 to ${available} bits (an output has ${available})`);
 }
 
 /** One message for what zod found first. */
 function explain(issue: z.core.$ZodIssue | undefined, written: unknown): string {
   const path = (issue?.path ?? []).map(String);
-  const key = path.join(".");
+  const key = path.map((part) => (/^\d+$/.test(part) ? "*" : part)).join(".");
   const at = ["source", ...path].join(".");
-  const allowed = ALLOWED[key] ?? "another value";
   if (issue?.code === "unrecognized_keys") {
     const unknown = issue.keys[0] ?? "";
-    const known = Object.keys(
-      key === "congruential" ? ownSourceSchema.shape.congruential.unwrap().shape : ownSourceSchema.shape,
-    );
+    const known = Object.keys((INNER[key] ?? ownSourceSchema).shape);
     const guess = nearest(unknown, known);
     return `${at}: unknown key "${unknown}"${guess === null ? "" : `, did you mean "${guess}"?`}; allowed are ${known.join(", ")}`;
   }
@@ -165,5 +165,5 @@ function explain(issue: z.core.$ZodIssue | undefined, written: unknown): string 
     (value, part) => (value as Record<string, unknown> | undefined)?.[part],
     written,
   );
-  return `${at}: expected ${allowed}, found ${found === undefined ? "nothing" : JSON.stringify(found)}`;
+  return `${at}: expected ${ALLOWED[key] ?? "another value"}, found ${found === undefined ? "nothing" : JSON.stringify(found)}`;
 }

@@ -52,6 +52,7 @@ import { sfc64 } from "./sfc64.js";
 import { sobol } from "./sobol.js";
 import { splitMix64 } from "./splitmix64.js";
 import { lfsr113, taus88 } from "./tausworthe.js";
+import { mathRandom, system } from "./unrepeatable.js";
 import { wichmannHill } from "./wichmann-hill.js";
 import { xoroshiro128Plus, xoroshiro128PlusPlus, xoroshiro128StarStar } from "./xoroshiro128.js";
 import { xorshift128, xorshift32, xorshift64Star } from "./xorshift.js";
@@ -117,6 +118,8 @@ export type SourceId =
   | "threefry4x64"
   | "chacha8"
   | "chacha20"
+  | "system"
+  | "math-random"
   | "sobol"
   | "halton"
   | "lattice"
@@ -181,6 +184,8 @@ const sources: Readonly<Record<SourceId, Source>> = {
   threefry4x64,
   chacha8,
   chacha20,
+  system,
+  "math-random": mathRandom,
   sobol,
   halton,
   lattice,

@@ -152,3 +152,20 @@ describe("the user's own congruential generators print the same", () => {
     });
   }
 });
+
+describe("the user's own recursive generator prints the same as the library's", () => {
+  test("recursive: 107374182 x(n-1) + 104480 x(n-5) mod 2^31 - 1, from the first five outputs of gsl-mrg-seed1", () => {
+    const { first10, at } = settingOf("gsl-mrg-seed1");
+    const spec = {
+      name: "house",
+      recursive: { modulus: "2^31 - 1", multipliers: [107374182, 0, 0, 0, 104480] },
+    };
+    const integers = pseudoRandomSource(spec).openIntegers({
+      key: null,
+      state: first10.slice(0, 5).join(","),
+    });
+    for (const value of first10.slice(5)) expect(integers.next()).toBe(BigInt(value));
+    for (let index = 11; index < 10_000; index++) integers.next();
+    expect(integers.next()).toBe(BigInt(at["10000"] ?? ""));
+  });
+});

@@ -1,4 +1,5 @@
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
+import { instantiateKernels } from "../../src/kernels/instance.js";
 import { isPrime, powerMod } from "../../src/numeric/factor.js";
 import type { SourceSpec } from "../../src/problem/contract.js";
 import { parseSource } from "../../src/sources/choice.js";
@@ -7,7 +8,9 @@ import { findSource, listSources, sourceIds } from "../../src/sources/registry.j
 const house = { modulus: "2^31", multiplier: 65539, increment: 0 };
 
 function pseudoRandomIds(): string[] {
-  return listSources().flatMap(({ id, family }) => (family === "pseudo-random" ? [id] : []));
+  return listSources().flatMap(({ id, family, repeatable = true }) =>
+    family === "pseudo-random" && repeatable ? [id] : [],
+  );
 }
 
 function message(spec: unknown): string {
@@ -37,7 +40,7 @@ describe("listing", () => {
 
 describe("periods", () => {
   /** No exact period is known, or it depends on the seed. */
-  const unknown = ["sfc64", "knuth-subtractive", "kiss99", "kiss64"];
+  const unknown = ["system", "math-random", "sfc64", "knuth-subtractive", "kiss99", "kiss64"];
 
   test("every other pseudo-random source states its exact period", () => {
     const silent = listSources().filter(
@@ -138,16 +141,19 @@ describe("the user's own source", () => {
     ],
     [
       { name: "house", congruental: house },
-      'source: unknown key "congruental", did you mean "congruential"?; allowed are name, congruential, source, tuples, endpoint, bits, seeding',
+      'source: unknown key "congruental", did you mean "congruential"?; allowed are name, congruential, recursive, xorshift, source, tuples, endpoint, bits, seeding',
     ],
     [
       { name: "house", congruential: { ...house, modulo: 3 } },
       'source.congruential: unknown key "modulo", did you mean "modulus"?; allowed are modulus, multiplier, increment',
     ],
-    [{ name: "house" }, 'source.congruential: expected one of "congruential" and "source", found neither'],
+    [
+      { name: "house" },
+      'source: expected one of the keys "congruential", "recursive", "xorshift", "source", found none',
+    ],
     [
       { name: "house", congruential: house, source: "mt19937" },
-      'source.congruential: expected one of "congruential" and "source", found both',
+      'source: expected one of the keys "congruential", "recursive", "xorshift", "source", found "congruential" and "source"',
     ],
     [
       { name: "mt19937", congruential: house },
@@ -190,6 +196,34 @@ describe("the user's own source", () => {
       'source.endpoint: expected "middle" or "left", found "right"',
     ],
     [
+      { name: "house", recursive: { modulus: 101, multipliers: [] } },
+      "source.recursive.multipliers: expected a list of 1 to 64 whole numbers or formulas, a1 first, found []",
+    ],
+    [
+      { name: "house", recursive: { modulus: 101, multipliers: [1, null] } },
+      "source.recursive.multipliers.1: expected a whole number or a formula, found null",
+    ],
+    [
+      { name: "house", recursive: { modulus: 101, multipliers: [5, 0] } },
+      "source.recursive.multipliers.1: expected a last multiplier that is not 0, found 0",
+    ],
+    [
+      { name: "house", recursive: { modulus: 101, multipliers: [5, 101] } },
+      "source.recursive.multipliers.1: expected a whole number from -100 to 100, found 101",
+    ],
+    [
+      { name: "house", xorshift: { bits: 48, shifts: [13, -7, 17] } },
+      "source.xorshift.bits: expected 32 or 64, found 48",
+    ],
+    [
+      { name: "house", xorshift: { bits: 32, shifts: [13, -32, 5] } },
+      "source.xorshift.shifts.1: expected a shift from 1 to 31, or its negative for one to the right, found -32",
+    ],
+    [
+      { name: "house", xorshift: { bits: 32, shifts: [13, 5] } },
+      "source.xorshift.shifts: expected three whole numbers, positive to the left and negative to the right, found [13,5]",
+    ],
+    [
       { name: "house", source: "nothing" },
       `source.source: expected a pseudo-random source (${pseudoRandomIds().join(", ")}), found "nothing"`,
     ],
@@ -206,6 +240,30 @@ describe("the user's own source", () => {
       (source as { openIntegers(r: typeof request): { next(): bigint } }).openIntegers(request);
     const [a, b] = [open(whole), open(cut)];
     for (let k = 0; k < 20; k++) expect(b.next()).toBe(a.next() & 15n);
+  });
+});
+
+describe("sources that cannot be repeated", () => {
+  test.each(["system", "math-random"])("%s says so and refuses a state", (id) => {
+    const { source } = parseSource(id);
+    expect(source.repeatable).toBe(false);
+    const request = { dimension: 1, n: 8, randomisations: [], key: null, state: "1" };
+    expect(() => source.open(request, instantiateKernels())).toThrow(
+      new RangeError(`state: expected none, as source "${id}" takes no seed or state, found "1"`),
+    );
+  });
+
+  test("math-random gives what the engine gives, at 52 bits", () => {
+    const engine = vi
+      .spyOn(Math, "random")
+      .mockReturnValueOnce(0)
+      .mockReturnValueOnce(0.75 + 2 ** -52);
+    const kernels = instantiateKernels();
+    const row = kernels.arena.allocate(64);
+    const request = { dimension: 1, n: 2, randomisations: [], key: null };
+    parseSource("math-random").source.open(request, kernels).fill(row, 8, 2);
+    expect([...kernels.f64(row, 2)]).toEqual([2 ** -53, 0.75 + 2 ** -52 + 2 ** -53]);
+    engine.mockRestore();
   });
 });
 

@@ -13,6 +13,17 @@ const own: Readonly<Record<string, SourceSpec>> = {
   "2^63 - 25": congruential("2^63 - 25", 2307085864, 0),
   "2^64 - 59, with an increment": congruential("2^64 - 59", "13891176665706064842", "2^63 + 1"),
   "a tiny modulus": congruential(1021, 65, 0),
+  "recursive of order 5": recursive("2^31 - 1", [107374182, 0, 0, 0, 104480]),
+  "recursive of order 2, with an increment": {
+    name: "house",
+    recursive: { modulus: "2^64 - 59", multipliers: ["2^63 + 5", -7], increment: "2^62" },
+  },
+  "recursive of order 64": recursive(
+    "2^32 - 5",
+    Array.from({ length: 64 }, (_, k) => 7 * k + 1),
+  ),
+  "xorshift 32": { name: "house", xorshift: { bits: 32, shifts: [-9, 5, -14] } },
+  "xorshift 64": { name: "house", xorshift: { bits: 64, shifts: [13, -7, 17] } },
   "strided 3": { ...congruential("2^31", 65539, 0), tuples: "strided 3" },
   "strided 500": { name: "house", source: "philox4x32", tuples: "strided 500" },
   "per coordinate": { name: "house", source: "mt19937", tuples: "per-coordinate" },
@@ -32,6 +43,10 @@ const ownQuasiRandom: Readonly<Record<string, SourceSpec>> = {
 
 function congruential(modulus: string | number, multiplier: string | number, increment: string | number) {
   return { name: "house", congruential: { modulus, multiplier, increment } };
+}
+
+function recursive(modulus: string, multipliers: (string | number)[]) {
+  return { name: "house", recursive: { modulus, multipliers } };
 }
 
 for (const choice of allChoices()) describe(choice.id, () => check(choice));

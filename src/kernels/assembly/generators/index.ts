@@ -20,6 +20,7 @@ export { fillPcg32 } from "./pcg32";
 export { fillPcg64, fillPcg64Dxsm } from "./pcg64";
 export { fillPhilox4x32 } from "./philox4x32";
 export { fillSfc64, fillSplitMix64 } from "./small64";
+export { fillRecursive, fillXorshiftTriple32, fillXorshiftTriple64 } from "./recursive";
 export { fillLfsr113, fillTaus88 } from "./tausworthe";
 export { fillXoroshiro128Plus, fillXoroshiro128PlusPlus, fillXoroshiro128StarStar } from "./xoroshiro128";
 export { fillXorshift128, fillXorshift32, fillXorshift64Star } from "./xorshift";

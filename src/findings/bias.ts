@@ -7,13 +7,13 @@
  *
  * Why this split. Given stage 1, the confirmation data are independent of the choice of candidates, so stage 2 alone
  * holds the rate of studies with any falsely confirmed bias at falseAlarms, however wrong the p-values of stage 1 may
- * be (with 64 rare payments, 0.26 expected in each of 32 replicates, 98 % of null studies have a candidate at level 0.1).
+ * be (with 64 rare payments, 0.26 expected in each of 32 replicates, 99 % of null studies have a candidate at level 0.1).
  * The agreement of signs makes stage 2 one-sided at half its level. Where all p-values are exact the rate is at most
  * sqrt(falseAlarms) * falseAlarms / 2; so the claim is "at most", and there is room for p-values that are not. A stricter
  * stage 1 would only cost power: at 144 tests, level 0.01 in place of 0.1 makes the detectable bias 18 % larger.
  *
  * Stage 2 takes the larger of Student's p-value and that of Hall's transformation, which allows for the skewness of the
- * estimates [64 rare payments as above: 3.3 % of null studies confirmed a bias by Student's t alone, 0.3 % with both].
+ * estimates [64 rare payments as above: 3.3 % of null studies confirmed a bias by Student's t alone, 0.3 % or fewer with both].
  *
  * A source whose replicates all gave the same wrong value (an integrand in step with its lattice) has no deviation of its
  * own. What is tested then is that it behaves as a sound source does: the deviation of one on the same problem takes the

@@ -78,6 +78,11 @@ export function withUncertainty(one: DrawnCase, uncertainty: number): DrawnCase 
   return { ...one, problem: { ...one.problem, reference: { ...reference, uncertainty } } };
 }
 
+/** The same case under another sound source. */
+export function under(one: DrawnCase, source: string): DrawnCase {
+  return { ...one, source: makeSource(source) };
+}
+
 /** A different seed for every (case, study, purpose, replicate): FNV-1a (Fowler, Noll & Vo) of the parts. */
 export function seedOf(parts: readonly (string | number)[]): number {
   let hash = 0x811c9dc5;
@@ -87,6 +92,6 @@ export function seedOf(parts: readonly (string | number)[]): number {
 
 /** The pluggable maker for drawn cases. */
 export function draws(one: DrawnCase, study: number, purpose: string, replicates: number): number[] {
-  const start = seedOf([one.problem.id, study, purpose]);
+  const start = seedOf([one.problem.id, one.source.id, study, purpose]);
   return Array.from({ length: replicates }, (_, r) => one.draw(seedOf([start, r])));
 }

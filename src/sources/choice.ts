@@ -59,8 +59,8 @@ function parseId(text: string): SourceChoice {
 
 function unknownSource(text: string): string {
   const guess = nearest(text, sourceIds()) ?? nearest(text.split("+")[0] ?? "", sourceIds());
-  const proposal = guess === null ? "" : `; did you mean "${guess}"?`;
-  return `source: unknown source "${text.slice(0, 60)}"${proposal} (known: ${sourceIds().join(", ")})`;
+  const proposal = guess === null ? "" : ` did you mean "${guess}"?`;
+  return `source: unknown source "${text.slice(0, 60)}";${proposal} "tolerand sources" lists what there is`;
 }
 
 function choose(source: Source, randomisations: readonly Randomisation[], spec: SourceSpec): SourceChoice {

@@ -84,6 +84,23 @@ describe.each(
 });
 
 describe("sources with known structure fail where their structure shows", () => {
+  test("low bits of a power-of-two modulus repeat: every value of eight bits comes exactly as often as any other", () => {
+    for (const source of ["lcg-69069", "lcg-1103515245", "lcg-1664525", "lcg-6364136223846793005"]) {
+      const [low = new Float64Array()] = rowsOf(parseSource({ name: "low", source, bits: "low 8" }), 1);
+      expect(new Set(countCells([low], 256))).toEqual(new Set([POINTS / 256]));
+      const [high = new Float64Array()] = rowsOf(parseSource({ name: "high", source, bits: "top 8" }), 1);
+      expect(Math.abs(deviate(countCells([high], 256)))).toBeLessThan(LIMIT);
+    }
+  });
+
+  test("every 4096th output of a modulus 2^32, as in leapfrogged streams: pairs are far more even than chance", () => {
+    const source = "lcg-1664525";
+    const leapfrogged = rowsOf(parseSource({ name: "leapfrogged", source, tuples: "strided 4096" }), 2);
+    // the multiplier 1664525^4096 is 1 modulo 2^14: the top bits move nearly in equal steps
+    expect(deviate(countCells(leapfrogged, 16))).toBeLessThan(-10);
+    expect(Math.abs(deviate(countCells(rowsOf(parseSource(source), 2), 16)))).toBeLessThan(LIMIT);
+  });
+
   /** Deviate of triples in 32^3 cells: two points a cell are expected. */
   const triples = (id: string): number => deviate(countCells(rowsOf(parseSource(id)), 32));
 

@@ -26,9 +26,9 @@ const bounds: Record<Name, number> = {
   erfc: 3,
   gamma: 3.5,
   lgamma: 3.5,
-  normalPdf: 3,
+  normalPdf: 2.5,
   normalCdf: 3.5,
-  normalQuantile: 8,
+  normalQuantile: 9,
 };
 
 const word = new DataView(new ArrayBuffer(8));

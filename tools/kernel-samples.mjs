@@ -1,6 +1,7 @@
 // What tools/measure-kernels.mjs measures: for each kernel the promised bound in ulp, the interval used for timing, one
-// that takes the rare path (where an interval does), and the samples, each a share of the arguments. A sample is a function of a random source `r` that gives one argument, or
-// a pair for the kernels of two.
+// that takes the rare path (where an interval does), and the samples, each a share of the arguments. A sample is a
+// function of a random source `r` that gives one argument, or a pair for the kernels of two. Here the elementary
+// functions; the others are in special-samples.mjs.
 
 /** A seeded source of 64-bit words (the mixing function of G. L. Steele, D. Lea and C. H. Flood, OOPSLA 2014). */
 export function randomSource(seed) {
@@ -34,10 +35,10 @@ export function randomSource(seed) {
   };
 }
 
-const middle = (a, b) => [`${a} to ${b}`, (r) => r.uniform(a, b)];
-const anything = ["all bit patterns", (r) => r.anything()];
-const small = ["±2^-60 to 1", (r) => r.scale(-60, 0)];
-const tiny = ["subnormal", (r) => r.subnormal()];
+export const middle = (a, b) => [`${a} to ${b}`, (r) => r.uniform(a, b)];
+export const anything = ["all bit patterns", (r) => r.anything()];
+export const small = ["±2^-60 to 1", (r) => r.scale(-60, 0)];
+export const tiny = ["subnormal", (r) => r.subnormal()];
 const nearOne = ["1 ± 2^-52 to 1/4", (r) => r.nearOne()];
 const angles = [
   middle(-10, 10),
@@ -54,7 +55,7 @@ const arc = [
   small,
 ];
 
-export const GROUPS = [
+export const ELEMENTARY_GROUPS = [
   {
     title: "Exponentials, logarithms, powers",
     functions: [

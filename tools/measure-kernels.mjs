@@ -1,4 +1,4 @@
-// Measures the elementary kernels: errors against mpmath (python3 with mpmath 1.3, by measure-kernels.py) and times per
+// Measures the mathematical kernels: errors against mpmath (python3 with mpmath 1.3, by measure-kernels.py) and times per
 // value relative to exp. Without arguments it measures everything and writes docs/kernels.md; with names of kernels it
 // prints their rows only. --samples N sets the number of arguments per kernel (100000).
 //
@@ -9,7 +9,10 @@ import { readFileSync, writeFileSync } from "node:fs";
 import { parseArgs } from "node:util";
 import { format } from "prettier";
 import { mapModule } from "./map-kernels.mjs";
-import { GROUPS, randomSource } from "./kernel-samples.mjs";
+import { ELEMENTARY_GROUPS, randomSource } from "./kernel-samples.mjs";
+import { SPECIAL_GROUPS } from "./special-samples.mjs";
+
+const GROUPS = [...ELEMENTARY_GROUPS, ...SPECIAL_GROUPS];
 
 const { values: options, positionals } = parseArgs({
   options: { samples: { type: "string", default: "100000" } },
@@ -103,25 +106,26 @@ for (const group of groups) {
     rows.push(await rowOf(kernel));
     process.stderr.write(`${rows[rows.length - 1]}\n`);
   }
-  sections.push(`## ${group.title}\n\n${[...HEAD, ...rows].join("\n")}\n`);
+  const note = group.note === undefined ? "" : `${group.note}\n\n`;
+  sections.push(`## ${group.title}\n\n${note}${[...HEAD, ...rows].join("\n")}\n`);
 }
 
 if (positionals.length === 0) {
-  const text = `# Errors and times of the elementary kernels
+  const text = `# Errors and times of the mathematical kernels
 
 Every function of the formula language is a kernel of our own on two lanes of doubles (\`src/kernels/assembly/math/\`), so that a
 result has the same bits on every machine. This page is written by
 
     node tools/build.mjs && node tools/measure-kernels.mjs
 
-with ${total.toLocaleString("en-GB")} arguments per function, in equal parts from the samples named in the last column (\`tools/kernel-samples.mjs\`; fixed
-seeds), against mpmath 1.3.0 at 160 bits. An error is |result − value| in units in the last place of the value (2^-1074 where the
+with ${total.toLocaleString("en-GB")} arguments per function, in equal parts from the samples named in the last column (\`tools/kernel-samples.mjs\`,
+\`tools/special-samples.mjs\`; fixed seeds), against mpmath 1.3.0 at 160 bits. An error is |result − value| in units in the last place of the value (2^-1074 where the
 value is subnormal); an error of 0.5 is a correctly rounded result. NaN, infinities and the sign of zero are checked
 by \`test/kernels/\`. "Bound" is what we promise and test; "largest error" is what was seen, not a proof.
 
 Times are the fastest of 25 rounds over 1,024 values in cache, four vectors in flight, kernels taking turns in one process; they
 are given relative to \`exp\`, which took ${common.get("exp").toFixed(2)} ns a value in this run (Node ${process.versions.node}). The arguments come from
-the interval named in \`tools/kernel-samples.mjs\` and avoid the rare paths (subnormals, infinities, NaN, results near the
+the interval named with the samples and avoid the rare paths (subnormals, infinities, NaN, results near the
 end of the range, |x| > 8192 in \`sin\`, \`cos\`, \`tan\`), which are calls out of the compiled formula; what they cost
 is in a column of its own, with the interval of its arguments.
 

@@ -4,10 +4,9 @@
  * full resolution of a coordinate.
  *
  * Starting states: the authors' `init_by_array64` (2004) of four key words. The published form is the seed of
- * `init_genrand64`, "5489".
+ * `init_genrand64`, "5489", or the key of `init_by_array64`, "74565,144470,214375,284280".
  */
 import { pseudoRandom, type State } from "./pseudo-random.js";
-import { equalWords, parseWords } from "./published-state.js";
 
 const N = 312;
 const LAG = 156;
@@ -47,6 +46,20 @@ function fromArray(key: BigUint64Array): bigint[] {
   return words;
 }
 
+/** One number is the seed of `init_genrand64`, several are the key of `init_by_array64`. */
+function seeded(text: string): bigint[] {
+  const numbers = /^\d+(\s*,\s*\d+){0,311}$/.test(text.trim())
+    ? text.split(",").map((word) => BigInt(word))
+    : [];
+  const [seed] = numbers;
+  if (seed !== undefined && numbers.every((number) => number < SIZE)) {
+    return numbers.length === 1 ? fromSeed(seed) : fromArray(BigUint64Array.from(numbers));
+  }
+  throw new RangeError(
+    `state: expected a seed below 2^64, or 2 to 312 of them as a key, for source "mt19937-64", found "${text}"`,
+  );
+}
+
 /** The kernel's layout: the words, then the index of the next (312: a new block is due). */
 function pack(words: readonly bigint[]): State {
   return [...words, BigInt(N)];
@@ -65,10 +78,7 @@ export const mt19937x64 = pseudoRandom({
   },
   output: { modulus: SIZE, bytes: 8, zeroless: false, integers: 1 },
   stateFromKey: (key) => pack(fromArray(key.words64(KEY_WORDS))),
-  stateFromText: (text) => {
-    const form = { id: "mt19937-64", words: equalWords(1, SIZE), allowed: "a seed below 2^64" };
-    return pack(fromSeed(parseWords(text, form)[0] ?? 0n));
-  },
+  stateFromText: (text) => pack(seeded(text)),
   kernel: (exports) => exports.fillMt19937x64,
   *integers(state) {
     const words = state.slice(0, N);

@@ -6,7 +6,8 @@
  * (ranks of large binary matrices), resolution below 2^-32, recovery from states with few set bits.
  *
  * Starting states: not uniform over the 2^19937 - 1 states but the authors' `init_by_array` (2002) of eight key words,
- * as the state is far larger than any key. The published form of a state is the seed of `init_genrand` (2002), "5489".
+ * as the state is far larger than any key. The published form of a state is the seed of `init_genrand` (2002), "5489",
+ * or the key of `init_by_array`, "291,564,837,1110".
  */
 import { pseudoRandom, type State } from "./pseudo-random.js";
 
@@ -47,6 +48,18 @@ function fromArray(key: Uint32Array): Uint32Array {
   return words;
 }
 
+/** One number is the seed of `init_genrand`, several are the key of `init_by_array`. */
+function seeded(text: string): Uint32Array {
+  const numbers = /^\d+(\s*,\s*\d+){0,623}$/.test(text.trim()) ? text.split(",").map(Number) : [];
+  const [seed] = numbers;
+  if (seed !== undefined && numbers.every((number) => number < 2 ** 32)) {
+    return numbers.length === 1 ? fromSeed(seed) : fromArray(Uint32Array.from(numbers));
+  }
+  throw new RangeError(
+    `state: expected a seed from 0 to 4294967295, or 2 to 624 of them as a key, for source "mt19937", found "${text}"`,
+  );
+}
+
 /** The kernel's layout: the words two by two, then the index of the next (624: a new block is due). */
 function pack(words: Uint32Array): State {
   return [...new BigUint64Array(words.buffer, words.byteOffset, N / 2), BigInt(N)];
@@ -65,10 +78,7 @@ export const mt19937 = pseudoRandom({
   },
   output: { modulus: 1n << 32n, bytes: 4, zeroless: false, integers: 1 },
   stateFromKey: (key) => pack(fromArray(key.words32(KEY_WORDS))),
-  stateFromText: (text) => {
-    if (/^\d+$/.test(text) && BigInt(text) < 1n << 32n) return pack(fromSeed(Number(text)));
-    throw new RangeError(`state: expected a seed from 0 to 4294967295 for source "mt19937", found "${text}"`);
-  },
+  stateFromText: (text) => pack(seeded(text)),
   kernel: (exports) => exports.fillMt19937,
   *integers(state) {
     const words = new Uint32Array(new BigUint64Array(state.slice(0, N / 2)).buffer);

@@ -99,6 +99,19 @@ describe("sources print their published outputs", () => {
 });
 
 describe("values that were printed with the generators", () => {
+  test("mt19937: init_by_array of 0x123, 0x234, 0x345, 0x456 (mt19937ar.out of its authors, from memory; NumPy 2.4.6 agrees)", () => {
+    const integers = pseudoRandomSource("mt19937").openIntegers({ key: null, state: "291,564,837,1110" });
+    for (const value of [1067595299n, 955945823n, 477289528n, 4107218783n, 4228976476n]) {
+      expect(integers.next()).toBe(value);
+    }
+  });
+
+  test("mt19937-64: init_by_array64 of 0x12345, 0x23456, 0x34567, 0x45678 (mt19937-64.out of its authors, from memory)", () => {
+    const state = "74565,144470,214375,284280";
+    const integers = pseudoRandomSource("mt19937-64").openIntegers({ key: null, state });
+    for (const value of [7266447313870364031n, 4946485549665804864n]) expect(integers.next()).toBe(value);
+  });
+
   test("knuth-array: the check of Knuth's ran_array, 995235265, by 2010 blocks from seed 310952 (from memory)", () => {
     const integers = pseudoRandomSource("knuth-array").openIntegers({ key: null, state: "310952" });
     for (let k = 0; k < 2009 * 100; k++) integers.next();

@@ -271,7 +271,17 @@ describe("published states", () => {
   test.each([
     ["randu", "0", 'state: expected a whole number from 1 to 2147483647 for source "randu", found "0"'],
     ["minstd-16807", "2147483647", "from 1 to 2147483646"],
-    ["mt19937", "-1", 'state: expected a seed from 0 to 4294967295 for source "mt19937", found "-1"'],
+    [
+      "mt19937",
+      "-1",
+      'state: expected a seed from 0 to 4294967295, or 2 to 624 of them as a key, for source "mt19937", found "-1"',
+    ],
+    ["mt19937", "1,4294967296", "2 to 624 of them as a key"],
+    [
+      "mt19937-64",
+      "",
+      'state: expected a seed below 2^64, or 2 to 312 of them as a key, for source "mt19937-64"',
+    ],
     ["xoshiro256++", "0,0,0,0", "four words below 2^64, not all 0"],
     ["xoshiro256++", "1,2,3", "four words below 2^64, not all 0"],
     ["pcg64", "state=1,inc=2", "inc odd"],

@@ -39,7 +39,7 @@ export interface Assembly extends Measured {
 /** Stage 1 alone: the tests whose biases are to be confirmed on fresh keys, at the test's n with R = 256. */
 export function candidatesOf(measured: Measured): BiasTest[] {
   const context = makeContext(measured.problems, measured.sources, measured.consensus);
-  const series = seriesOf(toCells(measured.rawCells, context));
+  const series = seriesOf(toCells(measured.rawCells, context, false));
   return findCandidates(series, context, measured.spec.falseAlarms).filter((test) => test.candidate);
 }
 

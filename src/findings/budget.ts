@@ -125,7 +125,7 @@ function declaredLines(problem: Problem): BudgetLine[] {
   });
 }
 
-export function isExtrapolated(spread: Spread | null, n: number): boolean {
+function isExtrapolated(spread: Spread | null, n: number): boolean {
   return spread !== null && (n > EXTRAPOLATION * spread.largest || n * EXTRAPOLATION < spread.smallest);
 }
 

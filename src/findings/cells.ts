@@ -1,6 +1,6 @@
 /** Raw cells to cells: the statistics of one problem x source x estimator x output x n. */
-import { kurtosis, rootMeanSquare, deviation } from "../numeric/moments.js";
-import { jackknife } from "../numeric/resampling.js";
+import { deviation, kurtosis, rootMeanSquare, variance } from "../numeric/moments.js";
+import { bootstrapInterval, jackknife } from "../numeric/resampling.js";
 import { mean } from "../numeric/sums.js";
 import { normalUpperQuantile } from "../numeric/normal.js";
 import type { Problem } from "../problem/contract.js";
@@ -8,6 +8,7 @@ import { digestOf } from "../record/json.js";
 import type { Cell, RawCell, RecordSource } from "../record/types.js";
 import { logRmse } from "./leave-one-out.js";
 import type { KnownReference } from "./reference.js";
+import { seriesKey } from "./series.js";
 
 /** What the statistics of cells need beside the cells; built once per record (findings/context.ts). */
 export interface Context {
@@ -28,12 +29,18 @@ export function isRounding({ replicateDeviation, mean: centre }: Cell): boolean 
 }
 
 /** Below this many intervals their coverage is not assessed. */
-export const FEWEST_INTERVALS = 200;
+const FEWEST_INTERVALS = 200;
 
-/** The statistics of every raw cell, in the order given. */
-export function toCells(rawCells: readonly RawCell[], context: Context): Cell[] {
-  const crudeDeviations = soundDeviations(rawCells, context);
-  return rawCells.map((raw) => toCell(raw, context, crudeDeviations.get(outputKey(raw)) ?? null));
+/** The statistics of every raw cell, in the order given; `bootstrap` false leaves out the one costly interval. */
+export function toCells(rawCells: readonly RawCell[], context: Context, bootstrap = true): Cell[] {
+  const crude = soundVariances(rawCells, context);
+  const largest = new Map<string, number>();
+  for (const raw of rawCells) largest.set(seriesKey(raw), Math.max(raw.n, largest.get(seriesKey(raw)) ?? 0));
+  return rawCells.map((raw) => {
+    const cell = toCell(raw, context);
+    const variances = crude.get(outputKey(raw)) ?? null;
+    return { ...cell, ...againstCrude(cell, variances, bootstrap && raw.n === largest.get(seriesKey(raw))) };
+  });
 }
 
 function outputKey(raw: RawCell): string {
@@ -47,28 +54,52 @@ function pooledDeviation(raw: RawCell): number | null {
 }
 
 /**
- * sigma by problem and output, from a sound source: without known structure, pseudo-random before randomised
- * quasi-random, then the most points. Only crude estimates: sigma is that of f itself.
+ * The variances of f within the replicates of a sound source, by problem and output: a source without known structure,
+ * pseudo-random before randomised quasi-random, then the one with the most points. Only crude estimates: sigma is that of
+ * f itself.
  */
-function soundDeviations(rawCells: readonly RawCell[], context: Context): ReadonlyMap<string, number> {
-  const best = new Map<string, { rank: number; value: number }>();
+function soundVariances(
+  rawCells: readonly RawCell[],
+  context: Context,
+): ReadonlyMap<string, readonly number[]> {
+  const best = new Map<string, { rank: number; values: readonly number[] }>();
   for (const raw of rawCells) {
     const source = context.sources.get(raw.source);
     if (source === undefined || source.deterministic || source.knownStructure !== null) continue;
-    const value = raw.estimator === "crude" && raw.nonFinite === null ? pooledDeviation(raw) : null;
-    if (value === null) continue;
+    const values = raw.withinVariances.filter((value) => value !== null);
+    const usable = raw.estimator === "crude" && raw.nonFinite === null && mean(values) > 0;
     const rank = (source.family === "pseudo-random" ? 1e18 : 0) + raw.n * raw.estimates.length;
     const key = outputKey(raw);
-    if (rank > (best.get(key)?.rank ?? -1)) best.set(key, { rank, value });
+    if (usable && rank > (best.get(key)?.rank ?? -1)) best.set(key, { rank, values });
   }
-  return new Map([...best].map(([key, { value }]) => [key, value]));
+  return new Map([...best].map(([key, { values }]) => [key, values]));
+}
+
+/** Numbers drawn for one bootstrap: enough for steady 2.5 % ends, few enough for thousands of replicates. */
+const BOOTSTRAP_DRAWS = 2 ** 17;
+
+/** s^2 n / sigma^2 and its interval, in which the errors of both variances count. */
+function againstCrude(cell: Cell, variances: readonly number[] | null, bootstrap: boolean): Partial<Cell> {
+  if (cell.replicateDeviation === null || variances === null) return {};
+  const ratio = (estimates: readonly number[], within: readonly number[]) =>
+    (variance(estimates) * cell.n) / mean(within);
+  const varianceAgainstCrude = finite(ratio(cell.estimates, variances));
+  if (!bootstrap || varianceAgainstCrude === null || isRounding(cell)) return { varianceAgainstCrude };
+  const rounds = Math.min(2000, Math.max(200, Math.floor(BOOTSTRAP_DRAWS / cell.replicates)));
+  const varianceAgainstCrudeInterval = bootstrapInterval(
+    [cell.estimates, variances],
+    ([estimates = [], within = []]) => ratio(estimates, within),
+    cell.digest,
+    rounds,
+  );
+  return { varianceAgainstCrude, varianceAgainstCrudeInterval };
 }
 
 function finite(value: number): number | null {
   return Number.isFinite(value) ? value : null;
 }
 
-function toCell(raw: RawCell, context: Context, crudeDeviation: number | null): Cell {
+function toCell(raw: RawCell, context: Context): Cell {
   const reference = context.references.get(raw.problem) ?? null;
   const replicates = raw.estimates.length;
   const sound = raw.nonFinite === null && raw.estimates.every(Number.isFinite);
@@ -93,10 +124,8 @@ function toCell(raw: RawCell, context: Context, crudeDeviation: number | null): 
     rmseInterval: logInterval === null ? null : [Math.exp(logInterval[0]), Math.exp(logInterval[1])],
     replicateDeviation: spread,
     integrandDeviation: sound ? pooledDeviation(raw) : null,
-    varianceAgainstCrude:
-      spread === null || crudeDeviation === null || crudeDeviation === 0
-        ? null
-        : finite((spread / crudeDeviation) ** 2 * raw.n),
+    varianceAgainstCrude: null,
+    varianceAgainstCrudeInterval: null,
     coverage: sound && random ? coverageOf(raw, reference, context) : null,
     heavyTailed:
       spread !== null && spread > ROUNDING * Math.abs(centre ?? 0) && kurtosis(raw.estimates) > HEAVY_TAIL,

@@ -17,7 +17,7 @@ export interface Contribution {
 }
 
 /** Below this p-value of homogeneity the members contradict each other, and there is no reference. */
-export const HOMOGENEITY_LEVEL = 0.01;
+const HOMOGENEITY_LEVEL = 0.01;
 
 /** Needs two or more members with at least 4 finite estimates each; otherwise there is no value and `agreed` is false. */
 export function consensusOf(problem: string, contributions: readonly Contribution[]): Consensus {

@@ -13,7 +13,7 @@ function check(hits: number, trials: number): void {
 }
 
 /** P(K = hits). */
-export function binomialProbability(hits: number, trials: number, p: number): number {
+function binomialProbability(hits: number, trials: number, p: number): number {
   check(hits, trials);
   if (hits === 0) return Math.exp(trials * Math.log1p(-p));
   if (hits === trials) return Math.exp(trials * Math.log(p));

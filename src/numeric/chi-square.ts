@@ -8,11 +8,6 @@ export function chiSquareUpper(x: number, degrees: number): number {
   return incompleteGamma(degrees / 2, Math.max(0, x) / 2).upper;
 }
 
-/** P(X <= x). */
-export function chiSquareCdf(x: number, degrees: number): number {
-  return incompleteGamma(degrees / 2, Math.max(0, x) / 2).lower;
-}
-
 /** The x with P(X <= x) = p, for p in (0, 1). */
 export function chiSquareQuantile(p: number, degrees: number): number {
   if (!(p > 0) || !(p < 1)) throw new RangeError(`chi-square quantile: expected p in (0, 1), found ${p}`);

@@ -1,11 +1,8 @@
 /**
- * The logarithm of the gamma function by Stirling's series (Abramowitz & Stegun 1964, 6.1.41; DLMF 5.11.1), and the two
- * pieces that let a probability with large parameters be written without cancellation: Stirling's error and the deviance
- * part (Loader, "Fast and accurate computation of binomial probabilities", 2000). Absolute error below 4e-15 times
- * max(1, |result|).
+ * The two pieces that let the density of a gamma, beta or binomial law with large parameters be written without
+ * cancellation: Stirling's error, by Stirling's series (Abramowitz & Stegun 1964, 6.1.41; DLMF 5.11.1), and the deviance
+ * part (Loader, "Fast and accurate computation of binomial probabilities", 2000). Absolute error below 4e-15.
  */
-
-const HALF_LOG_TWO_PI = 0.9189385332046727;
 
 // B_2k / (2k (2k - 1)), Abramowitz & Stegun 6.1.41 with the Bernoulli numbers of their table 23.2.
 const STIRLING = [1 / 12, -1 / 360, 1 / 1260, -1 / 1680, 1 / 1188, -691 / 360360, 1 / 156];
@@ -25,12 +22,6 @@ export function stirlingError(x: number): number {
   let series = 0;
   for (let k = STIRLING.length - 1; k >= 0; k--) series = series * square + (STIRLING[k] ?? 0);
   return climbed + series / at;
-}
-
-/** ln Gamma(x) for x > 0. */
-export function logGamma(x: number): number {
-  if (!(x > 0)) throw new RangeError(`logGamma: expected x above 0, found ${x}`);
-  return (x - 0.5) * Math.log(x) - x + HALF_LOG_TWO_PI + stirlingError(x);
 }
 
 /** x ln(x/m) + m - x for x, m > 0: half the deviance, exact near x = m where the plain form cancels (Loader 2000). */

@@ -9,7 +9,7 @@
 const ROOT_TWO_PI = 2.5066282746310002;
 
 /** Density; the square is split (Cody 1969) so that far tails keep their digits. */
-export function normalDensity(z: number): number {
+function normalDensity(z: number): number {
   const head = Math.trunc(z * 16) / 16;
   return (Math.exp(-0.5 * head * head) * Math.exp(-0.5 * (z - head) * (z + head))) / ROOT_TWO_PI;
 }

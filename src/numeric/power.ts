@@ -8,7 +8,7 @@
 import { normalUpperQuantile } from "./normal.js";
 import { studentUpperQuantile } from "./student.js";
 
-export const DETECTION_POWER = 0.8;
+const DETECTION_POWER = 0.8;
 
 /** `degrees` Infinity means a known standard error (normal quantiles). */
 export function detectableShift(

@@ -47,20 +47,20 @@ export function keyedIndices(key: string): (count: number) => number {
   };
 }
 
-/** Percentile interval of a statistic of the values over `rounds` bootstrap samples drawn under `key`. */
+/**
+ * Percentile interval of a statistic of one or more independent samples over `rounds` bootstrap rounds drawn under `key`;
+ * in each round every sample is drawn again from itself.
+ */
 export function bootstrapInterval(
-  values: readonly number[],
-  statistic: (sample: readonly number[]) => number,
+  samples: readonly (readonly number[])[],
+  statistic: (drawn: readonly (readonly number[])[]) => number,
   key: string,
+  rounds: number,
   confidence = 0.95,
-  rounds = 2000,
 ): [number, number] {
-  if (values.length < 2)
-    throw new RangeError(`bootstrap: expected two or more values, found ${values.length}`);
   const draw = keyedIndices(key);
-  const results = Array.from({ length: rounds }, () =>
-    statistic(values.map(() => values[draw(values.length)] ?? NaN)),
-  ).sort((a, b) => a - b);
+  const again = (sample: readonly number[]) => sample.map(() => sample[draw(sample.length)] ?? NaN);
+  const results = Array.from({ length: rounds }, () => statistic(samples.map(again))).sort((a, b) => a - b);
   return [quantileOf(results, (1 - confidence) / 2), quantileOf(results, (1 + confidence) / 2)];
 }
 

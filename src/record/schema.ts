@@ -102,6 +102,7 @@ const cell = z.strictObject({
   replicateDeviation: number,
   integrandDeviation: number,
   varianceAgainstCrude: number,
+  varianceAgainstCrudeInterval: interval,
   coverage: number,
   heavyTailed: z.boolean(),
   digest: text,

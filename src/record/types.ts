@@ -96,6 +96,8 @@ export interface Cell extends RawCell {
   readonly integrandDeviation: number | null;
   /** s^2 n / sigma^2, 1 for independent points; sigma from a sound source. */
   readonly varianceAgainstCrude: number | null;
+  /** 95 % interval of it by bootstrap, at the largest n of a series; null elsewhere. */
+  readonly varianceAgainstCrudeInterval: readonly [number, number] | null;
   /** Share of claimed intervals that held the reference; null where not assessed. */
   readonly coverage: number | null;
   /** Sample kurtosis of the errors above 6: the RMSE is a lower bound only. */

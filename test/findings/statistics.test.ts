@@ -48,6 +48,26 @@ describe("cells", () => {
     expect(cells[0]?.integrandDeviation).toBe(3);
   });
 
+  it("bound the spread against crude Monte Carlo by bootstrap, at the largest n only", () => {
+    // 128 normal replicates of sigma = 1, each variance within known: 95 % of s^2 n lie within about 1 +/- 2 sqrt(2/127).
+    const normal = normals(21);
+    const cells = [256, 512].map((n) =>
+      makeCell({
+        n,
+        estimates: Array.from({ length: 128 }, () => 1 + normal() / Math.sqrt(n)),
+        withinVariances: new Array<number>(128).fill(1),
+      }),
+    );
+    const [small, large] = toCells(cells, context);
+    expect(small?.varianceAgainstCrudeInterval).toBeNull();
+    const [low, high] = large?.varianceAgainstCrudeInterval ?? expect.fail();
+    expect(low).toBeLessThan(1);
+    expect(high).toBeGreaterThan(1);
+    expect((high - low) / 4).toBeGreaterThan(0.7 * Math.sqrt(2 / 127));
+    expect((high - low) / 4).toBeLessThan(1.3 * Math.sqrt(2 / 127));
+    expect(toCells(cells, context)[1]?.varianceAgainstCrudeInterval).toEqual([low, high]);
+  });
+
   it("count the claimed intervals that held the reference, from 200 replicates on", () => {
     const normal = normals(7);
     const estimates = Array.from({ length: 2000 }, () => 1 + normal() / 32);

@@ -173,6 +173,7 @@ export function sampleRecord(size: SampleSize = SMALL): StudyRecord {
           replicateDeviation: bar ? s : null,
           integrandDeviation: 1,
           varianceAgainstCrude: bar ? s * s * n : null,
+          varianceAgainstCrudeInterval: null,
           coverage: null,
           heavyTailed: source.id === "mt19937" && at === 2,
           digest: "0".repeat(64),

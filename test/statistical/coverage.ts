@@ -1,14 +1,16 @@
 /** Simulated error curves with a known RMSE, deviation and order, for the coverage of the intervals that findings state. */
 import { assembleRecord } from "../../src/findings/assemble.js";
+import { toCells } from "../../src/findings/cells.js";
+import { makeContext } from "../../src/findings/context.js";
 import { spreadOf } from "../../src/findings/spread.js";
 import { seriesOf } from "../../src/findings/series.js";
 import { makeAssembly, makeCell, makeProblem, makeSource, normals, uniforms } from "../findings/make.js";
 import { seedOf } from "./integrands.js";
 
-export const SIZES = [256, 512, 1024, 2048, 4096, 8192, 16384];
+const SIZES = [256, 512, 1024, 2048, 4096, 8192, 16384];
 
 /** Draws of mean 0 and variance 1 in the shape of the errors. */
-export const SHAPES = {
+const SHAPES = {
   normal: (seed: number) => normals(seed),
   /** Exponential, less its mean: skewness 2, kurtosis 9. */
   skewed: (seed: number) => {
@@ -26,7 +28,7 @@ export const SHAPES = {
 } as const;
 
 /** Errors of R replicates at all sizes. Nested: running means of one stream, so that sizes are correlated; order 1/2. */
-export function nestedErrors(shape: keyof typeof SHAPES, seed: number, replicates: number): number[][] {
+function nestedErrors(shape: keyof typeof SHAPES, seed: number, replicates: number): number[][] {
   const draw = SHAPES[shape](seed);
   const sums = new Array<number>(replicates).fill(0);
   let before = 0;
@@ -38,7 +40,7 @@ export function nestedErrors(shape: keyof typeof SHAPES, seed: number, replicate
 }
 
 /** Independent errors at each size, falling as n^-1.5, as a scrambled net's on a smooth integrand. */
-export function steepErrors(shape: keyof typeof SHAPES, seed: number, replicates: number): number[][] {
+function steepErrors(shape: keyof typeof SHAPES, seed: number, replicates: number): number[][] {
   const draw = SHAPES[shape](seed);
   return SIZES.map((n) => Array.from({ length: replicates }, () => n ** -1.5 * draw()));
 }
@@ -114,4 +116,19 @@ export function verdictsAt(multiple: number, replicates: number, trials: number)
     counts[verdict] = (counts[verdict] ?? 0) + 1;
   }
   return counts;
+}
+
+/** How often the bootstrap interval of s^2 n / sigma^2 held 1, normal estimates of independent points. */
+export function spreadCoverage(replicates: number, trials: number): number {
+  const context = makeContext([makeProblem("p")], [makeSource("philox4x32")], []);
+  let held = 0;
+  for (let trial = 0; trial < trials; trial++) {
+    const normal = normals(seedOf(["spread", replicates, trial]));
+    const estimates = Array.from({ length: replicates }, () => 1 + normal() / 16);
+    const withinVariances = estimates.map(() => 1 + normal() / 12);
+    const [cell] = toCells([makeCell({ n: 256, estimates, withinVariances })], context);
+    const interval = cell?.varianceAgainstCrudeInterval ?? [1, 0];
+    if (interval[0] <= 1 && 1 <= interval[1]) held++;
+  }
+  return held / trials;
 }

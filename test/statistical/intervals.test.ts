@@ -5,7 +5,7 @@
  */
 import { describe, expect, it } from "vitest";
 import { clopperPearson } from "../../src/numeric/binomial.js";
-import { coverageOf, verdictsAt, type Coverage } from "./coverage.js";
+import { coverageOf, spreadCoverage, verdictsAt, type Coverage } from "./coverage.js";
 
 const TRIALS = Number(process.env["TOLERAND_TRIALS"] ?? 400);
 
@@ -35,6 +35,18 @@ describe("95 % intervals hold the truth", () => {
     expectShare(found.rmse, normal ? 0.92 : shape === "heavy" ? 0.88 : 0.73, 0.97);
     expectShare(found.deviation, normal ? 0.92 : 0.82, 0.97);
     expectShare(found.reach, normal ? 0.87 : 0.78, 0.97);
+  });
+});
+
+describe("the bootstrap interval of the spread against crude Monte Carlo", () => {
+  it.each([
+    [16, 0.8],
+    [32, 0.86],
+    [128, 0.91],
+  ])("%d replicates", (replicates, least) => {
+    const share = spreadCoverage(replicates, TRIALS);
+    report(`spread ${replicates}`, { share });
+    expectShare(share, least, 0.97);
   });
 });
 

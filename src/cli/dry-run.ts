@@ -39,10 +39,11 @@ export function dryRun(
     groups.set(key, [...(groups.get(key) ?? []), task]);
   }
   const rows = [...groups.values()].map((tasks): Row => {
-    const [first] = tasks as [Task, ...Task[]];
+    // The last task has the largest size, where most of the points are.
+    const last = tasks.at(-1) as Task;
     const points = tasks.reduce((total, task) => total + pointsOf(task), 0);
-    const seconds = points * secondsPerPoint(runner, first);
-    return { problem: first.problem, source: first.sourceId, tasks: tasks.length, points, seconds };
+    const seconds = points * secondsPerPoint(runner, last);
+    return { problem: last.problem, source: last.sourceId, tasks: tasks.length, points, seconds };
   });
   const total = rows.reduce((sum, row) => sum + row.seconds, 0) / threads;
   if (json) return `${canonicalJson({ rows, threads, seconds: total }, 2)}\n`;

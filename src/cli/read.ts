@@ -9,7 +9,7 @@ import { messages } from "./messages.js";
 export function textFlag(args: Arguments, name: string): string | null {
   const value = args[name];
   const last: unknown = Array.isArray(value) ? value.at(-1) : value;
-  return last === undefined || last === null ? null : String(last);
+  return typeof last === "string" || typeof last === "number" ? String(last) : null;
 }
 
 /** All texts of a repeatable flag. */

@@ -157,8 +157,8 @@ async function loadOne(
     return { name: loaded.problem.id, problems: [loaded] };
   }
   const guess = nearest(given, suites);
-  const hint = guess === null ? "" : `; did you mean "${guess}"?`;
-  throw fileError(given, `no such file, folder or shipped suite${hint} Shipped suites: ${suites.join(", ")}`);
+  const hint = guess === null ? "" : `, did you mean "${guess}"?`;
+  throw fileError(given, `no such file, folder or shipped suite${hint}; shipped suites: ${suites.join(", ")}`);
 }
 
 /**

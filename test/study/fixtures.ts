@@ -34,7 +34,7 @@ export function specOf(problems: readonly Problem[], settings: StudySettings): S
   ).spec;
 }
 
-const ENVIRONMENT: Environment = {
+export const ENVIRONMENT: Environment = {
   program: "0",
   node: "0",
   platform: "none",

@@ -3,7 +3,7 @@
  * each problem x source is run on a few thousand points in this thread.
  */
 import { performance } from "node:perf_hooks";
-import { canonicalJson } from "../record/json.js";
+import { jsonText } from "../record/json.js";
 import type { StudySpec } from "../record/types.js";
 import type { RunnableProblem } from "../study/runnable.js";
 import { timeText } from "../study/progress.js";
@@ -46,7 +46,7 @@ export function dryRun(
     return { problem: last.problem, source: last.sourceId, tasks: tasks.length, points, seconds };
   });
   const total = rows.reduce((sum, row) => sum + row.seconds, 0) / threads;
-  if (json) return `${canonicalJson({ rows, threads, seconds: total }, 2)}\n`;
+  if (json) return `${jsonText({ rows, threads, seconds: total }, 2)}\n`;
   const table = textTable(
     [
       { title: "problem", align: "left" },

@@ -158,7 +158,10 @@ async function loadOne(
   }
   const guess = nearest(given, suites);
   const hint = guess === null ? "" : `, did you mean "${guess}"?`;
-  throw fileError(given, `no such file, folder or shipped suite${hint}; shipped suites: ${suites.join(", ")}`);
+  throw fileError(
+    given,
+    `no such file, folder or shipped suite${hint}; shipped suites: ${suites.join(", ")}`,
+  );
 }
 
 /**

@@ -1,21 +1,29 @@
-/** Canonical JSON: keys in sorted order, non-finite numbers as strings, so that equal data has equal bytes. */
+/**
+ * JSON as the program writes and hashes it: non-finite numbers as the strings "NaN", "Infinity" and "-Infinity" (a plain
+ * JSON.stringify makes them null, which means absent), bigints as decimal strings.
+ */
 import { createHash } from "node:crypto";
 
-function plain(value: unknown): unknown {
+function plain(value: unknown, sorted: boolean): unknown {
   if (typeof value === "number" && !Number.isFinite(value)) return String(value);
   if (typeof value === "bigint") return value.toString();
-  if (Array.isArray(value)) return value.map(plain);
+  if (Array.isArray(value)) return value.map((part) => plain(part, sorted));
   if (value !== null && typeof value === "object") {
     const entries = Object.entries(value).filter(([, v]) => v !== undefined);
-    entries.sort(([a], [b]) => (a < b ? -1 : a > b ? 1 : 0));
-    return Object.fromEntries(entries.map(([k, v]) => [k, plain(v)]));
+    if (sorted) entries.sort(([a], [b]) => (a < b ? -1 : a > b ? 1 : 0));
+    return Object.fromEntries(entries.map(([k, v]) => [k, plain(v, sorted)]));
   }
   return value;
 }
 
-/** The canonical text of `value`; `indent` spaces for reading, none for hashing. */
-export function canonicalJson(value: unknown, indent = 0): string {
-  return JSON.stringify(plain(value), null, indent);
+/** The text that is hashed: keys sorted, no spaces. */
+export function canonicalJson(value: unknown): string {
+  return JSON.stringify(plain(value, true));
+}
+
+/** The text that is written: keys in the order they were given, `indent` spaces for reading. */
+export function jsonText(value: unknown, indent = 0): string {
+  return JSON.stringify(plain(value, false), null, indent);
 }
 
 /** SHA-256 (FIPS 180-4) of the canonical text, in hexadecimal. */

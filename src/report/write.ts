@@ -4,7 +4,7 @@
  */
 import { mkdir, readdir, rename, rm, writeFile } from "node:fs/promises";
 import { dirname, join } from "node:path";
-import { canonicalJson } from "../record/json.js";
+import { jsonText } from "../record/json.js";
 import type { StudyRecord } from "../record/types.js";
 import { chartsOf, everyChart } from "./charts/index.js";
 import { page, reportTitle } from "./page/page.js";
@@ -55,9 +55,9 @@ export async function reportTexts(
   const set = chartsOf(view);
   const charts = everyChart(set);
   const texts = new Map<string, string>();
-  texts.set("record.json", `${canonicalJson(record)}\n`);
+  texts.set("record.json", `${jsonText(record)}\n`);
   texts.set("summary.md", summary(view, reportTitle(view)));
-  for (const chart of charts) texts.set(`charts/${chart.name}.vl.json`, `${canonicalJson(chart.spec, 1)}\n`);
+  for (const chart of charts) texts.set(`charts/${chart.name}.vl.json`, `${jsonText(chart.spec, 1)}\n`);
   if (options.images === true) {
     for (const chart of charts) texts.set(`images/${chart.name}.svg`, await drawForFile(chart));
   }

@@ -5,7 +5,7 @@
  */
 import { appendFileSync, existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import { dirname } from "node:path";
-import { canonicalJson, numberFrom } from "../record/json.js";
+import { jsonText, numberFrom } from "../record/json.js";
 import type { ReplicateResult, TaskResult } from "./tasks.js";
 
 export const JOURNAL_FILE = "journal.jsonl";
@@ -37,12 +37,12 @@ export function openJournal(path: string, spec: string, resume: boolean): Journa
     }
   }
   // Rewritten whole, so that a cut last line does not stay in the middle.
-  const lines = [{ spec }, ...done.values()].map((entry) => canonicalJson(entry));
+  const lines = [{ spec }, ...done.values()].map((entry) => jsonText(entry));
   writeFileSync(path, `${lines.join("\n")}\n`);
   return {
     done,
     add: (result) => {
-      appendFileSync(path, `${canonicalJson(result)}\n`);
+      appendFileSync(path, `${jsonText(result)}\n`);
     },
     remove: () => {
       rmSync(path, { force: true });

@@ -3,7 +3,7 @@ import { readFileSync } from "node:fs";
 import { createRequire } from "node:module";
 import { Ajv } from "ajv";
 import { describe, expect, it } from "vitest";
-import { canonicalJson } from "../../src/record/json.js";
+import { jsonText } from "../../src/record/json.js";
 import type { StudyRecord } from "../../src/record/types.js";
 import { type Chart, type Datum, spread } from "../../src/report/charts/chart.js";
 import { chartsOf, everyChart } from "../../src/report/charts/index.js";
@@ -70,8 +70,8 @@ describe.each(all.map((chart) => [chart.name, chart] as const))("%s", (_, chart)
 describe("charts", () => {
   it("are the same bytes when made again from a copy", () => {
     const copy = structuredClone(sample);
-    expect(charts(copy).map((chart) => canonicalJson(chart.spec))).toEqual(
-      all.map((chart) => canonicalJson(chart.spec)),
+    expect(charts(copy).map((chart) => jsonText(chart.spec))).toEqual(
+      all.map((chart) => jsonText(chart.spec)),
     );
   });
 
@@ -130,7 +130,7 @@ describe("error against n", () => {
   });
 
   it("names the tolerance and warns of heavy tails", () => {
-    expect(canonicalJson(named("error-against-n-ridge").spec)).toContain("tolerance 0.01");
+    expect(jsonText(named("error-against-n-ridge").spec)).toContain("tolerance 0.01");
     expect(named("error-against-n-floor").notDrawn.join(" ")).toContain("Heavy-tailed errors");
   });
 
@@ -171,7 +171,7 @@ describe("cost to tolerance", () => {
     const chart = named("cost-to-tolerance");
     expect(chart.title).toContain("never within it: randu on 2");
     expect(chart.table.rows.some((row) => row[0] === "Gaussian ridge" && row[1] === "randu")).toBe(false);
-    expect(canonicalJson(chart.spec)).toContain("never: randu and house");
+    expect(jsonText(chart.spec)).toContain("never: randu and house");
   });
 });
 

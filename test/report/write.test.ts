@@ -3,7 +3,7 @@ import { mkdtemp, readFile, readdir, rm, writeFile, mkdir } from "node:fs/promis
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterEach, beforeEach, describe, expect, it } from "vitest";
-import { canonicalJson } from "../../src/record/json.js";
+import { jsonText } from "../../src/record/json.js";
 import type { StudyRecord } from "../../src/record/types.js";
 import { writeReport } from "../../src/report/index.js";
 import { slugs } from "../../src/report/view.js";
@@ -35,7 +35,7 @@ describe("writeReport", () => {
     expect(files.charts.length).toBe(7);
     expect(files.images.length).toBe(7);
     for (const file of files.images) expect(await readFile(file, "utf8")).toMatch(/^<\?xml[^>]*>\n<svg /);
-    expect(await readFile(files.record, "utf8")).toBe(`${canonicalJson(sampleRecord(two))}\n`);
+    expect(await readFile(files.record, "utf8")).toBe(`${jsonText(sampleRecord(two))}\n`);
   });
 
   it("leaves out the page when told so", async () => {

@@ -23,7 +23,11 @@ const normal = (length: number) => [{ name: "z", distribution: "normal" as const
 
 const PROBLEMS = [
   problem("smooth", "mean(x .^ 2)", { reference: exact(1 / 3) }),
-  problem("skewed", "exp(1.5 * z[1])", { dimension: 1, inputs: normal(1), reference: exact(Math.exp(1.125)) }),
+  problem("skewed", "exp(1.5 * z[1])", {
+    dimension: 1,
+    inputs: normal(1),
+    reference: exact(Math.exp(1.125)),
+  }),
   problem("rare", "x[1] * x[2] < 0.005", { dimension: 2, reference: exact(0.005 * (1 - Math.log(0.005))) }),
   problem("payment", "max(x[1] - 0.99, 0) * x[2]", { dimension: 2, reference: exact(0.5e-4 / 2) }),
 ];
@@ -65,7 +69,8 @@ describe("whole studies", () => {
       if (tests.some((test) => test.candidate)) candidates++;
       if (tests.some((test) => test.confirmed)) confirmed++;
     }
-    if (process.env["TOLERAND_STUDIES"] !== undefined) console.log({ studies: STUDIES, candidates, confirmed });
+    if (process.env["TOLERAND_STUDIES"] !== undefined)
+      console.log({ studies: STUDIES, candidates, confirmed });
     expect(clopperPearson(confirmed, STUDIES, SURE)[0]).toBeLessThanOrEqual(FALSE_ALARMS);
     // The screen must be at work: at its level of 10 % for the family, candidates are common.
     expect(candidates / STUDIES).toBeGreaterThan(0.02);

@@ -5,8 +5,9 @@ import type { Problem } from "../../problem/contract.js";
 import { loadPaths, type LoadedProblem } from "../../problem/load.js";
 import { scopeOf } from "../../problem/compile.js";
 import type { ResolvedSettings } from "../../problem/settings.js";
-import { canonicalJson } from "../../record/json.js";
+import { jsonText } from "../../record/json.js";
 import { buildSpec, settingsOf } from "../../study/settings.js";
+import { parseSource } from "../../sources/choice.js";
 import { prepareProblems } from "../../study/runnable.js";
 import { evaluateAt } from "../../study/evaluate-at.js";
 import { EXIT, type Arguments, type Io } from "../command.js";
@@ -28,12 +29,12 @@ interface Checked {
 
 export async function run(args: Arguments, io: Io): Promise<number> {
   const flags = settingsFromFlags(args, io);
-  const { problems } = await loadPaths(textFlags(args, "paths"));
+  const { problems } = await loadPaths(textFlags(args, "paths"), parseSource);
   asInput(() => buildSpec(problems, flags));
   const at = textFlag(args, "at");
   const checked: Checked[] = [];
   for (const loaded of problems) checked.push(await check(loaded, settingsOf(loaded, flags), at));
-  if (booleanFlag(args, "json")) io.stdout.write(`${canonicalJson(checked, 2)}\n`);
+  if (booleanFlag(args, "json")) io.stdout.write(`${jsonText(checked, 2)}\n`);
   else io.stdout.write(checked.map((one) => words(one, booleanFlag(args, "resolved"))).join("\n"));
   return EXIT.done;
 }

@@ -1,6 +1,6 @@
 /** `tolerand functions`: the formula language, from its table. */
 import { FUNCTIONS } from "../../formula/language.js";
-import { canonicalJson } from "../../record/json.js";
+import { jsonText } from "../../record/json.js";
 import { textTable } from "../../report/text-table.js";
 import { EXIT, type Arguments, type Io } from "../command.js";
 import { booleanFlag } from "../read.js";
@@ -25,7 +25,7 @@ export function run(args: Arguments, io: Io): Promise<number> {
     }),
   );
   if (booleanFlag(args, "json")) {
-    io.stdout.write(`${canonicalJson(rows, 2)}\n`);
+    io.stdout.write(`${jsonText(rows, 2)}\n`);
     return Promise.resolve(EXIT.done);
   }
   for (const group of new Set(rows.map((row) => row.group))) {

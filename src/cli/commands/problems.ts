@@ -1,7 +1,7 @@
 /** `tolerand problems`: the shipped suites; `--copy SUITE` puts one into the working folder. */
 import { join } from "node:path";
 import { copySuite, listProblems } from "../../problem/catalogue.js";
-import { canonicalJson } from "../../record/json.js";
+import { jsonText } from "../../record/json.js";
 import { textTable } from "../../report/text-table.js";
 import { EXIT, type Arguments, type Io } from "../command.js";
 import { booleanFlag, textFlag } from "../read.js";
@@ -16,7 +16,7 @@ export async function run(args: Arguments, io: Io): Promise<number> {
   }
   const suites = await listProblems();
   if (booleanFlag(args, "json")) {
-    io.stdout.write(`${canonicalJson(suites, 2)}\n`);
+    io.stdout.write(`${jsonText(suites, 2)}\n`);
     return EXIT.done;
   }
   for (const { name, title, problems } of suites) {

@@ -1,5 +1,5 @@
 /** `tolerand sources`: the shelf, by family. */
-import { canonicalJson } from "../../record/json.js";
+import { jsonText } from "../../record/json.js";
 import type { SourceDescription } from "../../sources/contract.js";
 import { listSources } from "../../sources/registry.js";
 import { periodText } from "../../sources/period-text.js";
@@ -40,7 +40,7 @@ function described(source: SourceDescription) {
 export function run(args: Arguments, io: Io): Promise<number> {
   const sources = listSources().map(described);
   if (booleanFlag(args, "json")) {
-    io.stdout.write(`${canonicalJson(sources, 2)}\n`);
+    io.stdout.write(`${jsonText(sources, 2)}\n`);
     return Promise.resolve(EXIT.done);
   }
   for (const family of new Set(sources.map((source) => source.family))) {

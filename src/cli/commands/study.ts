@@ -5,9 +5,10 @@ import { join, resolve } from "node:path";
 import { exitCodeOf } from "../../findings/headline.js";
 import { loadPaths } from "../../problem/load.js";
 import { runStudy } from "../../recipe.js";
-import { canonicalJson, digestOf } from "../../record/json.js";
+import { jsonText, digestOf } from "../../record/json.js";
 import type { StudyRecord } from "../../record/types.js";
 import { threads } from "../../study/executor.js";
+import { parseSource } from "../../sources/choice.js";
 import { JOURNAL_FILE, journalOwner, openJournal } from "../../study/journal.js";
 import { prepareProblems } from "../../study/runnable.js";
 import { startProgress } from "../../study/progress.js";
@@ -25,7 +26,7 @@ const MOST_THREADS = 256;
 export async function run(args: Arguments, io: Io): Promise<number> {
   const flags = settingsFromFlags(args, io);
   const count = threadCount(args);
-  const loaded = await loadPaths(textFlags(args, "paths"));
+  const loaded = await loadPaths(textFlags(args, "paths"), parseSource);
   const { spec, warnings } = asInput(() => buildSpec(loaded.problems, flags));
   const problems = await prepareProblems(spec.problems);
   if (booleanFlag(args, "dry-run")) {
@@ -67,7 +68,7 @@ export async function run(args: Arguments, io: Io): Promise<number> {
     return EXIT.interrupted;
   }
   journal.remove();
-  if (booleanFlag(args, "json")) io.stdout.write(`${canonicalJson(record)}\n`);
+  if (booleanFlag(args, "json")) io.stdout.write(`${jsonText(record)}\n`);
   else
     io.stdout.write(
       verdictTables(record, { colour: io.stdout.isTTY === true && (io.env["NO_COLOR"] ?? "") === "" }),

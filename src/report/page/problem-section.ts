@@ -1,7 +1,7 @@
 /** The section of one problem: it stands alone, and prints on one page for an ordinary number of sources. */
 import type { Input } from "../../problem/contract.js";
 import type { Chart } from "../charts/chart.js";
-import { canonicalJson } from "../../record/json.js";
+import { jsonText } from "../../record/json.js";
 import { formatCount, formatPValue, formatValue } from "../../findings/format.js";
 import { plainNumber } from "../numbers.js";
 import type { Subject } from "../view.js";
@@ -18,7 +18,7 @@ function inputWords(input: Input): string {
 const LONGEST_CONSTANT = 120;
 
 function constantWords(name: string, value: unknown): string {
-  const text = typeof value === "number" ? plainNumber(value, 17) : canonicalJson(value);
+  const text = typeof value === "number" ? plainNumber(value, 17) : jsonText(value);
   return `${name} = ${text.length > LONGEST_CONSTANT ? `${text.slice(0, LONGEST_CONSTANT)}… (cut)` : text}`;
 }
 

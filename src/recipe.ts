@@ -3,7 +3,7 @@
  * handed; reading problems and writing reports are its neighbours' work.
  */
 import { assembleRecord, candidatesOf } from "./findings/assemble.js";
-import type { Confirmation } from "./findings/bias.js";
+import { CONFIRMATION_REPLICATES, type Confirmation } from "./findings/bias.js";
 import { consensusOf } from "./findings/consensus.js";
 import type { Consensus, Environment, RawCell, StudyRecord, StudySpec } from "./record/types.js";
 import { collectCells, type CellInfo } from "./study/collect.js";
@@ -47,7 +47,7 @@ export async function runStudy(run: StudyRun): Promise<StudyRecord> {
   const measured = { spec, problems: spec.problems, sources: recordSources(spec), rawCells, consensus };
 
   const candidates = run.signal.aborted ? [] : candidatesOf(measured);
-  const fresh = confirmationTasks(spec, candidates);
+  const fresh = confirmationTasks(spec, candidates, CONFIRMATION_REPLICATES);
   if (fresh.length > 0) await runStage(run, "confirmation", fresh, results);
   const confirmations: Confirmation[] = run.signal.aborted ? [] : cellsOf(run, fresh, results);
 

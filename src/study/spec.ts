@@ -7,9 +7,6 @@ import { planTasks, type Task } from "./tasks.js";
 /** Most points per replicate at which what is in use is run itself; above, the fitted curve speaks for it. */
 export const LARGEST_IN_USE = 2 ** 22;
 
-/** Replicates of the second stage of a bias test (method of the study: fresh keys, 256 of them). */
-export const CONFIRMATION_REPLICATES = 256;
-
 /** The sources that a missing reference is formed from: three families, each sound and randomised. */
 export function referenceSources(dimension: number): readonly string[] {
   const candidates = ["sobol+owen", "lattice+shift", "philox4x32", "pcg64"];
@@ -93,15 +90,18 @@ export interface ConfirmationRequest {
   readonly n: number;
 }
 
-/** The second stage: fresh keys for the candidates. */
-export function confirmationTasks(spec: StudySpec, candidates: readonly ConfirmationRequest[]): Task[] {
+/** The second stage: fresh keys for the candidates, `replicates` of them. */
+export function confirmationTasks(
+  spec: StudySpec,
+  candidates: readonly ConfirmationRequest[],
+  replicates: number,
+): Task[] {
   const wanted = (row: Row) =>
     candidates.filter((c) => c.problem === row.problem.id && c.source === row.choice.id);
   return rows(spec).flatMap((row) => {
     const sizes = [...new Set(wanted(row).map((c) => c.n))].sort((a, b) => a - b);
     const estimators = [...new Set(wanted(row).map((c) => c.estimator))];
     if (sizes.length === 0) return [];
-    const replicates = CONFIRMATION_REPLICATES;
     return planTasks({ ...request(spec, row), estimators, purpose: "confirmation", replicates, sizes });
   });
 }

@@ -41,15 +41,20 @@ export async function interpretFormula(
   };
 }
 
-/** Operators and conditionals that need the language's meaning become calls. */
+/** Operators and conditionals that need the language's meaning become calls; mathjs leaves replaced nodes' children alone. */
 function rewrite(math: MathJsInstance): (node: MathNode) => MathNode {
-  const call = (name: string, args: MathNode[]): MathNode => new math.FunctionNode(name, args);
-  return (node) => {
+  const call = (name: string, args: MathNode[]): MathNode =>
+    new math.FunctionNode(
+      name,
+      args.map((arg) => arg.transform(visit)),
+    );
+  const visit = (node: MathNode): MathNode => {
     if (isConditional(node)) return call(CHOOSE, [node.condition, node.trueExpr, node.falseExpr]);
     if (isOperator(node) && (node.fn as string) === "mod") return call("mod", node.args);
     if (isOperator(node) && ["pow", "dotPow"].includes(node.fn)) return call("pow", node.args);
     return node;
   };
+  return visit;
 }
 
 function isConditional(node: MathNode): node is ConditionalNode {

@@ -40,7 +40,9 @@ class LoopWriter {
 
   write(): void {
     const frame = this.#frame;
-    const scans = this.#nodes.filter((node): node is ScanNode & VectorNode => node.kind === "scan");
+    const scans = this.#nodes.filter(
+      (node): node is ScanNode & VectorNode => node.kind === "scan" && !this.#isRead(node),
+    );
     for (const scan of scans) this.#bound.set(scan.id, this.#accumulator(scan.op));
     // A sum beside the running sums of the same vector is their last one.
     const shared = new Set<Sink>();

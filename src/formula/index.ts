@@ -4,3 +4,4 @@ export type { FormulaDescription } from "./compile.js";
 export { FUNCTIONS, LIMITS, NAMED_NUMBERS, OPERATORS, RESERVED_WORDS } from "./language.js";
 export type { FunctionEntry, FunctionName } from "./language.js";
 export { interpretFormula } from "./interpret.js";
+export { languageTables } from "./reference-text.js";

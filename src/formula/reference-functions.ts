@@ -17,7 +17,7 @@ export function numberFunctions(math: MathJsInstance): Readonly<Record<string, N
     floor: Math.floor,
     ceil: Math.ceil,
     fix: Math.trunc,
-    round: (a = NaN) => Math.trunc(a) + (Math.abs(a - Math.trunc(a)) >= 0.5 ? Math.sign(a) : 0),
+    round: (a = NaN) => (Math.abs(a - Math.trunc(a)) >= 0.5 ? Math.trunc(a) + Math.sign(a) : Math.trunc(a)),
     mod: (a = NaN, b = NaN) => (b === 0 ? a : a - b * Math.floor(a / b)),
     min: Math.min,
     max: Math.max,

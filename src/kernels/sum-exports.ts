@@ -7,4 +7,17 @@ export interface SumExports {
   leafMoments(values: number, stride: number, channels: number, count: number, out: number): number;
   /** Number of points with a non-finite value in any channel. */
   countNonFinite(values: number, stride: number, channels: number, count: number): number;
+  /** Bytes of a summation tree; see assembly/sums/tree.ts for its layout. */
+  treeBytes(channels: number): number;
+  /** Empties the tree. */
+  treeReset(tree: number): void;
+  /** Adds the next node to the right, its row of moments at `row`. */
+  treePush(tree: number, channels: number, level: number, index: number, row: number): void;
+  /** Adds `leaves` leaves from leaf `first` on, their rows one after the other at `rows`. */
+  treePushLeaves(tree: number, channels: number, first: number, rows: number, leaves: number): void;
+  /**
+   * Row of everything pushed and of a cut leaf at `cut` behind it (where cutPoints > 0), written to `out`, which may be
+   * `cut`. Returns the number of points.
+   */
+  treeTotal(tree: number, channels: number, cut: number, cutPoints: number, out: number): number;
 }

@@ -40,6 +40,8 @@ export class Integrator {
   readonly #x: number;
   readonly #values: number;
   readonly #rows: number;
+  readonly #cutRow: number;
+  readonly #tree: MomentsTree;
   readonly #pool: number;
   readonly #scratch: number;
   readonly #transformScratch: number;
@@ -55,6 +57,8 @@ export class Integrator {
     this.#x = arena.allocate(blockPoints * dimension * 8);
     this.#values = arena.allocate(blockPoints * channels * 8);
     this.#rows = arena.allocate((blockPoints / LEAF_POINTS) * this.#width * 8);
+    this.#cutRow = arena.allocate(this.#width * 8);
+    this.#tree = new MomentsTree(this.kernels, channels);
     this.#pool = arena.allocate(pool.byteLength);
     this.#scratch = arena.allocate(scratchBytes);
     this.#transformScratch = arena.allocate(this.kernels.exports.normalBlockScratch());
@@ -69,30 +73,26 @@ export class Integrator {
   run(stream: PointStream, sizes: readonly number[], first = 0): IntegrationResult {
     const { blockPoints } = this.#problem.formula;
     const last = sizes.at(-1) ?? 0;
-    const tree = new MomentsTree();
     const results: SizeResult[] = [];
     let nonFinite = 0;
     let offending: OffendingPoint | null = null;
     let next = 0;
+    this.#tree.reset();
     for (let begin = first; begin < last; begin += blockPoints) {
       const count = Math.min(blockPoints, last - begin);
       const bad = this.#evaluateBlock(stream, count);
       if (bad >= 0) offending ??= this.#describe(begin, bad);
-      let leaf = 0;
-      const pushLeavesBelow = (end: number): void => {
-        for (; (leaf + 1) * LEAF_POINTS <= end; leaf++) tree.push(this.#leaf(begin, leaf));
-      };
+      let pushed = 0;
       for (; next < sizes.length && (sizes[next] as number) <= begin + count; next++) {
         const n = sizes[next] as number;
-        pushLeavesBelow(n - begin);
-        const moments = tree.total(this.#cutLeaf(leaf, n - begin));
-        if (moments === null) throw new Error("a size of no points was asked for");
+        pushed = this.#pushLeaves(begin, pushed, n - begin);
+        const moments = this.#total(pushed, n - begin);
         results.push({ n, moments, nonFinite: nonFinite + this.#countNonFinite(bad, n - begin) });
       }
-      pushLeavesBelow(count);
+      this.#pushLeaves(begin, pushed, count);
       nonFinite += this.#countNonFinite(bad, count);
     }
-    return { sizes: results, offending, nodes: tree.nodes() };
+    return { sizes: results, offending, nodes: this.#tree.nodes() };
   }
 
   /** Fills, transforms, evaluates and sums one block; gives the first point with a non-finite value, or -1. */
@@ -113,36 +113,27 @@ export class Integrator {
     return exports.leafMoments(this.#values, blockPoints, channels, count, this.#rows);
   }
 
-  #leaf(begin: number, leaf: number): TreeNode {
-    const index = begin / LEAF_POINTS + leaf;
-    return { level: 0, index, moments: this.#momentsAt(this.#rows + leaf * this.#width * 8, LEAF_POINTS) };
-  }
-
-  /** Moments of the points of leaf `leaf` below `end` (both within the block), or null where the leaf is empty. */
-  #cutLeaf(leaf: number, end: number): Moments | null {
-    const count = end - leaf * LEAF_POINTS;
-    if (count === 0) return null;
-    const { blockPoints, channels } = this.#problem.formula;
-    const row = this.#rows + leaf * this.#width * 8;
-    const kept = this.kernels.f64(row, this.#width).slice();
-    this.kernels.exports.leafMoments(
-      this.#values + leaf * LEAF_POINTS * 8,
-      blockPoints,
-      channels,
-      count,
-      row,
+  /** Pushes the whole leaves of the block from leaf `pushed` on that end at point `end` or before; gives the next leaf. */
+  #pushLeaves(begin: number, pushed: number, end: number): number {
+    const whole = Math.floor(end / LEAF_POINTS);
+    this.#tree.pushLeaves(
+      begin / LEAF_POINTS + pushed,
+      this.#rows + pushed * this.#width * 8,
+      whole - pushed,
     );
-    const moments = this.#momentsAt(row, count);
-    this.kernels.f64(row, this.#width).set(kept);
-    return moments;
+    return whole;
   }
 
-  #momentsAt(row: number, n: number): Moments {
-    return {
-      n,
-      channels: this.#problem.formula.channels,
-      values: this.kernels.f64(row, this.#width).slice(),
-    };
+  /** Moments of all points before `end` of the block, whose leaf `leaf` is cut there. */
+  #total(leaf: number, end: number): Moments {
+    const { blockPoints, channels } = this.#problem.formula;
+    const cutPoints = end - leaf * LEAF_POINTS;
+    const values = this.#values + leaf * LEAF_POINTS * 8;
+    if (cutPoints > 0)
+      this.kernels.exports.leafMoments(values, blockPoints, channels, cutPoints, this.#cutRow);
+    const moments = this.#tree.total(this.#cutRow, cutPoints);
+    if (moments === null) throw new Error("a size of no points was asked for");
+    return moments;
   }
 
   #countNonFinite(bad: number, count: number): number {

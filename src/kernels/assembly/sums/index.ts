@@ -1,2 +1,3 @@
 // Exports of the sums group of kernels.
 export { countNonFinite, leafMoments } from "./leaves";
+export { treeBytes, treePush, treePushLeaves, treeReset, treeTotal } from "./tree";

@@ -23,6 +23,35 @@ static void fill_xoshiro(int d, int n) {
     for (int j = 0; j < d; j++) x[j][i] = ((double)(next64() >> 12) + 0.5) * 0x1p-52;
 }
 
+static uint32_t mt[624];
+static int used = 624;
+static void mt_seed(uint32_t seed) {
+  mt[0] = seed;
+  for (uint32_t i = 1; i < 624; i++) mt[i] = 1812433253u * (mt[i - 1] ^ mt[i - 1] >> 30) + i;
+}
+static inline uint32_t mix(uint32_t high, uint32_t low) {
+  uint32_t y = (high & 0x80000000u) | (low & 0x7fffffffu);
+  return y >> 1 ^ (-(low & 1u) & 0x9908b0dfu);
+}
+static void mt_twist(void) {
+  for (int i = 0; i < 227; i++) mt[i] = mt[i + 397] ^ mix(mt[i], mt[i + 1]);
+  for (int i = 227; i < 623; i++) mt[i] = mt[i - 227] ^ mix(mt[i], mt[i + 1]);
+  mt[623] = mt[396] ^ mix(mt[623], mt[0]);
+  used = 0;
+}
+static inline uint32_t next32(void) {
+  if (used == 624) mt_twist();
+  uint32_t y = mt[used++];
+  y ^= y >> 11;
+  y ^= y << 7 & 0x9d2c5680u;
+  y ^= y << 15 & 0xefc60000u;
+  return y ^ y >> 18;
+}
+static void fill_mt(int d, int n) {
+  for (int i = 0; i < n; i++)
+    for (int j = 0; j < d; j++) x[j][i] = ((double)next32() + 0.5) * 0x1p-32;
+}
+
 static uint64_t direction[MAXD][52], state[MAXD], count;
 static void fill_sobol(int d, int n) {
   for (int j = 0; j < d; j++) {
@@ -95,7 +124,8 @@ static void wave(int n) {
 int main(int argc, char **argv) {
   if (argc < 5) return 2;
   const char *name = argv[1];
-  int sobol = !strcmp(argv[2], "sobol");
+  void (*fill)(int, int) = !strcmp(argv[2], "sobol") ? fill_sobol : !strcmp(argv[2], "mt19937") ? fill_mt : fill_xoshiro;
+  mt_seed(5489);
   long n = atol(argv[3]);
   int d = !strcmp(name, "peak") ? 8 : !strcmp(name, "product") ? 16 : !strcmp(name, "path") ? 64 : 10;
   void (*evaluate)(int) = !strcmp(name, "peak") ? peak : !strcmp(name, "product") ? product : !strcmp(name, "path") ? path : wave;
@@ -107,7 +137,7 @@ int main(int argc, char **argv) {
   double total = 0;
   for (long begin = 0; begin < n; begin += BLOCK) {
     int size = n - begin < BLOCK ? (int)(n - begin) : BLOCK;
-    if (sobol) fill_sobol(d, size); else fill_xoshiro(d, size);
+    fill(d, size);
     evaluate(size);
     double sum = 0;
     for (int i = 0; i < size; i++) sum += f[i];

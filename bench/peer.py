@@ -1,6 +1,6 @@
 """The four benchmark integrands in NumPy/SciPy, in blocks of 16,384 points so that arrays stay in cache.
 
-Generators: NumPy's PCG64 and SciPy's unscrambled Sobol'. Reads lines "WORKLOAD pcg64|sobol POINTS" on standard input,
+Generators: NumPy's PCG64 and MT19937, SciPy's unscrambled Sobol'. Reads lines "WORKLOAD SOURCE POINTS" on standard input,
 answers each with "ESTIMATE SECONDS"; "fill D POINTS" times SciPy's Sobol' alone. Imports are not timed.
 """
 import sys
@@ -40,13 +40,13 @@ WORKLOADS = {"peak": (peak, 8), "product": (product, 16), "path": (path, 64), "w
 
 def estimate(name, source, points):
     f, d = WORKLOADS[name]
-    rng = np.random.Generator(np.random.PCG64(1))
+    rng = np.random.Generator(np.random.MT19937(1) if source == "mt19937" else np.random.PCG64(1))
     sobol = qmc.Sobol(d, scramble=False, bits=52)
     total = 0.0
     start = time.perf_counter()
     for begin in range(0, points, BLOCK):
         n = min(BLOCK, points - begin)
-        x = rng.random((n, d)) if source == "pcg64" else sobol.random(n) + 2.0**-53
+        x = sobol.random(n) + 2.0**-53 if source == "sobol" else rng.random((n, d))
         total += f(x).sum()
     return total / points, time.perf_counter() - start
 

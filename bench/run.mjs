@@ -7,7 +7,7 @@ import { cpus, tmpdir } from "node:os";
 import { join } from "node:path";
 import { createInterface } from "node:readline";
 import { fileURLToPath } from "node:url";
-import { directionIntegers } from "../dist/sources/sobol.js";
+import { sobol } from "../dist/sources/sobol.js";
 import { engineRates } from "./engine.mjs";
 import { sobolFill } from "./fill.mjs";
 import { memoryTable, studyTable, threadTable } from "./study.mjs";
@@ -25,6 +25,13 @@ const WORKLOADS = {
   wave: { title: "oscillatory, d = 10", dimension: 10, points: 1 << 21 },
 };
 
+/** Our source and C's, and the one that NumPy or SciPy has. */
+const SOURCES = [
+  ["xoshiro256++", "pcg64"],
+  ["mt19937", "mt19937"],
+  ["sobol", "sobol"],
+];
+
 function buildPeers() {
   const source = join(root, "bench", "peer.c");
   const fast = join(folder, "peer-fast");
@@ -32,7 +39,9 @@ function buildPeers() {
   execFileSync("gcc", ["-O3", "-march=native", "-ffast-math", "-o", fast, source, "-lm"]);
   execFileSync("gcc", ["-O3", "-march=native", "-o", strict, source, "-lm"]);
   const directions = new BigUint64Array(64 * 52);
-  for (let j = 0; j < 64; j++) directions.set(directionIntegers(j), j * 52);
+  for (const [j, matrix] of sobol.generatingMatrices(64, 2 ** 52).matrices.entries()) {
+    for (let k = 0; k < 52; k++) directions[j * 52 + k] = BigInt(`0b${matrix.getColumn(k).join("")}`);
+  }
   writeFileSync(join(folder, "directions"), directions);
   return { fast, strict };
 }
@@ -62,27 +71,24 @@ async function startPython() {
 async function workloadTable(peers, python) {
   const rows = [];
   for (const [name, { title, points }] of Object.entries(WORKLOADS)) {
-    for (const kind of ["pseudo-random", "Sobol'"]) {
-      const engine = await engineRates(name, kind === "Sobol'" ? "sobol" : "xoshiro256++");
+    for (const [ours, numpys] of SOURCES) {
+      const engine = await engineRates(name, ours);
       const rounds = [];
       for (let round = 0; round < ROUNDS; round++) {
-        const c = kind === "Sobol'" ? "sobol" : "xoshiro";
-        const ours = engine.measure(points);
-        const fast = runC(peers.fast, name, c, points);
-        const strict = runC(peers.strict, name, c, points);
-        const numpy = await python.ask(name, kind === "Sobol'" ? "sobol" : "pcg64", points);
-        if (kind === "Sobol'") {
-          for (const peer of [fast, strict, numpy]) {
-            const apart = Math.abs(peer.estimate - ours.estimate) / Math.abs(ours.estimate);
-            if (!(apart < 1e-9)) throw new Error(`${name}: estimates differ by ${apart}`);
-          }
+        const own = engine.measure(points);
+        const fast = runC(peers.fast, name, ours, points);
+        const strict = runC(peers.strict, name, ours, points);
+        const numpy = await python.ask(name, numpys, points);
+        for (const peer of ours === "sobol" ? [fast, strict, numpy] : []) {
+          const apart = Math.abs(peer.estimate - own.estimate) / Math.abs(own.estimate);
+          if (!(apart < 1e-9)) throw new Error(`${name}: estimates differ by ${apart}`);
         }
-        rounds.push({ ours, fast, strict, numpy });
+        rounds.push({ ours: own, fast, strict, numpy });
       }
       const ratio = (of) => median(rounds.map(of)).toFixed(2);
       rows.push([
         title,
-        kind,
+        ours === numpys ? ours : `${ours} (NumPy: ${numpys})`,
         (median(rounds.map((r) => r.ours.seconds / points)) * 1e9).toFixed(1),
         ratio((r) => r.numpy.seconds / r.ours.seconds),
         ratio((r) => r.ours.seconds / r.fast.seconds),

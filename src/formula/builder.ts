@@ -156,7 +156,10 @@ export class Builder {
   }
 
   sort(of: VectorNode): VectorNode {
-    if (of.kind === "values") return this.values(of.values.slice().sort());
+    if (of.kind === "values") {
+      const spoilt = of.values.some(Number.isNaN); // as the sorting network does, see sort-rows.ts
+      return this.values(spoilt ? new Float64Array(of.length).fill(NaN) : of.values.slice().sort());
+    }
     if (of.length === 1 || of.kind === "sort") return of;
     const vector = this.toNumber(of) as VectorNode;
     const draft = { kind: "sort", of: vector, length: vector.length, condition: false } as const;

@@ -61,7 +61,7 @@ export const FUNCTIONS = {
   cumsum: overVector("vector", "cumsum(v)", "running sums"),
   cumprod: overVector("vector", null, "running products"),
   diff: overVector("vector", "diff(v)", "differences of neighbours, one element shorter"),
-  sort: overVector("vector", "sort(v)", "elements in ascending order"),
+  sort: overVector("vector", "sort(v)", "elements in ascending order; all NaN if one is"),
   length: overVector("reduction", "count(v)", "number of elements, a constant"),
 
   abs: rounding([null, "abs(a)", "absolute value"]),

@@ -55,9 +55,11 @@ function normalQuantile(p: number, normalCdf: (a: number) => number): number {
 
 type Vector = readonly number[];
 
-/** Functions of vectors that mathjs lacks. */
+/** Functions of vectors that mathjs lacks or defines otherwise. */
 export const VECTOR_FUNCTIONS: Readonly<Record<string, (of: Vector) => number | Vector>> = {
   length: (of) => of.length,
+  // Where an element is NaN there is no order.
+  sort: (of) => (of.some(Number.isNaN) ? of.map(() => NaN) : [...of].sort((a, b) => a - b)),
   cumprod: (of) => {
     let product = 1;
     return of.map((value) => (product *= value));

@@ -75,6 +75,12 @@ test("conditions are recognised as probabilities", async () => {
   expect(await indicator("sum(x < 0.5)")).toBe(false);
 });
 
+test("a NaN spoils a whole sorted vector, of inputs or of constants", async () => {
+  const scope = vectorScope("x", 5, { c: [3, NaN, 1] });
+  const texts = ["sort(sqrt(x))[1]", "sort(sqrt(x))[3]", "sort(sqrt(x))[end]", "sort(c)[1] + 0 * x[1]"];
+  for (const text of texts) expect(await valuesOf(text, scope, [[4, 1, -1, 9, 16]])).toEqual([NaN]);
+});
+
 test("what is not chosen has no effect", async () => {
   const scope = vectorScope("x", 1);
   expect(await valuesOf("x[1] > 0 ? log(x[1]) : 7", scope, [[-1], [1]])).toEqual([7, 0]);

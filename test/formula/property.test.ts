@@ -48,7 +48,7 @@ function compare(
   if (change > 1e-5 * Math.abs(value) || Math.abs(value) > 1e250) return { compared: false, agrees: true };
   return {
     compared: true,
-    agrees: Math.abs(found - value) <= Math.max(1e-9 * Math.abs(value), 50 * change, 1e-300),
+    agrees: Math.abs(found - value) <= Math.max(1e-9 * Math.abs(value), 50 * change, 1e-13),
   };
 }
 

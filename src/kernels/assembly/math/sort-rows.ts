@@ -3,7 +3,8 @@
 // Merge exchange (K. E. Batcher, "Sorting networks and their applications", Proc. AFIPS Spring Joint Computer
 // Conference 32 (1968) 307-314; Knuth, The Art of Computer Programming, vol. 3, 5.2.2, Algorithm M): the comparisons do
 // not depend on the data, so one minimum and one maximum serve both points. About n log2(n)^2 / 4 of them. A NaN
-// spreads over the elements that it is compared with and is never lost.
+// spreads to both results of a comparison, and as a sorting network leads from every place to every other, all elements
+// of a point with a NaN become NaN.
 
 /** Sorts `rows` vectors, the first at `at`, `stride` bytes apart, in ascending order. */
 export function sortRows(at: usize, rows: i32, stride: i32): void {

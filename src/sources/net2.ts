@@ -9,11 +9,20 @@
  * 30 times the plain net.
  */
 import type { Kernels } from "../kernels/instance.js";
-import { DIGITS } from "../numeric/gf2.js";
-import type { GeneratingMatrices, OpenRequest, PointStream, Seekable, Source } from "./contract.js";
+import { DIGITS, unpackColumns } from "../numeric/gf2.js";
+import { checkCapacity } from "./capacity.js";
+import type {
+  DigitalNet,
+  GeneratingMatrices,
+  OpenRequest,
+  PointStream,
+  Seekable,
+  Source,
+  SourceDescription,
+} from "./contract.js";
 import { checkIndex, checkOpening } from "./quasi-random.js";
 
-export const NET_RANDOMISATIONS = ["digital-shift", "linear", "owen"] as const;
+const RANDOMISATIONS = ["digital-shift", "linear", "owen"] as const;
 
 const RECORD_WORDS = 56;
 const ORIGIN = 1;
@@ -23,26 +32,57 @@ const OWEN_KEYS = 18;
 /** What a digital net in base 2 is made of. */
 export interface Net2 {
   readonly order: GeneratingMatrices["order"];
-  /** Packed generating matrices (numeric/gf2), `DIGITS` columns for each of the coordinates, one after the other. */
-  readonly columns: BigUint64Array;
+  /**
+   * Packed generating matrices (numeric/gf2): `DIGITS` columns for each of at least `dimension` coordinates, one after the
+   * other; for a net built for one size, those of n points.
+   */
+  columns(dimension: number, n: number): BigUint64Array;
+}
+
+/** What a net says of itself beyond what all nets in base 2 have in common. */
+export type About2 = Pick<
+  SourceDescription,
+  "id" | "title" | "citation" | "largestDimension" | "knownStructure"
+> &
+  Partial<Pick<Source, "family" | "nesting" | "randomisations" | "nearestSize">>;
+
+/** The source of a net in base 2: a sequence with all randomisations unless `about` says otherwise. */
+export function netSource2(about: About2, net: Net2): DigitalNet {
+  const source: DigitalNet = {
+    family: "quasi-random",
+    method: "digital net",
+    outputBits: DIGITS,
+    period: null,
+    nesting: "sequence",
+    randomisations: RANDOMISATIONS,
+    nearestSize: (n) => n,
+    ...about,
+    open: (request, kernels) => openNet2(source, net, request, kernels),
+    generatingMatrices(dimension, n) {
+      checkCapacity(source, dimension, n);
+      const columns = net.columns(dimension, n);
+      const used = Math.ceil(Math.log2(n));
+      const matrices = Array.from({ length: dimension }, (_, j) =>
+        unpackColumns(columns.subarray(j * DIGITS, j * DIGITS + used)),
+      );
+      return { base: 2, order: net.order, matrices };
+    },
+  };
+  return source;
 }
 
 /** Opens a stream over the first `request.dimension` coordinates of a net. */
-export function openNet2(
-  source: Source,
-  net: Net2,
-  request: OpenRequest,
-  kernels: Kernels,
-): PointStream & Seekable {
+function openNet2(source: Source, net: Net2, request: OpenRequest, kernels: Kernels): PointStream & Seekable {
   const { dimension } = request;
   const randomisation = checkOpening(source, request);
+  const columns = net.columns(dimension, request.n);
   const { arena, exports } = kernels;
 
   const size = dimension * RECORD_WORDS;
   const records = arena.allocate(size * 8);
   const words = kernels.u64(records, size).fill(0n);
   for (let j = 0; j < dimension; j++) {
-    words.set(net.columns.subarray(j * DIGITS, (j + 1) * DIGITS), j * RECORD_WORDS + STEPS);
+    words.set(columns.subarray(j * DIGITS, (j + 1) * DIGITS), j * RECORD_WORDS + STEPS);
   }
   if (net.order === "natural") exports.net2Natural(records, dimension);
 

@@ -1,6 +1,7 @@
 /** The table of all sources. Listings, help texts, docs tables, `parseSource` and the shared test laws come from it. */
 import type { Source, SourceDescription } from "./contract.js";
 import { halton } from "./halton.js";
+import { interlaced2, interlaced3 } from "./interlaced.js";
 import { kronecker } from "./kronecker.js";
 import { lattice } from "./lattice.js";
 import {
@@ -43,13 +44,14 @@ import { chacha20, chacha8 } from "./chacha.js";
 import { minstd16807, minstd48271 } from "./minstd.js";
 import { mrg32k3a } from "./mrg32k3a.js";
 import { mt19937 } from "./mt19937.js";
+import { niederreiter } from "./niederreiter.js";
 import { pcg32 } from "./pcg32.js";
 import { pcg64Dxsm } from "./pcg64-dxsm.js";
 import { pcg64 } from "./pcg64.js";
 import { philox4x32 } from "./philox4x32.js";
 import { randu } from "./randu.js";
 import { sfc64 } from "./sfc64.js";
-import { sobol } from "./sobol.js";
+import { sobol, sobolNatural } from "./sobol.js";
 import { splitMix64 } from "./splitmix64.js";
 import { lfsr113, taus88 } from "./tausworthe.js";
 import { mathRandom, system } from "./unrepeatable.js";
@@ -121,6 +123,10 @@ export type SourceId =
   | "system"
   | "math-random"
   | "sobol"
+  | "sobol-natural"
+  | "niederreiter"
+  | "interlaced-2"
+  | "interlaced-3"
   | "halton"
   | "lattice"
   | "kronecker";
@@ -187,6 +193,10 @@ const sources: Readonly<Record<SourceId, Source>> = {
   system,
   "math-random": mathRandom,
   sobol,
+  "sobol-natural": sobolNatural,
+  niederreiter,
+  "interlaced-2": interlaced2,
+  "interlaced-3": interlaced3,
   halton,
   lattice,
   kronecker,

@@ -4,8 +4,8 @@
  * F. Y. Kuo, "Constructing Sobol sequences with better two-dimensional projections", SIAM Journal on Scientific Computing
  * 30 (2008) 2635-2654, criterion D(6): a digital sequence in base 2, up to 21,201 coordinates.
  *
- * Points come in Gray-code order (Antonov & Saleev 1979) with the origin kept as point 0: the first 2^m points are those
- * of the natural order, and dropping the origin would cost accuracy (Owen, arXiv:2008.08051). Column k of a generating
+ * Points of `sobol` come in Gray-code order (Antonov & Saleev 1979), those of `sobol-natural` in natural order, both with the
+ * origin kept as point 0: the first 2^m points are the same ones, and dropping the origin would cost accuracy (Owen, arXiv:2008.08051). Column k of a generating
  * matrix is v_k = a_1 v_(k-1) + ... + a_(s-1) v_(k-s+1) + v_(k-s) + (v_(k-s) shifted right by s digits), the first s
  * columns are m_k / 2^k.
  *
@@ -13,47 +13,37 @@
  * coordinates with few points (some pairs of coordinates are poorly spread).
  */
 import { readFileSync } from "node:fs";
-import { DIGITS, unpackColumns } from "../numeric/gf2.js";
-import { checkCapacity } from "./capacity.js";
-import type { DigitalNet } from "./contract.js";
-import { NET_RANDOMISATIONS, openNet2 } from "./net2.js";
+import { DIGITS } from "../numeric/gf2.js";
+import { netSource2 } from "./net2.js";
 
-export const sobol: DigitalNet = {
-  id: "sobol",
-  title: "Sobol' sequence, direction numbers of Joe and Kuo",
+/** Coordinates in the table. */
+export const SOBOL_DIMENSIONS = 21_201;
+
+const about = {
   citation:
     "S. Joe and F. Y. Kuo, Constructing Sobol sequences with better two-dimensional projections, SIAM Journal on Scientific Computing 30 (2008) 2635-2654",
-  family: "quasi-random",
-  method: "digital net",
-  outputBits: DIGITS,
-  period: null,
-  largestDimension: 21_201,
-  nesting: "sequence",
-  randomisations: NET_RANDOMISATIONS,
+  largestDimension: SOBOL_DIMENSIONS,
   knownStructure: null,
-  nearestSize: (n) => n,
-  open: (request, kernels) => {
-    checkCapacity(sobol, request.dimension, request.n);
-    return openNet2(sobol, { order: "gray", columns: columnsOf(request.dimension) }, request, kernels);
-  },
-  generatingMatrices(dimension, n) {
-    checkCapacity(sobol, dimension, n);
-    const columns = columnsOf(dimension);
-    const used = Math.ceil(Math.log2(n));
-    return {
-      base: 2,
-      order: "gray",
-      matrices: Array.from({ length: dimension }, (_, j) =>
-        unpackColumns(columns.subarray(j * DIGITS, j * DIGITS + used)),
-      ),
-    };
-  },
 };
+
+export const sobol = netSource2(
+  { ...about, id: "sobol", title: "Sobol' sequence, direction numbers of Joe and Kuo, Gray-code order" },
+  { order: "gray", columns: sobolColumns },
+);
+
+export const sobolNatural = netSource2(
+  {
+    ...about,
+    id: "sobol-natural",
+    title: "Sobol' sequence, direction numbers of Joe and Kuo, natural order",
+  },
+  { order: "natural", columns: sobolColumns },
+);
 
 let known: BigUint64Array = new BigUint64Array(0);
 
 /** Packed columns of the first `dimension` matrices (at least), kept for the next call. */
-function columnsOf(dimension: number): BigUint64Array {
+export function sobolColumns(dimension: number): BigUint64Array {
   if (known.length < dimension * DIGITS) known = directionNumbers(dimension);
   return known;
 }

@@ -39,6 +39,7 @@ interface QmcReference {
     /** Keys like "dims1..3", then m: the least t of the first 2^m points. */
     readonly "t_values_first_2^m_points": Record<string, Record<string, number>>;
   };
+  readonly niederreiter_base2_gsl: { readonly numerators_2_32: string[][] };
   readonly halton: {
     readonly primes: number[];
     readonly first16_fractions: string[][];

@@ -3,8 +3,9 @@
  * there with Boost.Random 1.74 (`checks`); direction numbers of Joe & Kuo (2008), criterion D(6).
  */
 import { describe, expect, it } from "vitest";
+import type { Source } from "../../src/sources/contract.js";
 import { packColumns } from "../../src/numeric/gf2.js";
-import { sobol } from "../../src/sources/sobol.js";
+import { sobol, sobolNatural } from "../../src/sources/sobol.js";
 import { digitsOf, pointsOf } from "../sources/points.js";
 import { reference } from "./qmc-data.js";
 
@@ -12,8 +13,13 @@ const data = reference.sobol;
 const shift = BigInt(52 - 32);
 
 /** Coordinate j (1-based) of point i in steps of 2^-32: the reference numerators are exact. */
-function numerators(first: number, count: number, dimensions: readonly number[]): bigint[][] {
-  const points = pointsOf(sobol, { dimension: Math.max(...dimensions), first, count });
+function numerators(
+  first: number,
+  count: number,
+  dimensions: readonly number[],
+  source: Source = sobol,
+): bigint[][] {
+  const points = pointsOf(source, { dimension: Math.max(...dimensions), first, count });
   return points.map((point) => dimensions.map((j) => digitsOf(point[j - 1] ?? NaN) >> shift));
 }
 
@@ -39,6 +45,15 @@ describe("Sobol' (Joe & Kuo 2008), qmc.json", () => {
       }
     },
   );
+
+  it("first 16 points in natural order, dimensions 1 to 10", () => {
+    const expected = data.first16_natural_numerators_2_32_dims1_10.map((point) => point.map(BigInt));
+    expect(numerators(0, 16, ten, sobolNatural)).toEqual(expected);
+  });
+
+  it.each(Object.entries(data.at_n_dims1_10))("natural order, point %s", (n, { natural }) => {
+    expect(numerators(Number(n), 1, ten, sobolNatural)).toEqual([natural.map(BigInt)]);
+  });
 
   it("direction integers v_1 ... v_32 of 13 dimensions, from the generating matrices", () => {
     const dimensions = Object.keys(data.direction_integers_v_k_32bit).map(Number);

@@ -6,6 +6,7 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import type { Randomisation } from "../../src/sources/contract.js";
+import { niederreiter } from "../../src/sources/niederreiter.js";
 import { sobol } from "../../src/sources/sobol.js";
 import { reference } from "../published/qmc-data.js";
 import { pointsOf } from "./points.js";
@@ -81,5 +82,28 @@ describe.each(nets)("sobol, %s", (_, randomisations) => {
       const unbalanced = [...shares(m - t + 1, dimension)].filter((digits) => !balanced(points, digits));
       expect(unbalanced.length).toBeGreaterThan(0);
     }
+  });
+});
+
+describe.each(nets)("niederreiter, %s", (_, randomisations) => {
+  // Niederreiter (1988): t is the sum of the degrees less one of the polynomials x, x + 1, x^2 + x + 1, x^3 + x + 1, ...
+  const degrees = [1, 1, 2, 3, 3, 4];
+
+  it("every elementary interval holds its exact share at the t of the theorem", () => {
+    const cases = fc.record({
+      dimension: fc.integer({ min: 1, max: 6 }),
+      key: fc.string(),
+      choose: fc.nat(),
+    });
+    fc.assert(
+      fc.property(cases, ({ dimension, key, choose }) => {
+        const m = 11;
+        const t = degrees.slice(0, dimension).reduce((sum, degree) => sum + degree - 1, 0);
+        const points = pointsOf(niederreiter, { dimension, count: 2 ** m, randomisations, key });
+        const boxes = [...shares(m - t, dimension)];
+        expect(balanced(points, boxes[choose % boxes.length] ?? [])).toBe(true);
+      }),
+      { numRuns: 40, seed: 22 },
+    );
   });
 });

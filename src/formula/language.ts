@@ -98,7 +98,7 @@ export const FUNCTIONS = {
   erf: probability(["erf", "erf(a)", "error function"]),
   erfc: probability(["erfc", null, "1 - erf(a), accurate in the tail"]),
   gamma: probability(["gamma", "gamma(a)", "gamma function"]),
-  lgamma: probability(["lgamma", "lgamma(a)", "logarithm of |gamma(a)|"]),
+  lgamma: probability(["lgamma", "lgamma(a)", "logarithm of gamma(a) for a >= 0, NaN below"]),
   normalPdf: probability(["normalPdf", null, "density of the standard normal distribution"]),
   normalCdf: probability(["normalCdf", null, "distribution function of the standard normal"]),
   normalQuantile: probability(["normalQuantile", null, "inverse of normalCdf"]),

@@ -22,6 +22,7 @@ export function numberFunctions(math: MathJsInstance): Readonly<Record<string, N
     min: Math.min,
     max: Math.max,
     erfc: (a = NaN) => erfc(a),
+    lgamma: (a = NaN) => (a === 1 || a === 2 ? 0 : toReal(math.lgamma(a))), // -4e-16 for mathjs
     normalPdf: (a = NaN) => Math.exp((-a * a) / 2) / Math.sqrt(2 * Math.PI),
     normalCdf: (a = NaN) => normalCdf(a),
     normalQuantile: (a = NaN) => normalQuantile(a, normalCdf),
@@ -58,6 +59,7 @@ type Vector = readonly number[];
 /** Functions of vectors that mathjs lacks or defines otherwise. */
 export const VECTOR_FUNCTIONS: Readonly<Record<string, (of: Vector) => number | Vector>> = {
   length: (of) => of.length,
+  norm: (of) => Math.sqrt(of.reduce((sum, value) => sum + value * value, 0)), // complex for mathjs if one is NaN
   // Where an element is NaN there is no order.
   sort: (of) => (of.some(Number.isNaN) ? of.map(() => NaN) : [...of].sort((a, b) => a - b)),
   cumprod: (of) => {
@@ -65,3 +67,7 @@ export const VECTOR_FUNCTIONS: Readonly<Record<string, (of: Vector) => number | 
     return of.map((value) => (product *= value));
   },
 };
+
+function toReal(value: unknown): number {
+  return typeof value === "number" ? value : NaN;
+}

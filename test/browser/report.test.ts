@@ -177,6 +177,15 @@ describe("the page", () => {
     });
   });
 
+  it("lets the keyboard scroll what does not fit, and stops nowhere else", async () => {
+    await opened(small, { viewport: NARROW }, async (page) => {
+      expect(await page.locator("#error-against-n-ridge > .scroll[tabindex='0']").count()).toBe(1);
+    });
+    await opened(small, { viewport: WIDE }, async (page) => {
+      expect(await page.locator("#error-against-n-ridge > .scroll[tabindex]").count()).toBe(0);
+    });
+  });
+
   it("can be reached throughout by Tab", async () => {
     await opened(small, { viewport: WIDE }, async (page) => {
       const reached = new Set<string>();
@@ -205,11 +214,11 @@ describe("the page", () => {
   });
 
   it("prints an ordinary problem on one sheet of A4", async () => {
-    await opened(small, { viewport: { width: 703, height: 1032 }, colorScheme: "dark" }, async (page) => {
+    await opened(small, { viewport: { width: 718, height: 1047 }, colorScheme: "dark" }, async (page) => {
       await page.emulateMedia({ media: "print" });
       const heights = await edges(page, "section.problem", "height");
-      // 297 mm less two margins of 12 mm, at 96 px per inch.
-      for (const height of heights) expect(height).toBeLessThanOrEqual(1032);
+      // 297 mm less two margins of 10 mm, at 96 px per inch.
+      for (const height of heights) expect(height).toBeLessThanOrEqual(1047);
       expect(await page.evaluate<string>("getComputedStyle(document.body).backgroundColor")).toBe(
         "rgb(255, 255, 255)",
       );

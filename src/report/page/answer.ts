@@ -46,7 +46,7 @@ function verdictTable(view: View): Markup {
     </tr> `;
   });
   const many = columns.length >= MANY ? " many" : "";
-  return html`<div class="scroll wide" tabindex="0" role="group" aria-label="Verdicts">
+  return html`<div class="scroll wide" role="group" aria-label="Verdicts">
     <table class="verdicts${many}">
       <thead>
         <tr>

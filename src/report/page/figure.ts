@@ -7,7 +7,7 @@ import { tied } from "./parts.js";
 /** A table of text cells; numbers to the right. */
 export function dataTable(table: ChartTable): Markup {
   const kind = (j: number): Markup => raw(table.columns[j]?.align === "right" ? ` class="num"` : "");
-  return html`<div class="scroll" tabindex="0" role="group" aria-label="Table">
+  return html`<div class="scroll" role="group" aria-label="Table">
     <table>
       <thead>
         <tr>
@@ -32,7 +32,7 @@ export async function figure(chart: Chart): Promise<Markup> {
   return html`<figure class="wide" id="${chart.name}">
     <h4>${tied(chart.title)}</h4>
     <p class="says">${chart.says}</p>
-    <div class="scroll" tabindex="0" role="group" aria-label="Figure: ${chart.title}">${drawing}</div>
+    <div class="scroll" role="group" aria-label="Figure: ${chart.title}">${drawing}</div>
     ${chart.notDrawn.map((note) => html`<p class="aside">${note}</p>`)}
     <figcaption>${tied(chart.caption)}</figcaption>
     <details>

@@ -77,7 +77,7 @@ function ranking(subject: Subject): Markup {
       </tr> `,
   );
   return html`<h4>Sources by cost to tolerance</h4>
-    <div class="scroll wide" tabindex="0" role="group" aria-label="Sources by cost to tolerance">
+    <div class="scroll wide" role="group" aria-label="Sources by cost to tolerance">
       <table>
         <thead>
           <tr>

@@ -86,6 +86,18 @@ export const PAGE_SCRIPT = `
     byId("shown").textContent = words.length === 0 ? "" : shown + " of " + facts.problems.length + " shown";
   });
 
+  // Only what really scrolls is a stop for the keyboard; tables behind a disclosure are measured when it opens.
+  function stops() {
+    for (const part of all(".scroll")) {
+      const scrolls = part.scrollWidth > part.clientWidth + 1 || part.scrollHeight > part.clientHeight + 1;
+      if (scrolls) part.tabIndex = 0;
+      else part.removeAttribute("tabindex");
+    }
+  }
+  stops();
+  addEventListener("resize", stops);
+  for (const part of all("details")) part.addEventListener("toggle", stops);
+
   const links = new Map(all("nav a").map((link) => [link.hash.slice(1), link]));
   const watched = all("[data-section]");
   if ("IntersectionObserver" in window) {

@@ -98,7 +98,7 @@ export function sourceSection(view: View, source: SourceView): Markup {
     <h3>${source.source.id}</h3>
     <p>${source.source.title}. ${inSum(met)}</p>
     ${facts(source)}
-    <div class="scroll wide" tabindex="0" role="group" aria-label="${source.source.id} on each problem">
+    <div class="scroll wide" role="group" aria-label="${source.source.id} on each problem">
       <table>
         <thead>
           <tr>

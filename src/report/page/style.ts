@@ -93,7 +93,7 @@ dd{margin-bottom:.5rem}
 }
 @media (prefers-reduced-motion:no-preference){.chart [data-s]{transition:opacity .15s}}
 @media print{
-@page{size:A4;margin:12mm}
+@page{size:A4;margin:10mm}
 html{color-scheme:light;font-size:8pt}
 body{font-size:1rem;line-height:1.35;background:#fff}
 nav,.controls,details,.file,#tip,#following{display:none!important}
@@ -110,8 +110,12 @@ figure{margin:.6rem 0 0}
 figcaption{margin:.2rem 0}
 .says{margin:0 0 .2rem}
 .chart{min-width:0;max-width:100%}
-.problem .chart{width:auto;max-height:54mm}
-.problem figure:last-child .chart{max-height:40mm}
+.problem figure{display:grid;grid-template-columns:minmax(0,1fr) 21rem;grid-template-rows:repeat(5,auto) 1fr;column-gap:1rem}
+.problem figure h4{grid-column:1/-1}
+.problem figure>.scroll{grid-column:1;grid-row:2/span 5}
+.problem figure>p,.problem figcaption{grid-column:2;margin:0 0 .3rem}
+.problem .chart{width:auto;max-height:66mm;font-size:14px}
+.problem figure:last-child .chart{max-height:51mm}
 table{margin:.3rem 0}
 th,td{padding-top:.1rem;padding-bottom:.1rem}
 dl{margin:.4rem 0;gap:.05rem 1rem}

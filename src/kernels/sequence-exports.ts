@@ -53,4 +53,35 @@ export interface SequenceExports {
     count: number,
     tent: boolean,
   ): void;
+  /** As `haltonFill`, of the sequence that takes every `leap`-th point. */
+  haltonFillLeaped(
+    records: number,
+    dimension: number,
+    index: number,
+    leap: number,
+    pointer: number,
+    stride: number,
+    count: number,
+  ): void;
+  /** Draws `dimension` permutations of 0...n - 1 (32 bits each) from seeds of 32 bytes. */
+  latinPrepare(permutations: number, n: number, dimension: number, seeds: number): void;
+  /** Turns uniform numbers, standing where the points will, into points of a Latin hypercube from point `index`. */
+  latinPass(
+    permutations: number,
+    n: number,
+    dimension: number,
+    index: number,
+    pointer: number,
+    stride: number,
+    count: number,
+  ): void;
+  /** The same for boxes; `layout` holds the first bit of the index and the number of bits for every coordinate. */
+  boxesPass(
+    layout: number,
+    dimension: number,
+    index: number,
+    pointer: number,
+    stride: number,
+    count: number,
+  ): void;
 }

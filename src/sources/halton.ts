@@ -34,11 +34,31 @@ export const halton: Source = {
   randomisations: ["permuted"],
   knownStructure: "coordinates i and j repeat their joint pattern every p_i p_j points",
   nearestSize: (n) => n,
-  open: openHalton,
+  open: (request, kernels) => openHalton(halton, 1, request, kernels),
 };
 
-function openHalton(request: OpenRequest, kernels: Kernels): PointStream & Seekable {
-  const randomisation = checkOpening(halton, request);
+/**
+ * Every 409th point (L. Kocis and W. J. Whiten, "Computational investigations of low-discrepancy sequences", ACM
+ * Transactions on Mathematical Software 23, 1997, 266-294): high coordinates no longer rise in step. 409 is the 80th prime,
+ * so there are 79 coordinates.
+ */
+export const haltonLeaped: Source = {
+  ...halton,
+  id: "halton-leaped",
+  title: "Halton sequence, every 409th point",
+  citation:
+    "L. Kocis and W. J. Whiten, Computational investigations of low-discrepancy sequences, ACM Transactions on Mathematical Software 23 (1997) 266-294",
+  largestDimension: 79,
+  open: (request, kernels) => openHalton(haltonLeaped, 409, request, kernels),
+};
+
+function openHalton(
+  source: Source,
+  leap: number,
+  request: OpenRequest,
+  kernels: Kernels,
+): PointStream & Seekable {
+  const randomisation = checkOpening(source, request);
   const { dimension } = request;
   const { arena, exports } = kernels;
   const records = arena.allocate(dimension * RECORD);
@@ -66,12 +86,13 @@ function openHalton(request: OpenRequest, kernels: Kernels): PointStream & Seeka
   return {
     dimension,
     seek(to) {
-      checkIndex(halton, to);
+      checkIndex(source, to);
       index = to;
     },
     fill(pointer, stride, count) {
-      checkIndex(halton, index, count);
-      exports.haltonFill(records, dimension, index, pointer, stride, count);
+      checkIndex(source, index, count);
+      if (leap === 1) exports.haltonFill(records, dimension, index, pointer, stride, count);
+      else exports.haltonFillLeaped(records, dimension, index, leap, pointer, stride, count);
       index += count;
     },
   };

@@ -38,6 +38,46 @@ function alphas(dimension: number): readonly bigint[] {
   return known.slice(0, dimension);
 }
 
+/**
+ * frac(i / phi^j), j = 1...d, with phi the root above 1 of x^(d+1) = x + 1, the golden ratio for d = 1 (M. Roberts, "The
+ * unreasonable effectiveness of quasirandom sequences", 2018, a web page, from memory). The vector depends on d.
+ */
+export const kroneckerGolden: Source = {
+  ...kronecker,
+  id: "kronecker-golden",
+  title: "Kronecker sequence, generalised golden ratio",
+  citation: "M. Roberts, The unreasonable effectiveness of quasirandom sequences (2018)",
+  largestDimension: 1000,
+  open: (request, kernels) => openRotation(kroneckerGolden, goldenAlphas, request, kernels),
+};
+
+function goldenAlphas(dimension: number): readonly bigint[] {
+  const bits = 256n;
+  const one = 1n << bits;
+  // y = 1 / phi solves y^(d+1) + y^d = 1: bisection on 256 bits
+  let low = one >> 1n;
+  let high = one;
+  while (high - low > 1n) {
+    const middle = (low + high) >> 1n;
+    const power = fixedPower(middle, dimension, bits);
+    if (power + ((power * middle) >> bits) < one) low = middle;
+    else high = middle;
+  }
+  const alphas: bigint[] = [];
+  for (let j = 0, y = low; j < dimension; j++, y = (y * low) >> bits) alphas.push(y >> (bits - 128n));
+  return alphas;
+}
+
+/** base^exponent of a fraction with `bits` bits. */
+function fixedPower(base: bigint, exponent: number, bits: bigint): bigint {
+  let result = 1n << bits;
+  for (let square = base, rest = exponent; rest > 0; rest >>= 1) {
+    if (rest % 2 === 1) result = (result * square) >> bits;
+    square = (square * square) >> bits;
+  }
+  return result;
+}
+
 /** The whole part of the square root, by Newton's iteration from above. */
 function squareRoot(square: bigint): bigint {
   let root = 1n << BigInt(Math.ceil(square.toString(2).length / 2));

@@ -10,6 +10,7 @@
 import type { Kernels } from "../kernels/instance.js";
 import { constructVector, inverseSquareWeights } from "../numeric/lattice-construction.js";
 import type { OpenRequest, PointStream, Seekable, Source } from "./contract.js";
+import { nearestPowerOfTwo } from "./quasi-random.js";
 import { openRotation, ROTATION_RANDOMISATIONS } from "./rotation.js";
 
 const LARGEST_SIZE = 2 ** 20;
@@ -31,15 +32,10 @@ export const lattice: Source = {
   citation:
     "D. Nuyens and R. Cools, Fast component-by-component construction of rank-1 lattice rules with a non-prime number of points, Journal of Complexity 22 (2006) 4-28",
   largestDimension: 1000,
-  nearestSize: nearestPowerOfTwo,
+  nearestSize: (n) => nearestPowerOfTwo(n, LARGEST_SIZE),
   open: (request, kernels) =>
     openLattice(lattice, () => vectorOf(request.n, request.dimension), request, kernels),
 };
-
-function nearestPowerOfTwo(n: number): number {
-  const below = 2 ** Math.floor(Math.log2(Math.min(n, LARGEST_SIZE)));
-  return n - below < 2 * below - n || below === LARGEST_SIZE ? below : 2 * below;
-}
 
 /** Vectors built so far in this process: the longest one of each size. */
 const built = new Map<number, Uint32Array>();

@@ -1,4 +1,4 @@
-/** Checks that every quasi-random source makes when it is opened. */
+/** What quasi-random sources have in common: checks made when they are opened, and valid sizes. */
 import { checkCapacity } from "./capacity.js";
 import type { OpenRequest, Source } from "./contract.js";
 import type { Key } from "./key.js";
@@ -21,4 +21,10 @@ export function checkOpening(source: Source, request: OpenRequest): { name: stri
 export function checkIndex(source: Source, index: number, count = 0): void {
   if (Number.isInteger(index) && index >= 0 && index + count <= 2 ** 52) return;
   throw new RangeError(`index: expected points from 0 to 2^52 - 1 of source "${source.id}", found ${index}`);
+}
+
+/** The power of two nearest to n (the larger one half-way), at most `largest`, itself a power of two. */
+export function nearestPowerOfTwo(n: number, largest: number): number {
+  const below = 2 ** Math.floor(Math.log2(Math.min(n, largest)));
+  return n - below < 2 * below - n || below === largest ? below : 2 * below;
 }

@@ -1,8 +1,9 @@
 /** The table of all sources. Listings, help texts, docs tables, `parseSource` and the shared test laws come from it. */
 import type { Source, SourceDescription } from "./contract.js";
-import { halton } from "./halton.js";
+import { halton, haltonLeaped } from "./halton.js";
+import { hammersley } from "./hammersley.js";
 import { interlaced2, interlaced3 } from "./interlaced.js";
-import { kronecker } from "./kronecker.js";
+import { kronecker, kroneckerGolden } from "./kronecker.js";
 import { lattice } from "./lattice.js";
 import {
   drand48,
@@ -53,6 +54,7 @@ import { randu } from "./randu.js";
 import { sfc64 } from "./sfc64.js";
 import { sobol, sobolNatural } from "./sobol.js";
 import { splitMix64 } from "./splitmix64.js";
+import { latinHypercube, stratified } from "./stratified.js";
 import { lfsr113, taus88 } from "./tausworthe.js";
 import { mathRandom, system } from "./unrepeatable.js";
 import { wichmannHill } from "./wichmann-hill.js";
@@ -128,8 +130,13 @@ export type SourceId =
   | "interlaced-2"
   | "interlaced-3"
   | "halton"
+  | "halton-leaped"
+  | "hammersley"
   | "lattice"
-  | "kronecker";
+  | "kronecker"
+  | "kronecker-golden"
+  | "latin-hypercube"
+  | "stratified";
 
 const sources: Readonly<Record<SourceId, Source>> = {
   randu,
@@ -198,8 +205,13 @@ const sources: Readonly<Record<SourceId, Source>> = {
   "interlaced-2": interlaced2,
   "interlaced-3": interlaced3,
   halton,
+  "halton-leaped": haltonLeaped,
+  hammersley,
   lattice,
   kronecker,
+  "kronecker-golden": kroneckerGolden,
+  "latin-hypercube": latinHypercube,
+  stratified,
 };
 
 export function isSourceId(id: string): id is SourceId {

@@ -102,6 +102,23 @@ export function haltonFill(records: usize, dimension: i32, index: f64, pointer: 
   }
 }
 
+/** Fills `count` points from point `index` of the sequence that takes every `leap`-th point. */
+export function haltonFillLeaped(
+  records: usize, dimension: i32, index: f64, leap: u32, pointer: usize, stride: i32, count: i32,
+): void {
+  for (let j = 0; j < dimension; j++) {
+    let record = records + <usize>j * RECORD;
+    let o = pointer + (<usize>(j * stride) << 3);
+    let b = load<u32>(record, 12), table = load<u32>(record, 16);
+    let scale = load<f64>(record);
+    let at = <u64>index * leap;
+    for (let i = 0; i < count; i++, at += leap, o += 8) {
+      let run = at / b;
+      store<f64>(o, (load<f64>(table + (<u32>(at - run * b) << 3)) + upperPart(record, run)) / scale);
+    }
+  }
+}
+
 /** What the digits of the index from place a on contribute, and the half. */
 @inline
 function upperPart(record: usize, run: u64): f64 {

@@ -1,6 +1,7 @@
 // Exports of the sequences group of kernels.
-export { haltonFill, haltonPrepare } from "./halton";
+export { haltonFill, haltonFillLeaped, haltonPrepare } from "./halton";
 export { net2Scramble } from "./linear";
 export { net2Fill, net2FillOwen, net2Natural, net2Seek } from "./net2";
 export { owenHash } from "./owen";
 export { rotationFill, rotationSeek } from "./rotation";
+export { boxesPass, latinPass, latinPrepare } from "./strata";

@@ -2,11 +2,16 @@
  * The user's own quasi-random source, as a mapping in a problem file or inline on the command line:
  *
  *     { name: house, lattice: { vector: [1, 182667, 469891] }, randomisation: shift+tent }
+ *     { name: house, matrices: { base: 2, rows: [[[1, 0], [0, 1]], [[0, 1], [1, 0]]] }, randomisation: owen }
+ *
+ * The rows of the matrices stand coordinate by coordinate, the first digit's row first.
  */
+import { Matrix } from "ml-matrix";
 import { parseInteger } from "../numeric/integer-formula.js";
 import { nearest } from "../numeric/nearest.js";
 import type { Randomisation, Source } from "./contract.js";
 import { ownLattice } from "./lattice.js";
+import { ownNet } from "./own-net.js";
 import { checkRandomisations } from "./randomisations.js";
 import { isSourceId } from "./registry.js";
 
@@ -19,7 +24,10 @@ export interface OwnQuasiRandom {
 }
 
 /** How each kind of mapping is read: its own key, and what stands below it. */
-const kinds: Readonly<Record<string, (name: string, body: Mapping) => Source>> = { lattice: latticeOf };
+const kinds: Readonly<Record<string, (name: string, body: Mapping) => Source>> = {
+  lattice: latticeOf,
+  matrices: netOf,
+};
 
 /** The kind of quasi-random source that a mapping describes; undefined for another mapping. */
 function kindOf(written: Mapping): string | undefined {
@@ -54,13 +62,36 @@ export function parseOwnQuasiRandom(written: Mapping): OwnQuasiRandom {
 function latticeOf(name: string, body: Mapping): Source {
   checkKeys("source.lattice", body, ["vector"]);
   const { vector } = body;
-  if (!Array.isArray(vector) || vector.length === 0) {
-    throw new TypeError(`source.lattice.vector: expected a list of whole numbers, found ${found(vector)}`);
-  }
   return ownLattice(
     name,
-    vector.map((component: unknown, j) => parseInteger(component, `source.lattice.vector[${j + 1}]`)),
+    listAt("source.lattice.vector", vector, "a list of whole numbers").map((component, j) =>
+      parseInteger(component, `source.lattice.vector[${j + 1}]`),
+    ),
   );
+}
+
+function netOf(name: string, body: Mapping): Source {
+  checkKeys("source.matrices", body, ["base", "rows"]);
+  const { base, rows } = body;
+  if (base !== 2) throw new RangeError(`source.matrices.base: expected 2, found ${found(base)}`);
+  const matrices = listAt("source.matrices.rows", rows, "a list of matrices").map((matrix, j) => {
+    const key = `source.matrices.rows[${j + 1}]`;
+    const entries = listAt(key, matrix, "a matrix, a list of rows").map((row, r) => {
+      const digits = listAt(`${key}[${r + 1}]`, row, "a row of zeros and ones");
+      if (digits.every((digit) => digit === 0 || digit === 1)) return digits;
+      throw new RangeError(`${key}[${r + 1}]: expected a row of zeros and ones, found ${found(row)}`);
+    });
+    if (entries.some((row) => row.length !== entries[0]?.length)) {
+      throw new RangeError(`${key}: expected rows of the same length, found ${found(matrix)}`);
+    }
+    return new Matrix(entries);
+  });
+  return ownNet(name, matrices);
+}
+
+function listAt(key: string, value: unknown, expected: string): readonly unknown[] {
+  if (Array.isArray(value) && value.length > 0) return value;
+  throw new TypeError(`${key}: expected ${expected}, found ${found(value)}`);
 }
 
 function mappingAt(key: string, value: unknown): Mapping {

@@ -35,9 +35,17 @@ const own: Readonly<Record<string, SourceSpec>> = {
 };
 
 const lattice = { vector: [1, 182667, "2^40 + 3", 213, 7, 5, 0] };
+/** Any nine columns of zeros and ones will do; the identity and a triangle keep the points apart. */
+const rows = [1, 0, 1, 0, 1, 0, 1].map((triangle) =>
+  Array.from({ length: 9 }, (_, r) =>
+    Array.from({ length: 9 }, (__, c) => Number(r === c || (triangle && c > r))),
+  ),
+);
 const ownQuasiRandom: Readonly<Record<string, SourceSpec>> = {
   "a lattice": { name: "house", lattice },
   "a shifted lattice": { name: "house", lattice, randomisation: "shift" },
+  "a net": { name: "house", matrices: { base: 2, rows } },
+  "a scrambled net": { name: "house", matrices: { base: 2, rows }, randomisation: "owen" },
   "a shifted and folded lattice": { name: "house", lattice, randomisation: "shift+tent" },
 };
 

@@ -1,5 +1,7 @@
 import { expect, test } from "vitest";
 import type { SourceSpec } from "../../src/problem/contract.js";
+import { sobolNatural } from "../../src/sources/sobol.js";
+import { pointsOf } from "./points.js";
 import { parseSource } from "../../src/sources/choice.js";
 
 const vector = [1, 3, "2^7 - 1"];
@@ -11,6 +13,28 @@ test("a lattice has the name given, its randomisation in the id, and any n", () 
   expect(choice.source.nearestSize(1009)).toBe(1009);
   expect(choice.deterministic).toBe(false);
   expect(parseSource({ name: "house", lattice: { vector } }).deterministic).toBe(true);
+});
+
+const rows = [
+  [
+    [1, 0, 0],
+    [0, 1, 0],
+    [0, 0, 1],
+  ],
+  [
+    [1, 1, 1],
+    [0, 1, 0],
+    [0, 0, 1],
+  ],
+];
+
+test("generating matrices give their net in natural order: the first two coordinates of Sobol's sequence", () => {
+  const choice = parseSource({ name: "house", matrices: { base: 2, rows }, randomisation: "owen" });
+  expect(choice.id).toBe("house+owen");
+  expect(choice.source.nearestSize(100)).toBe(8);
+  expect(pointsOf(choice.source, { dimension: 2, count: 8 })).toEqual(
+    pointsOf(sobolNatural, { dimension: 2, count: 8 }),
+  );
 });
 
 const refusals: [SourceSpec, string][] = [
@@ -47,6 +71,27 @@ const refusals: [SourceSpec, string][] = [
   [
     { name: "house", lattice: { vector: [1, 2.5] } },
     'source.lattice.vector[2]: expected a whole number (write large ones as text, like "2^64 - 59"), found 2.5',
+  ],
+  [{ name: "house", matrices: { base: 3, rows } }, "source.matrices.base: expected 2, found 3"],
+  [
+    { name: "house", matrices: { base: 2, rows: [] } },
+    "source.matrices.rows: expected a list of matrices, found []",
+  ],
+  [
+    { name: "house", matrices: { base: 2, rows: [[1, 0]] } },
+    "source.matrices.rows[1][1]: expected a row of zeros and ones, found 1",
+  ],
+  [
+    { name: "house", matrices: { base: 2, rows: [[[1, 2]]] } },
+    "source.matrices.rows[1][1]: expected a row of zeros and ones, found [1,2]",
+  ],
+  [
+    { name: "house", matrices: { base: 2, rows: [[[1, 0], [1]]] } },
+    "source.matrices.rows[1]: expected rows of the same length, found [[1,0],[1]]",
+  ],
+  [
+    { name: "house", matrices: { base: 2, rows: [[[1, 0]], [[1]]] } },
+    "generating matrix: expected the same number of columns for every coordinate, 1 to 52, found 1 for coordinate 2",
   ],
   [
     { name: "house", lattice: { vector }, randomisation: ["shift"] },

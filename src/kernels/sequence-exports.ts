@@ -84,4 +84,19 @@ export interface SequenceExports {
     stride: number,
     count: number,
   ): void;
+  /** Makes `index` the next point of a net in base `base` with `digits` digits (layout: assembly/sequences/netb.ts). */
+  netbSeek(records: number, dimension: number, base: number, digits: number, index: number): void;
+  /** Fills `count` points of such a net; `weights`: base^(digits-1), ..., 1; `keys`: 8 bytes a coordinate to scramble with, or 0. */
+  netbFill(
+    records: number,
+    dimension: number,
+    base: number,
+    digits: number,
+    weights: number,
+    keys: number,
+    index: number,
+    pointer: number,
+    stride: number,
+    count: number,
+  ): void;
 }

@@ -1,5 +1,6 @@
 /** The table of all sources. Listings, help texts, docs tables, `parseSource` and the shared test laws come from it. */
 import type { Source, SourceDescription } from "./contract.js";
+import { faure } from "./faure.js";
 import { halton, haltonLeaped } from "./halton.js";
 import { hammersley } from "./hammersley.js";
 import { interlaced2, interlaced3 } from "./interlaced.js";
@@ -127,6 +128,7 @@ export type SourceId =
   | "sobol"
   | "sobol-natural"
   | "niederreiter"
+  | "faure"
   | "interlaced-2"
   | "interlaced-3"
   | "halton"
@@ -202,6 +204,7 @@ const sources: Readonly<Record<SourceId, Source>> = {
   sobol,
   "sobol-natural": sobolNatural,
   niederreiter,
+  faure,
   "interlaced-2": interlaced2,
   "interlaced-3": interlaced3,
   halton,

@@ -40,6 +40,7 @@ interface QmcReference {
     readonly "t_values_first_2^m_points": Record<string, Record<string, number>>;
   };
   readonly niederreiter_base2_gsl: { readonly numerators_2_32: string[][] };
+  readonly faure: Record<string, { readonly base: number; readonly first27_fractions: string[][] }>;
   readonly halton: {
     readonly primes: number[];
     readonly first16_fractions: string[][];

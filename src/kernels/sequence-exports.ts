@@ -99,4 +99,16 @@ export interface SequenceExports {
     stride: number,
     count: number,
   ): void;
+  /** Makes `index` the next point of extensible lattices (layout: assembly/sequences/radical.ts). */
+  radicalSeek(records: number, dimension: number, index: number): void;
+  /** Fills `count` points of extensible lattices from point `index`; `tent` as in `rotationFill`. */
+  radicalFill(
+    records: number,
+    dimension: number,
+    index: number,
+    pointer: number,
+    stride: number,
+    count: number,
+    tent: boolean,
+  ): void;
 }

@@ -2,20 +2,23 @@
  * Rank-1 lattices {k z / n}, k = 0...n - 1 (N. M. Korobov, "The approximate computation of multiple integrals", Doklady
  * Akademii Nauk SSSR 124, 1959, 1207-1210; I. H. Sloan and S. Joe, "Lattice Methods for Multiple Integration", Oxford,
  * 1994), built for one n. The vector z is constructed component by component for the weights w_j = 1/j^2 and n a power of
- * two (numeric/lattice-construction); components do not depend on how many follow.
+ * two (numeric/lattice-construction), once and for all; components do not depend on how many follow.
  *
  * Good for: smooth periodic integrands (orders of 2 and more), smooth ones after `shift+tent`. Bad for: integrands with
  * jumps; the vector favours the first coordinates.
  */
 import type { Kernels } from "../kernels/instance.js";
-import { constructVector, inverseSquareWeights } from "../numeric/lattice-construction.js";
 import type { OpenRequest, PointStream, Seekable, Source } from "./contract.js";
+import { TABLE_DIMENSIONS, TABLE_LOG_SIZE, tableVector } from "./lattice-table.js";
 import { nearestPowerOfTwo } from "./quasi-random.js";
 import { openRotation, ROTATION_RANDOMISATIONS } from "./rotation.js";
 
-const LARGEST_SIZE = 2 ** 20;
+/** The vector of n = 2^m points; one point needs none. */
+const vectorOf = (n: number, dimension: number): Uint32Array =>
+  n === 1 ? new Uint32Array(dimension) : tableVector(Math.log2(n), dimension);
 
-const about = {
+/** What all rank-1 lattices built for one size say of themselves. */
+export const rankOneLattice = {
   family: "quasi-random",
   method: "rank-1 lattice",
   outputBits: 52,
@@ -26,27 +29,15 @@ const about = {
 } as const;
 
 export const lattice: Source = {
-  ...about,
+  ...rankOneLattice,
   id: "lattice",
   title: "Rank-1 lattice, vector component by component with weights 1/j^2",
   citation:
     "D. Nuyens and R. Cools, Fast component-by-component construction of rank-1 lattice rules with a non-prime number of points, Journal of Complexity 22 (2006) 4-28",
-  largestDimension: 1000,
-  nearestSize: (n) => nearestPowerOfTwo(n, LARGEST_SIZE),
-  open: (request, kernels) =>
-    openLattice(lattice, () => vectorOf(request.n, request.dimension), request, kernels),
+  largestDimension: TABLE_DIMENSIONS,
+  nearestSize: (n) => nearestPowerOfTwo(n, 2 ** TABLE_LOG_SIZE),
+  open: (request, kernels) => openLattice(lattice, vectorOf, request, kernels),
 };
-
-/** Vectors built so far in this process: the longest one of each size. */
-const built = new Map<number, Uint32Array>();
-
-function vectorOf(n: number, dimension: number): Uint32Array {
-  const known = built.get(n);
-  if (known !== undefined && known.length >= dimension) return known;
-  const vector = constructVector(n, inverseSquareWeights(dimension));
-  built.set(n, vector);
-  return vector;
-}
 
 /**
  * The lattice of a vector of one's own, for any n. Throws RangeError for a component below 0; larger ones than n are
@@ -60,7 +51,7 @@ export function ownLattice(id: string, vector: readonly bigint[]): Source {
     );
   }
   const source: Source = {
-    ...about,
+    ...rankOneLattice,
     family: "own",
     id,
     title: `Rank-1 lattice with the vector (${vector.slice(0, 6).join(", ")}${vector.length > 6 ? ", ..." : ""})`,
@@ -73,15 +64,16 @@ export function ownLattice(id: string, vector: readonly bigint[]): Source {
   return source;
 }
 
-function openLattice(
+/** Opens a stream of the lattice whose vector `vector` gives for n and the dimension. */
+export function openLattice(
   source: Source,
-  vector: () => ArrayLike<number | bigint>,
+  vector: (n: number, dimension: number) => ArrayLike<number | bigint>,
   request: OpenRequest,
   kernels: Kernels,
 ): PointStream & Seekable {
   const alphas = (dimension: number): bigint[] => {
     const n = BigInt(request.n);
-    const components = vector();
+    const components = vector(request.n, dimension);
     return Array.from({ length: dimension }, (_, j) => {
       const residue = BigInt(components[j] ?? 0) % n;
       return ((residue << 128n) + n - 1n) / n;

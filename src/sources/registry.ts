@@ -4,7 +4,9 @@ import { faure } from "./faure.js";
 import { halton, haltonLeaped } from "./halton.js";
 import { hammersley } from "./hammersley.js";
 import { interlaced2, interlaced3 } from "./interlaced.js";
+import { korobov } from "./korobov.js";
 import { kronecker, kroneckerGolden } from "./kronecker.js";
+import { latticeSequence } from "./lattice-sequence.js";
 import { lattice } from "./lattice.js";
 import {
   drand48,
@@ -51,6 +53,7 @@ import { pcg32 } from "./pcg32.js";
 import { pcg64Dxsm } from "./pcg64-dxsm.js";
 import { pcg64 } from "./pcg64.js";
 import { philox4x32 } from "./philox4x32.js";
+import { polynomialLattice } from "./polynomial-lattice.js";
 import { randu } from "./randu.js";
 import { sfc64 } from "./sfc64.js";
 import { sobol, sobolNatural } from "./sobol.js";
@@ -129,12 +132,15 @@ export type SourceId =
   | "sobol-natural"
   | "niederreiter"
   | "faure"
+  | "polynomial-lattice"
   | "interlaced-2"
   | "interlaced-3"
   | "halton"
   | "halton-leaped"
   | "hammersley"
   | "lattice"
+  | "lattice-sequence"
+  | "korobov"
   | "kronecker"
   | "kronecker-golden"
   | "latin-hypercube"
@@ -205,12 +211,15 @@ const sources: Readonly<Record<SourceId, Source>> = {
   "sobol-natural": sobolNatural,
   niederreiter,
   faure,
+  "polynomial-lattice": polynomialLattice,
   "interlaced-2": interlaced2,
   "interlaced-3": interlaced3,
   halton,
   "halton-leaped": haltonLeaped,
   hammersley,
   lattice,
+  "lattice-sequence": latticeSequence,
+  korobov,
   kronecker,
   "kronecker-golden": kroneckerGolden,
   "latin-hypercube": latinHypercube,

@@ -3,6 +3,8 @@ import { describe, expect, it } from "vitest";
 import { halton, haltonLeaped } from "../../src/sources/halton.js";
 import { hammersley } from "../../src/sources/hammersley.js";
 import { kroneckerGolden } from "../../src/sources/kronecker.js";
+import { inverseSquareWeights, latticeP2 } from "../../src/numeric/lattice-construction.js";
+import { korobov } from "../../src/sources/korobov.js";
 import { digitsOf, pointsOf } from "./points.js";
 
 describe("halton-leaped", () => {
@@ -48,5 +50,26 @@ describe("kronecker-golden", () => {
       const phi = 1 / (pointsOf(kroneckerGolden, { dimension, count: 2 })[1]?.[0] ?? NaN);
       expect(Math.abs(phi ** (dimension + 1) / (phi + 1) - 1)).toBeLessThan(1e-12);
     }
+  });
+});
+
+describe("korobov", () => {
+  it.each([8, 64, 2048])("has the vector (1, a, a^2, ...) mod n, n = %i", (n) => {
+    const second = pointsOf(korobov, { dimension: 12, count: n })[1] ?? [];
+    const vector = second.map((u) => Math.floor(u * n));
+    const multiplier = vector[1] ?? NaN;
+    for (let j = 0; j < 12; j++) {
+      const power = BigInt(multiplier) ** BigInt(j) % BigInt(n);
+      expect(vector[j]).toBe(Number(power));
+    }
+  });
+
+  it("has the least P_2 of all multipliers where all are tried", () => {
+    const weights = inverseSquareWeights(5);
+    const valueOf = (a: number): number =>
+      latticeP2(128, [1, a, a ** 2 % 128, a ** 3 % 128, a ** 4 % 128], weights);
+    const second = pointsOf(korobov, { dimension: 5, count: 128 })[1] ?? [];
+    const least = Math.min(...Array.from({ length: 64 }, (_, i) => valueOf(2 * i + 1)));
+    expect(valueOf(Math.floor((second[1] ?? NaN) * 128)) / least - 1).toBeLessThan(1e-9);
   });
 });

@@ -86,8 +86,9 @@ function fillRow<T>(record: usize, lane: i32, o: usize, left: i32): void {
   store<u64>(record, low, 8);
 }
 
+/** Stores two 64-bit fractions as coordinates; T is f64 with the tent transform and u64 without. */
 @inline
-function put<T>(at: usize, x: v128): void {
+export function put<T>(at: usize, x: v128): void {
   let u = sub(v128.or(i64x2.shr_u(x, 12), i64x2.splat(ONE)), splat(BELOW_ONE));
   // 1 - |2u - 1|, exact: u is an odd multiple of 2^-53
   if (isFloat<T>()) u = sub(splat(1.0), f64x2.abs(sub(add(u, u), splat(1.0))));

@@ -13,7 +13,7 @@
  * root. In that order the sum for all candidates is a cyclic correlation: O(d n log n) in all, O(n) memory.
  */
 import { CyclicCorrelation } from "./fft.js";
-import { primeFactors } from "./primes.js";
+import { factorise, isPrime, powerMod } from "./factor.js";
 
 /** Sizes are below this, so that products of two residues stay exact in doubles. */
 const LARGEST_SIZE = 2 ** 26;
@@ -70,7 +70,7 @@ function orbitsOf(n: number): { generator: number; orbits: Orbit[] } {
  * another n.
  */
 export function constructVector(n: number, weights: Float64Array): Uint32Array {
-  const prime = n > 1 && Number.isInteger(n) && n < LARGEST_SIZE && primeFactors(n)[0] === n;
+  const prime = Number.isInteger(n) && n < LARGEST_SIZE && isPrime(BigInt(n));
   if (!prime && !(n >= 1 && n < LARGEST_SIZE && Number.isInteger(Math.log2(n)))) {
     throw new RangeError(`lattice: expected a power of two or a prime below 2^26 points, found ${n}`);
   }
@@ -213,17 +213,9 @@ export function latticeP2(n: number, vector: ArrayLike<number>, weights: ArrayLi
 
 /** The least primitive root of an odd prime below 2^26 (C. F. Gauss, Disquisitiones arithmeticae, art. 73). */
 function primitiveRoot(prime: number): number {
-  const factors = primeFactors(prime - 1);
-  for (let root = 2; ; root++) {
-    if (factors.every((factor) => power(root, (prime - 1) / factor, prime) !== 1)) return root;
+  const p = BigInt(prime);
+  const factors = [...factorise(p - 1n).keys()];
+  for (let root = 2n; ; root++) {
+    if (factors.every((factor) => powerMod(root, (p - 1n) / factor, p) !== 1n)) return Number(root);
   }
-}
-
-function power(base: number, exponent: number, modulus: number): number {
-  let result = 1;
-  for (let square = base, rest = exponent; rest > 0; rest = Math.floor(rest / 2)) {
-    if (rest % 2 === 1) result = (result * square) % modulus;
-    square = (square * square) % modulus;
-  }
-  return result;
 }

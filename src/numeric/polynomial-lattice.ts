@@ -12,7 +12,7 @@
  */
 import { CyclicCorrelation } from "./fft.js";
 import { powerOfX } from "./gf2-polynomial.js";
-import { primeFactors } from "./primes.js";
+import { factorise } from "./factor.js";
 
 /** A polynomial lattice: its modulus of degree m and its vector. */
 export interface PolynomialLattice {
@@ -80,11 +80,10 @@ function smallest(sums: Float64Array, powers: Uint32Array): number {
 
 /** The least polynomial of degree m modulo which x has order 2^m - 1. */
 function primitivePolynomial(m: number): number {
-  const order = 2 ** m - 1;
-  const factors = order === 1 ? [] : primeFactors(order);
+  const order = 2n ** BigInt(m) - 1n;
+  const factors = [...factorise(order).keys()];
   for (let candidate = 2 ** m + 1; ; candidate += 2) {
-    const modulus = BigInt(candidate);
-    const isOne = (exponent: number): boolean => powerOfX(BigInt(exponent), modulus) === 1n;
+    const isOne = (exponent: bigint): boolean => powerOfX(exponent, BigInt(candidate)) === 1n;
     if (isOne(order) && factors.every((factor) => !isOne(order / factor))) return candidate;
   }
 }

@@ -14,16 +14,3 @@ export function firstPrimes(count: number): Uint32Array {
   }
   return primes;
 }
-
-/** The distinct prime factors of n (2 to 2^53), by trial division; meant for n up to some 2^40. */
-export function primeFactors(n: number): number[] {
-  const factors: number[] = [];
-  let rest = n;
-  for (let divisor = 2; divisor * divisor <= rest; divisor++) {
-    if (rest % divisor !== 0) continue;
-    factors.push(divisor);
-    while (rest % divisor === 0) rest /= divisor;
-  }
-  if (rest > 1) factors.push(rest);
-  return factors;
-}

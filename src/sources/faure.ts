@@ -8,7 +8,7 @@
  * coordinates are covered. The base depends on the number of coordinates.
  */
 import { Matrix } from "ml-matrix";
-import { primeFactors } from "../numeric/primes.js";
+import { isPrime } from "../numeric/factor.js";
 import { checkCapacity } from "./capacity.js";
 import type { DigitalNet } from "./contract.js";
 import { digitsIn, openNetB } from "./netb.js";
@@ -48,7 +48,7 @@ export const faure: DigitalNet = {
 /** The least prime at or above the dimension. */
 function baseFor(dimension: number): number {
   let base = Math.max(2, dimension);
-  while (primeFactors(base)[0] !== base) base++;
+  while (!isPrime(BigInt(base))) base++;
   return base;
 }
 

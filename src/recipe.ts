@@ -8,6 +8,7 @@ import { consensusOf } from "./findings/consensus.js";
 import type { Consensus, Environment, RawCell, StudyRecord, StudySpec } from "./record/types.js";
 import { collectCells, type CellInfo } from "./study/collect.js";
 import type { Executor } from "./study/executor.js";
+import { notesOf } from "./study/notes.js";
 import type { RunnableProblem } from "./study/runnable.js";
 import { confirmationTasks, recordSources, referenceTasks, studyTasks } from "./study/spec.js";
 import type { Task, TaskResult } from "./study/tasks.js";
@@ -52,7 +53,8 @@ export async function runStudy(run: StudyRun): Promise<StudyRecord> {
   const confirmations: Confirmation[] = run.signal.aborted ? [] : cellsOf(run, fresh, results);
 
   const environment = run.environment(!run.signal.aborted);
-  return assembleRecord({ ...measured, environment, confirmations, warnings: run.warnings });
+  const warnings = [...run.warnings, ...notesOf([...tasks, ...fresh], results)];
+  return assembleRecord({ ...measured, environment, confirmations, warnings });
 }
 
 async function runStage(

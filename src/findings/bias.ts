@@ -84,7 +84,8 @@ export function confirmCandidates(
     const origin = origins.get(seriesKey(test));
     const again = fresh.get(seriesKey(test));
     const subject = origin === undefined ? null : subjectOf(origin, series, context);
-    if (again === undefined || subject === null) return untested("not confirmed: the study stopped before");
+    if (again === undefined || subject === null)
+      return untested("not confirmed: there are no fresh replicates");
     return examine({ ...subject, estimates: again.estimates, n: again.n }, true);
   });
   const adjusted = adjust(outcomes, shared ? tested.length : candidates.length);

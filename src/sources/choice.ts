@@ -3,20 +3,14 @@ import type { Kernels } from "../kernels/instance.js";
 import { nearest } from "../numeric/nearest.js";
 import type { SourceSpec } from "../problem/contract.js";
 import { checkCapacity } from "./capacity.js";
-import type { PointStream, Randomisation, Resumable, Seekable, Source } from "./contract.js";
-import type { Key } from "./key.js";
+import type { OpenRequest, OpenStream, Randomisation, Source } from "./contract.js";
 import { isOwnQuasiRandom, parseOwnQuasiRandom } from "./own-quasi-random.js";
 import { parseOwnSource } from "./own-source.js";
 import { checkRandomisations } from "./randomisations.js";
 import { findSource, sourceIds } from "./registry.js";
 
 /** What a stream of a choice is opened with; see `OpenRequest`. */
-export interface ChoiceRequest {
-  readonly dimension: number;
-  readonly n: number;
-  readonly key: Key | null;
-  readonly state?: string;
-}
+export type ChoiceRequest = Omit<OpenRequest, "randomisations">;
 
 /** A source with its randomisations, as chosen by a user. */
 export interface SourceChoice {
@@ -24,12 +18,12 @@ export interface SourceChoice {
   readonly id: string;
   readonly source: Source;
   readonly randomisations: readonly Randomisation[];
-  /** True for an unrandomised quasi-random source: one error, no error bar. */
+  /** True for an unrandomised quasi-random source and for one given starting state: one error, no error bar. */
   readonly deterministic: boolean;
   /** What `parseSource` was given; serialisable, and parsed again it gives the same choice. */
   readonly spec: SourceSpec;
   /** Throws where dimension or n is out of the source's range, or a key is missing. */
-  open(request: ChoiceRequest, kernels: Kernels): PointStream & Partial<Seekable & Resumable>;
+  open(request: ChoiceRequest, kernels: Kernels): OpenStream;
 }
 
 /** The source that `spec` names. Throws with what was found, what is allowed and the nearest known id. */
@@ -68,7 +62,7 @@ function choose(source: Source, randomisations: readonly Randomisation[], spec: 
     id: [source.id, ...randomisations].join("+"),
     source,
     randomisations,
-    deterministic: source.randomisations.length > 0 && randomisations.length === 0,
+    deterministic: source.fixed === true || (source.randomisations.length > 0 && randomisations.length === 0),
     spec,
     open: (request, kernels) => {
       checkCapacity(source, request.dimension, request.n);

@@ -36,6 +36,8 @@ export interface SourceDescription {
   readonly knownStructure: string | null;
   /** False where a key has no effect: such a source gives other points every time, and cannot be resumed or split. */
   readonly repeatable?: false;
+  /** True where a given starting state is part of the source: one replicate, and no error bar. */
+  readonly fixed?: true;
 }
 
 /** What a stream is opened with. */
@@ -49,6 +51,8 @@ export interface OpenRequest {
   readonly key: Key | null;
   /** A starting state in the source's published form; wins over the key. */
   readonly state?: string;
+  /** Which replicate of the whole study this is, 0-based (0 if absent); published seeds are numbered by it. */
+  readonly replicate?: number;
 }
 
 /** A stream of points in kernel memory. */
@@ -74,11 +78,29 @@ export interface Resumable {
   restore(saved: string): void;
 }
 
+/** A stream whose coordinates may be exactly 0 or 1, which others never are. */
+export interface EndpointCounter {
+  /** Coordinates so far that were 0 or 1. */
+  endpointsHit(): number;
+}
+
+/** What `open` gives. */
+export type OpenStream = PointStream & Partial<Seekable & Resumable & EndpointCounter>;
+
+/** How many replicates there are to be had. */
+export interface ReplicateSupply {
+  readonly count: number;
+  /** Why there are no more, in a few words. */
+  readonly why: string;
+}
+
 /** A source: its description and how to open it. Kernel memory is taken from the arena; the caller releases it. */
 export interface Source extends SourceDescription {
   /** The valid size nearest to `n` (at least 1); `n` itself where every size is valid. */
   nearestSize(n: number): number;
-  open(request: OpenRequest, kernels: Kernels): PointStream & Partial<Seekable & Resumable>;
+  open(request: OpenRequest, kernels: Kernels): OpenStream;
+  /** Absent where there is no end of replicates. Throws a RangeError where a run of this form cannot be served at all. */
+  replicateSupply?(dimension: number, n: number): ReplicateSupply;
 }
 
 /** A source whose own integer outputs can be seen, as published. */

@@ -15,7 +15,8 @@ export function refuse(key: string, found: string, allowed: string): never {
   throw new RangeError(`source.${key}: expected ${allowed}, found ${found}`);
 }
 
-function within(key: string, written: Written, least: bigint, most: bigint): bigint {
+/** The whole number at a key below `source`; throws a RangeError outside least...most. */
+export function within(key: string, written: Written, least: bigint, most: bigint): bigint {
   const value = parseInteger(written, `source.${key}`);
   if (value >= least && value <= most) return value;
   const plain = typeof written === "number" || /^-?\d+$/.test(written);

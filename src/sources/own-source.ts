@@ -2,17 +2,19 @@
  * The user's own source, as a mapping in a problem file or inline on the command line:
  *
  *     { name: house, congruential: { modulus: "2^31", multiplier: 65539, increment: 0 },
- *       tuples: successive, endpoint: middle, bits: top 31, seeding: uniform-state }
+ *       tuples: successive, endpoint: middle, bits: top 31, float32: false, seeding: uniform-state }
  *     { name: house, recursive: { modulus: "2^31 - 1", multipliers: [107374182, 0, 0, 0, 104480] } }
  *     { name: house, xorshift: { bits: 64, shifts: [13, -7, 17] } }
  *
  * or a pseudo-random source of the registry in another usage: `{ name: house, source: mt19937, tuples: per-coordinate }`.
+ * `seeding: { published: { base: 1, stride: 1 } }` starts replicate r at the published seed base + r stride; `state: 5489`
+ * is the one state used in production.
  */
 import { z } from "zod";
 import { nearest } from "../numeric/nearest.js";
 import type { Source } from "./contract.js";
 import { bitsOf, type Bits } from "./conversion.js";
-import { ORDERS, ownCongruential, ownRecursive, ownXorshift, refuse } from "./own-recurrence.js";
+import { ORDERS, ownCongruential, ownRecursive, ownXorshift, refuse, within } from "./own-recurrence.js";
 import {
   isPseudoRandom,
   pseudoRandom,
@@ -23,6 +25,9 @@ import {
   type Usage,
 } from "./pseudo-random.js";
 import { findSource, isSourceId, sourceIds } from "./registry.js";
+import { seedOf, UNIFORM_STATE, type Seeding } from "./seeding.js";
+
+const LARGEST_SEED = 2n ** 64n - 1n;
 
 /** Outputs that `strided` may pass over: beyond it a run is nearly all waste. */
 const LARGEST_STRIDE = 4096;
@@ -35,6 +40,15 @@ const recursive = z.strictObject({
   multipliers: z.array(whole).min(ORDERS.least).max(ORDERS.most),
   increment: whole.optional(),
 });
+const publishedSeeds = z.strictObject({ base: whole.optional(), stride: whole.optional() });
+
+/** How a mapping says where replicates start; sources of draws take it too. */
+export const seedingSchema = z.union([
+  z.enum(["uniform-state", "published"]),
+  z.strictObject({ published: publishedSeeds }),
+]);
+export const stateSchema = z.union([z.int().min(0), z.string().min(1)]);
+
 const xorshift = z.strictObject({
   bits: z.union([z.literal(32), z.literal(64)]),
   shifts: z.tuple([z.int(), z.int(), z.int()]),
@@ -56,17 +70,28 @@ export const ownSourceSchema = z.strictObject({
     .string()
     .regex(/^(all|(top|low) \d{1,2})$/)
     .optional(),
-  seeding: z.enum(["uniform-state"]).optional(),
+  float32: z.boolean().optional(),
+  seeding: seedingSchema.optional(),
+  state: stateSchema.optional(),
 });
 
 type Mapping = z.infer<typeof ownSourceSchema>;
 
 /** Keys of the mappings inside the mapping. */
-const INNER: Readonly<Record<string, z.ZodObject>> = { congruential, recursive, xorshift };
+const INNER: Readonly<Record<string, z.ZodObject>> = {
+  congruential,
+  recursive,
+  xorshift,
+  "seeding.published": publishedSeeds,
+};
 
 /** The generator of the mapping stands under one of these. */
 const GENERATORS = ["congruential", "recursive", "xorshift", "source"] as const;
 const ONE_GENERATOR = `one of the keys ${GENERATORS.map((key) => `"${key}"`).join(", ")}`;
+
+export const SEEDING =
+  '"uniform-state", "published" (seeds 1, 2, 3, …) or { published: { base: 1, stride: 1 } }';
+export const STATE = "a starting state in the source's published form";
 
 /** What is allowed at each key, for messages; numbers in a path stand as *. */
 const ALLOWED: Readonly<Record<string, string>> = {
@@ -89,7 +114,12 @@ const ALLOWED: Readonly<Record<string, string>> = {
   tuples: '"successive", "strided k" (like "strided 2") or "per-coordinate"',
   endpoint: '"middle" or "left"',
   bits: '"all", "top b" or "low b" (like "top 31")',
-  seeding: '"uniform-state"',
+  float32: "true or false",
+  seeding: SEEDING,
+  "seeding.published": 'a mapping with "base" and "stride"',
+  "seeding.published.base": "a whole number, the seed of the first replicate",
+  "seeding.published.stride": "a whole number, the step from one replicate's seed to the next",
+  state: STATE,
 };
 
 /** The source that a mapping describes. Throws with the key, what was found and what is allowed. */
@@ -100,6 +130,9 @@ export function parseOwnSource(written: Readonly<Record<string, unknown>>): Sour
   if (isSourceId(mapping.name))
     refuse("name", `"${mapping.name}"`, "a name that no source of the program has");
   const { recurrence, usage } = baseOf(mapping);
+  const seeding = parseSeeding(mapping);
+  const start = seedOf(seeding, 0);
+  if (start !== null) recurrence.stateFromText(start);
   return pseudoRandom(
     { ...recurrence, about: { ...recurrence.about, id: mapping.name } },
     {
@@ -107,6 +140,8 @@ export function parseOwnSource(written: Readonly<Record<string, unknown>>): Sour
       endpoint: mapping.endpoint ?? usage.endpoint,
       bits:
         mapping.bits === undefined ? usage.bits : parseBits(mapping.bits, bitsOf(recurrence.output.modulus)),
+      float32: mapping.float32 ?? false,
+      seeding,
     },
     "own",
   );
@@ -133,6 +168,27 @@ function named(id: string): PseudoRandomSource {
   if (isPseudoRandom(source)) return source;
   const all = sourceIds().filter((candidate) => isPseudoRandom(findSource(candidate)));
   return refuse("source", `"${id}"`, `a pseudo-random source (${all.join(", ")})`);
+}
+
+/** Where replicates start. Throws a RangeError for a stride that would repeat a seed, or a state beside a seeding. */
+export function parseSeeding({
+  seeding,
+  state,
+}: {
+  readonly seeding?: z.infer<typeof seedingSchema> | undefined;
+  readonly state?: z.infer<typeof stateSchema> | undefined;
+}): Seeding {
+  if (state !== undefined) {
+    if (seeding !== undefined) refuse("seeding", JSON.stringify(seeding), "none beside a state");
+    return { kind: "state", text: String(state) };
+  }
+  if (seeding === undefined || seeding === "uniform-state") return UNIFORM_STATE;
+  const { base = 1, stride = 1 } = seeding === "published" ? {} : seeding.published;
+  return {
+    kind: "published",
+    base: within("seeding.published.base", base, 0n, LARGEST_SEED),
+    stride: within("seeding.published.stride", stride, 1n, LARGEST_SEED),
+  };
 }
 
 function parseTuples(written = "successive"): Tuples {

@@ -19,14 +19,18 @@ import type {
   IntegerRequest,
   IntegerSource,
   OpenRequest,
+  OpenStream,
   PointStream,
+  ReplicateSupply,
   Resumable,
   Seekable,
   Source,
   SourceDescription,
 } from "./contract.js";
+import { withEndpoints } from "./endpoints.js";
 import type { Key } from "./key.js";
 import { restoreStates, saveStates } from "./saved-state.js";
+import { seedOf, seedingText, UNIFORM_STATE, validSeeds, type Seeding } from "./seeding.js";
 
 /** A generator's state as 64-bit words, in the layout of its kernel. */
 export type State = readonly bigint[];
@@ -63,9 +67,18 @@ export interface Usage {
   readonly tuples: Tuples;
   readonly endpoint: Endpoint;
   readonly bits: Bits | null;
+  /** Each coordinate rounded to single precision. */
+  readonly float32: boolean;
+  readonly seeding: Seeding;
 }
 
-export const USUAL: Usage = { tuples: { kind: "strided", step: 1 }, endpoint: "middle", bits: null };
+export const USUAL: Usage = {
+  tuples: { kind: "strided", step: 1 },
+  endpoint: "middle",
+  bits: null,
+  float32: false,
+  seeding: UNIFORM_STATE,
+};
 
 /** More coordinates per point than this are refused (common practice, no single source; a point is then 8 MB). */
 export const LARGEST_DIMENSION = 1_000_000;
@@ -89,8 +102,15 @@ export function pseudoRandom(
   usage: Usage = USUAL,
   family: Family = "pseudo-random",
 ): PseudoRandomSource {
+  const { seeding } = usage;
+  const seeds = seedingText(seeding);
   return {
     ...recurrence.about,
+    ...(seeds === null ? {} : { title: `${recurrence.about.title}, ${seeds}` }),
+    ...(seeding.kind === "state" ? { fixed: true as const } : {}),
+    ...(seeding.kind === "published"
+      ? { replicateSupply: (dimension: number) => supplyOfSeeds(recurrence, usage, dimension) }
+      : {}),
     recurrence,
     usage,
     family,
@@ -98,12 +118,17 @@ export function pseudoRandom(
     nesting: "sequence",
     randomisations: [],
     nearestSize: (n) => Math.max(1, Math.round(n)),
-    open: (request, kernels) =>
-      recurrence.advance === undefined
-        ? new Stream(recurrence, usage, request, kernels)
-        : new JumpingStream(recurrence, recurrence.advance.bind(recurrence), usage, request, kernels),
+    open: (request, kernels) => {
+      const stream: OpenStream =
+        recurrence.advance === undefined
+          ? new Stream(recurrence, usage, request, kernels)
+          : new JumpingStream(recurrence, recurrence.advance.bind(recurrence), usage, request, kernels);
+      return usage.float32 || usage.endpoint === "left"
+        ? withEndpoints(stream, usage.float32, kernels)
+        : stream;
+    },
     openIntegers: (request) => {
-      const integers = recurrence.integers(startingState(recurrence, request));
+      const integers = recurrence.integers(startingState(recurrence, seeded(seeding, request)));
       const { bits } = usage;
       return {
         next: bits === null ? () => integers.next().value : () => nextCut(recurrence, bits, integers),
@@ -120,6 +145,40 @@ function nextCut({ output }: Recurrence, bits: Bits, integers: Iterator<bigint, 
   return takeBits(word, bits, bitsOf(output.modulus));
 }
 
+/** The request with the state that the source's seeding names, unless it names one itself. */
+function seeded<R extends IntegerRequest & { readonly replicate?: number }>(seeding: Seeding, request: R): R {
+  const seed = request.state ?? seedOf(seeding, request.replicate ?? 0);
+  return seed === null ? request : { ...request, state: seed };
+}
+
+/**
+ * As many replicates as there are seeds. One stream per coordinate takes the seeds s, s + 1, ...: a stride below the
+ * dimension would hand a coordinate's stream to the next replicate.
+ */
+function supplyOfSeeds(
+  recurrence: Recurrence,
+  { seeding, tuples }: Usage,
+  dimension: number,
+): ReplicateSupply {
+  const { id } = recurrence.about;
+  const perCoordinate = tuples.kind === "per-coordinate";
+  if (seeding.kind === "published" && perCoordinate && seeding.stride < BigInt(dimension)) {
+    throw new RangeError(
+      `source.seeding: expected a stride of at least ${dimension} for source "${id}", whose ${dimension} coordinates take one seed each, found ${seeding.stride}`,
+    );
+  }
+  const valid = (seed: string): boolean => {
+    try {
+      recurrence.stateFromText(perCoordinate ? nextSeed(seed, dimension - 1) : seed);
+      return true;
+    } catch (error) {
+      if (error instanceof RangeError) return false;
+      throw error;
+    }
+  };
+  return { count: validSeeds(seeding, valid), why: "it has no more valid seeds" };
+}
+
 function startingState(recurrence: Recurrence, { key, state }: IntegerRequest): State {
   if (state !== undefined) return recurrence.stateFromText(state);
   if (key !== null) return recurrence.stateFromKey(key);
@@ -127,7 +186,8 @@ function startingState(recurrence: Recurrence, { key, state }: IntegerRequest): 
 }
 
 /** One starting state, or one per coordinate: from keys below the stream's, or from published seeds s, s + 1, ... */
-function startingStates(recurrence: Recurrence, usage: Usage, request: OpenRequest): readonly State[] {
+function startingStates(recurrence: Recurrence, usage: Usage, asked: OpenRequest): readonly State[] {
+  const request = seeded(usage.seeding, asked);
   if (usage.tuples.kind === "strided") return [startingState(recurrence, request)];
   return Array.from({ length: request.dimension }, (_, j) => {
     if (request.state !== undefined) return recurrence.stateFromText(nextSeed(request.state, j));

@@ -3,8 +3,9 @@ import { estimatorOf } from "../estimators/registry.js";
 import { parseSource, type SourceChoice } from "../sources/choice.js";
 import { makeKey } from "../sources/key.js";
 import { Integrator } from "./integrator.js";
+import { watchOpening } from "./opening.js";
 import type { RunnableProblem } from "./runnable.js";
-import type { Offence, ReplicateResult, Task, TaskResult } from "./tasks.js";
+import type { Offence, Opening, ReplicateResult, Task, TaskResult } from "./tasks.js";
 
 /** Keeps what a thread needs again: one integrator per problem, one parsed source per id. */
 export class TaskRunner {
@@ -25,6 +26,8 @@ export class TaskRunner {
     const n = task.sizes.at(-1) ?? 0;
     const results: ReplicateResult[] = [];
     const offences: Offence[] = [];
+    const openings: Opening[] = [];
+    let endpoints = 0;
     const { arena } = integrator.kernels;
     const mark = arena.mark();
     for (let replicate = task.from; replicate < task.to; replicate++) {
@@ -38,11 +41,14 @@ export class TaskRunner {
         ...(task.perSize ? { n } : {}),
       });
       const stream = source.open(
-        { dimension, n, key: source.deterministic ? null : key },
+        { dimension, n, key: source.deterministic ? null : key, replicate: task.before + replicate },
         integrator.kernels,
       );
+      const opening = watchOpening(stream, integrator.kernels);
       const integration = integrator.run(stream, task.sizes);
       arena.release(mark);
+      openings.push({ replicate, digest: opening() });
+      endpoints += stream.endpointsHit?.() ?? 0;
       if (integration.offending !== null) offences.push({ replicate, ...integration.offending });
       for (const size of integration.sizes) {
         const estimates = estimators.map((estimator) => estimator.estimate(size.moments));
@@ -56,7 +62,8 @@ export class TaskRunner {
       }
     }
     const points = n * (task.to - task.from);
-    return { id: task.id, results, offences, points, seconds: (performance.now() - started) / 1000 };
+    const seconds = (performance.now() - started) / 1000;
+    return { id: task.id, results, offences, openings, endpoints, points, seconds };
   }
 
   #problem(id: string): RunnableProblem {

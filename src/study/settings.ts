@@ -5,6 +5,7 @@ import { resolveSettings, settingValues, type ResolvedSettings } from "../proble
 import type { StudySpec } from "../record/types.js";
 import { estimatorIds } from "../estimators/registry.js";
 import { parseSource, type SourceChoice } from "../sources/choice.js";
+import { validSizes } from "./spec.js";
 
 /** A problem with the settings of the suite around it. */
 export interface SuiteProblem {
@@ -41,6 +42,9 @@ export function buildSpec(entries: readonly SuiteProblem[], flags: StudySettings
     usableSources(problem, (settings[i] as (typeof settings)[number]).sources.map(parseSource), warnings),
   );
   const at = (i: number) => settings[i] as (typeof settings)[number];
+  entries.forEach(({ problem }, i) => {
+    for (const choice of sources[i] ?? []) checkSupply(problem, choice, at(i).sizes, at(i).replicates);
+  });
   const spec: StudySpec = {
     problems: entries.map(({ problem }) => problem),
     sources: perProblem((i) => (sources[i] ?? []).map((choice) => choice.spec)),
@@ -99,6 +103,17 @@ function usableSources(problem: Problem, asked: readonly SourceChoice[], warning
     );
   }
   return usable;
+}
+
+/** Throws where a source has fewer replicates of the largest size than the study takes. */
+function checkSupply(problem: Problem, choice: SourceChoice, sizes: readonly number[], asked: number): void {
+  if (choice.deterministic) return;
+  const n = Math.max(...validSizes(choice, sizes));
+  const supply = choice.source.replicateSupply?.(problem.dimension, n);
+  if (supply === undefined || supply.count >= asked) return;
+  throw new RangeError(
+    `replicates: source "${choice.id}" has ${supply.count} of ${n} points in ${problem.dimension} coordinates (${supply.why}), but ${asked} are asked for by "${problem.id}"; take fewer replicates or points (--replicates, --sizes)`,
+  );
 }
 
 function common(

@@ -62,7 +62,7 @@ export function studyTasks(spec: StudySpec): Task[] {
   return rows(spec).flatMap((row) => {
     const replicates = row.choice.deterministic ? 1 : (spec.replicates[row.problem.id] ?? 1);
     const sizes = sizesFor(spec, row.problem, row.choice);
-    return planTasks({ ...request(spec, row), purpose: "study", replicates, sizes });
+    return planTasks({ ...request(spec, row), purpose: "study", replicates, sizes, before: 0 });
   });
 }
 
@@ -77,7 +77,8 @@ export function referenceTasks(spec: StudySpec): Task[] {
         const row = { problem, choice, spec: source };
         const replicates = spec.replicates[problem.id] ?? 1;
         const estimators = ["crude"];
-        return planTasks({ ...request(spec, row), estimators, purpose: "reference", replicates, sizes: [n] });
+        const own = { estimators, purpose: "reference" as const, replicates, sizes: [n], before: 0 };
+        return planTasks({ ...request(spec, row), ...own });
       }),
     );
 }
@@ -90,7 +91,13 @@ export interface ConfirmationRequest {
   readonly n: number;
 }
 
-/** The second stage: fresh keys for the candidates, `replicates` of them. */
+/** Fewer fresh replicates than this confirm nothing. */
+const FEWEST_FRESH = 32;
+
+/**
+ * The second stage: fresh keys for the candidates, `replicates` of them, or as many as a source has left (draws from a
+ * file come to an end); a candidate without them stays unconfirmed.
+ */
 export function confirmationTasks(
   spec: StudySpec,
   candidates: readonly ConfirmationRequest[],
@@ -102,7 +109,13 @@ export function confirmationTasks(
     const sizes = [...new Set(wanted(row).map((c) => c.n))].sort((a, b) => a - b);
     const estimators = [...new Set(wanted(row).map((c) => c.estimator))];
     if (sizes.length === 0) return [];
-    return planTasks({ ...request(spec, row), estimators, purpose: "confirmation", replicates, sizes });
+    const before = spec.replicates[row.problem.id] ?? 1;
+    const largest = Math.max(...sizesFor(spec, row.problem, row.choice));
+    const supply = row.choice.source.replicateSupply?.(row.problem.dimension, largest).count ?? Infinity;
+    const fresh = Math.min(replicates, supply - before);
+    if (fresh < FEWEST_FRESH) return [];
+    const own = { estimators, purpose: "confirmation" as const, replicates: fresh, sizes, before };
+    return planTasks({ ...request(spec, row), ...own });
   });
 }
 

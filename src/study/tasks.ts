@@ -21,6 +21,8 @@ export interface Task {
   readonly sizes: readonly number[];
   /** True where the points are built for one size, which then is part of the key. */
   readonly perSize: boolean;
+  /** Replicates of the same problem x source that came before replicate 0 of this purpose. */
+  readonly before: number;
 }
 
 /** What one replicate gives at one size. */
@@ -41,11 +43,20 @@ export interface Offence {
   readonly value: string;
 }
 
+export interface Opening {
+  readonly replicate: number;
+  readonly digest: string;
+}
+
 export interface TaskResult {
   readonly id: string;
   readonly results: readonly ReplicateResult[];
   /** One for each replicate that met a non-finite value. */
   readonly offences: readonly Offence[];
+  /** For each replicate: SHA-256 of its first coordinates, by which repeated replicates are found. */
+  readonly openings: readonly Opening[];
+  /** Coordinates that were exactly 0 or 1, of sources where they may be. */
+  readonly endpoints: number;
   /** Points evaluated, and the seconds it took, start to end of the task. */
   readonly points: number;
   readonly seconds: number;
@@ -66,12 +77,24 @@ export interface PlanRequest {
   readonly replicates: number;
   /** Valid, distinct, ascending. */
   readonly sizes: readonly number[];
+  readonly before: number;
 }
 
 /** The tasks of one problem x source. */
 export function planTasks(request: PlanRequest): Task[] {
-  const { problem, dimension, source, sourceId, perSize, estimators, purpose, seed, replicates, sizes } =
-    request;
+  const {
+    problem,
+    dimension,
+    source,
+    sourceId,
+    perSize,
+    estimators,
+    purpose,
+    seed,
+    replicates,
+    sizes,
+    before,
+  } = request;
   const passes = perSize ? sizes.map((n) => [n]) : [sizes];
   return passes.flatMap((pass) => {
     const coordinates = Math.max(1, pass.at(-1) ?? 1) * dimension;
@@ -93,6 +116,7 @@ export function planTasks(request: PlanRequest): Task[] {
         to,
         sizes: pass,
         perSize,
+        before,
       });
     }
     return tasks;

@@ -141,7 +141,7 @@ describe("the user's own source", () => {
     ],
     [
       { name: "house", congruental: house },
-      'source: unknown key "congruental", did you mean "congruential"?; allowed are name, congruential, recursive, xorshift, source, tuples, endpoint, bits, seeding',
+      'source: unknown key "congruental", did you mean "congruential"?; allowed are name, congruential, recursive, xorshift, source, tuples, endpoint, bits, float32, seeding, state',
     ],
     [
       { name: "house", congruential: { ...house, modulo: 3 } },

@@ -31,6 +31,15 @@ const own: Readonly<Record<string, SourceSpec>> = {
   "low 8 bits": { ...congruential("2^32", 1664525, 1013904223), bits: "low 8" },
   "low 60 bits": { name: "house", source: "xoshiro256++", bits: "low 60" },
   "left endpoint": { name: "house", source: "mt19937", endpoint: "left" },
+  "single precision": { name: "house", source: "pcg64", float32: true },
+  "published seeds": { name: "house", source: "mt19937", seeding: "published" },
+  "published seeds, per coordinate": {
+    name: "house",
+    source: "minstd-16807",
+    tuples: "per-coordinate",
+    seeding: { published: { base: 100, stride: 7 } },
+  },
+  "one given state": { name: "house", source: "mt19937", state: 5489 },
   "left endpoint, prime modulus": { ...congruential("2^31 - 1", 48271, 1), endpoint: "left" },
 };
 

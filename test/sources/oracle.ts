@@ -14,7 +14,12 @@ export function* wordsOf(recurrence: Recurrence, state: readonly bigint[]): Gene
 }
 
 /** The double that a word must become. */
-export function coordinateOf(word: bigint, { output }: Recurrence, { bits, endpoint }: Usage): number {
+export function coordinateOf(word: bigint, recurrence: Recurrence, usage: Usage): number {
+  const u = doubleOf(word, recurrence, usage);
+  return usage.float32 ? Math.fround(u) : u;
+}
+
+function doubleOf(word: bigint, { output }: Recurrence, { bits, endpoint }: Usage): number {
   const { modulus, zeroless } = output;
   const length = (modulus - 1n).toString(2).length;
   const half = endpoint === "left" ? 0 : 0.5;

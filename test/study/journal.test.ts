@@ -19,6 +19,8 @@ afterEach(() => {
 const result = (id: string, estimate: number): TaskResult => ({
   id,
   results: [{ replicate: 0, n: 64, estimates: [estimate], withinVariances: [null], nonFinite: 0 }],
+  openings: [{ replicate: 0, digest: "" }],
+  endpoints: 0,
   offences: [{ replicate: 0, index: 3, inputs: [0.25, Number.NEGATIVE_INFINITY], value: "NaN" }],
   points: 64,
   seconds: 0.125,

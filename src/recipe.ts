@@ -9,6 +9,7 @@ import type { Consensus, Environment, RawCell, StudyRecord, StudySpec } from "./
 import { collectCells, type CellInfo } from "./study/collect.js";
 import type { Executor } from "./study/executor.js";
 import { notesOf } from "./study/notes.js";
+import { RepetitionWatch } from "./study/opening.js";
 import type { RunnableProblem } from "./study/runnable.js";
 import { confirmationTasks, recordSources, referenceTasks, studyTasks } from "./study/spec.js";
 import type { Task, TaskResult } from "./study/tasks.js";
@@ -37,19 +38,20 @@ export interface StudyRun {
 export async function runStudy(run: StudyRun): Promise<StudyRecord> {
   const { spec } = run;
   const results = new Map(run.journal.done);
+  const watch = new RepetitionWatch(spec.problems);
 
   const references = referenceTasks(spec);
-  if (references.length > 0) await runStage(run, "reference", references, results);
+  if (references.length > 0) await runStage(run, "reference", references, results, watch);
   const consensus = formConsensus(spec, cellsOf(run, references, results));
 
   const tasks = studyTasks(spec);
-  await runStage(run, "study", tasks, results);
+  await runStage(run, "study", tasks, results, watch);
   const rawCells = cellsOf(run, tasks, results);
   const measured = { spec, problems: spec.problems, sources: recordSources(spec), rawCells, consensus };
 
   const candidates = run.signal.aborted ? [] : candidatesOf(measured);
   const fresh = confirmationTasks(spec, candidates, CONFIRMATION_REPLICATES);
-  if (fresh.length > 0) await runStage(run, "confirmation", fresh, results);
+  if (fresh.length > 0) await runStage(run, "confirmation", fresh, results, watch);
   const confirmations: Confirmation[] = run.signal.aborted ? [] : cellsOf(run, fresh, results);
 
   const environment = run.environment(!run.signal.aborted);
@@ -62,7 +64,12 @@ async function runStage(
   title: string,
   tasks: readonly Task[],
   results: Map<string, TaskResult>,
+  watch: RepetitionWatch,
 ): Promise<void> {
+  for (const task of tasks) {
+    const known = results.get(task.id);
+    if (known !== undefined) watch.add(task, known);
+  }
   const open = tasks.filter((task) => !results.has(task.id));
   const dimensions = new Map(run.spec.problems.map(({ id, dimension }) => [id, dimension]));
   const work = (task: Task): number => workOf(task) * (dimensions.get(task.problem) ?? 1);
@@ -74,9 +81,11 @@ async function runStage(
   await run.executor.run(
     open,
     (result) => {
+      const task = byId.get(result.id) as Task;
+      watch.add(task, result);
       results.set(result.id, result);
       run.journal.add(result);
-      stage.advance(work(byId.get(result.id) as Task));
+      stage.advance(work(task));
     },
     run.signal,
   );

@@ -1,6 +1,7 @@
 /** The table of commands: help and the check of flags come from it; bodies are imported when they run. */
 import type { Options } from "yargs";
 import type { Command } from "./command.js";
+import { DRAW_FORMATS } from "../sources/draws/formats.js";
 
 const text = (describe: string): Options => ({ type: "string", requiresArg: true, describe });
 const flag = (describe: string): Options => ({ type: "boolean", describe });
@@ -8,6 +9,7 @@ const flag = (describe: string): Options => ({ type: "boolean", describe });
 const json = flag("print one JSON document instead of a table");
 const seed = text("seed of the study (a whole number)");
 const source = text("a source: id, inline mapping, or @file.yaml; repeatable");
+const allowPrograms = flag("start the programs that sources of your own name; they run with your rights");
 const dimension: Options = { ...text("coordinates per point"), alias: "dimensions" };
 
 const studySettings = {
@@ -38,6 +40,7 @@ export const commands: readonly Command[] = [
       threads: text("worker threads (default: all processors)"),
       resume: flag("go on with an interrupted run of the same study"),
       replace: flag("overwrite a report folder that holds another study"),
+      "allow-programs": allowPrograms,
       "dry-run": flag("print tasks and expected time, run nothing"),
       undecided: {
         ...text("what an undecided verdict of what is in use does to the exit code"),
@@ -74,9 +77,10 @@ export const commands: readonly Command[] = [
       state: text("the source's own starting state in published form, or @file"),
       format: {
         ...text("form of the output"),
-        choices: ["csv", "f64le", "u64le", "u32le", "integers"],
+        choices: ["csv", "integers", ...DRAW_FORMATS],
         default: "csv",
       },
+      "allow-programs": allowPrograms,
     },
     load: () => import("./commands/points.js"),
   },

@@ -5,6 +5,7 @@
 import { performance } from "node:perf_hooks";
 import { jsonText } from "../record/json.js";
 import type { StudySpec } from "../record/types.js";
+import { parseSource } from "../sources/choice.js";
 import type { RunnableProblem } from "../study/runnable.js";
 import { timeText } from "../study/progress.js";
 import { TaskRunner } from "../study/run-task.js";
@@ -17,7 +18,8 @@ interface Row {
   readonly source: string;
   readonly tasks: number;
   readonly points: number;
-  readonly seconds: number;
+  /** null where a pilot would use up draws or start a program. */
+  readonly seconds: number | null;
 }
 
 /** Points of the timed pilot run; one run before it is not timed, so that compilation is not counted. */
@@ -42,10 +44,10 @@ export function dryRun(
     // The last task has the largest size, where most of the points are.
     const last = tasks.at(-1) as Task;
     const points = tasks.reduce((total, task) => total + pointsOf(task), 0);
-    const seconds = points * secondsPerPoint(runner, last);
+    const seconds = canPilot(last) ? points * secondsPerPoint(runner, last) : null;
     return { problem: last.problem, source: last.sourceId, tasks: tasks.length, points, seconds };
   });
-  const total = rows.reduce((sum, row) => sum + row.seconds, 0) / threads;
+  const total = rows.reduce((sum, row) => sum + (row.seconds ?? 0), 0) / threads;
   if (json) return `${jsonText({ rows, threads, seconds: total }, 2)}\n`;
   const table = textTable(
     [
@@ -60,12 +62,17 @@ export function dryRun(
       r.source,
       String(r.tasks),
       r.points.toLocaleString("en"),
-      timeText(r.seconds * 1000),
+      r.seconds === null ? "not timed" : timeText(r.seconds * 1000),
     ]),
   );
   const tasks = rows.reduce((sum, row) => sum + row.tasks, 0);
   const end = `${tasks} tasks, about ${timeText(total * 1000)} on ${threads} ${threads === 1 ? "thread" : "threads"}, and up to 256 more replicates for each bias that needs confirming.`;
   return `${table.join("\n")}\n${end}\n`;
+}
+
+function canPilot(task: Task): boolean {
+  const { program, singlePass } = parseSource(task.source).source;
+  return program === undefined && singlePass !== true;
 }
 
 function secondsPerPoint(runner: TaskRunner, task: Task): number {

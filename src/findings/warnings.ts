@@ -58,6 +58,9 @@ function sourceWarnings(source: RecordSource, problem: Problem, last: Cell): str
       );
     }
   }
+  if (source.repeatable === false) {
+    texts.push(`${source.id}: cannot be repeated: another run has other points`);
+  }
   const replicates = last.replicates;
   if (source.family === "pseudo-random" && source.period !== null && !source.deterministic) {
     const coincidences = (replicates * (replicates - 1)) / 2 / Number(source.period);

@@ -6,6 +6,7 @@ import { SUITE_FILE, shippedFolder, shippedProblemFile, shippedSuites } from "./
 import { checkProblem, checkSuite } from "./check.js";
 import type { Problem, StudySettings } from "./contract.js";
 import { parseYaml, readText } from "./document.js";
+import { placeDraws } from "./draws-folder.js";
 import type { YamlDocument } from "./document.js";
 import { ProblemError, fileError } from "./errors.js";
 import type { ProblemIssue } from "./errors.js";
@@ -67,7 +68,8 @@ async function readSuite(folder: string, check?: SourceCheck): Promise<Suite | n
   }
   if (issues.length > 0) throw new ProblemError(issues);
   const name = basename(resolve(folder));
-  return { name, folder, title: title ?? name, about: about?.trim() ?? "", study, problems };
+  const placed = placeDraws(study, document, folder);
+  return { name, folder, title: title ?? name, about: about?.trim() ?? "", study: placed, problems };
 }
 
 async function readProblem(file: string, suite: Suite | null, check?: SourceCheck): Promise<LoadedProblem> {
@@ -79,7 +81,12 @@ async function readProblem(file: string, suite: Suite | null, check?: SourceChec
     );
   }
   const document = parseYaml(file, await readText(file));
-  return { problem: await checkProblem(document, id, check), document, suite };
+  const problem = await checkProblem(document, id, check);
+  return {
+    problem: { ...problem, study: placeDraws(problem.study, document, dirname(file)) },
+    document,
+    suite,
+  };
 }
 
 /** Loads one problem file, with the suite.yaml beside it if there is one. Throws ProblemError with all findings. */

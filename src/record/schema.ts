@@ -76,6 +76,7 @@ const source = z.strictObject({
   knownStructure: orNull(text),
   deterministic: z.boolean(),
   randomisations: z.array(text),
+  repeatable: z.literal(false).optional(),
 });
 
 const nonFinite = z.strictObject({

@@ -36,7 +36,7 @@ export interface Environment {
 }
 
 /** A source as the record describes it. */
-export interface RecordSource extends Omit<SourceDescription, "id" | "period" | "randomisations"> {
+export interface RecordSource extends Omit<SourceDescription, "id" | "period" | "randomisations" | "fixed"> {
   /** Canonical id, randomisations included. */
   readonly id: string;
   /** Decimal digits, or null. */

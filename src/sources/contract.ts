@@ -53,6 +53,8 @@ export interface OpenRequest {
   readonly state?: string;
   /** Which replicate of the whole study this is, 0-based (0 if absent); published seeds are numbered by it. */
   readonly replicate?: number;
+  /** Whether the command line allowed programs to be started; false if absent. */
+  readonly allowPrograms?: boolean;
 }
 
 /** A stream of points in kernel memory. */
@@ -84,14 +86,21 @@ export interface EndpointCounter {
   endpointsHit(): number;
 }
 
+/** A stream that holds something beside memory (a file, a process) until it is closed. */
+export interface Closable {
+  close(): void;
+}
+
 /** What `open` gives. */
-export type OpenStream = PointStream & Partial<Seekable & Resumable & EndpointCounter>;
+export type OpenStream = PointStream & Partial<Seekable & Resumable & EndpointCounter & Closable>;
 
 /** How many replicates there are to be had. */
 export interface ReplicateSupply {
   readonly count: number;
   /** Why there are no more, in a few words. */
   readonly why: string;
+  /** False where a study can be served but no second look at it: the draws pass by once. */
+  readonly fresh?: false;
 }
 
 /** A source: its description and how to open it. Kernel memory is taken from the arena; the caller releases it. */
@@ -101,6 +110,12 @@ export interface Source extends SourceDescription {
   open(request: OpenRequest, kernels: Kernels): OpenStream;
   /** Absent where there is no end of replicates. Throws a RangeError where a run of this form cannot be served at all. */
   replicateSupply?(dimension: number, n: number): ReplicateSupply;
+  /** True where replicates can only be read one after the other, by one task. */
+  readonly singlePass?: boolean;
+  /** The program that opening starts, which needs the leave of the command line. */
+  readonly program?: { readonly command: string; readonly folder: string };
+  /** The message for two replicates that begin alike, where that is an error; absent where it is a warning. */
+  repetition?(first: number, second: number, dimension: number, n: number): string;
 }
 
 /** A source whose own integer outputs can be seen, as published. */

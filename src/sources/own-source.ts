@@ -7,30 +7,35 @@
  *     { name: house, xorshift: { bits: 64, shifts: [13, -7, 17] } }
  *
  * or a pseudo-random source of the registry in another usage: `{ name: house, source: mt19937, tuples: per-coordinate }`.
+ * A mapping with `draws` takes them from outside (draws/own-draws.ts).
  * `seeding: { published: { base: 1, stride: 1 } }` starts replicate r at the published seed base + r stride; `state: 5489`
  * is the one state used in production.
  */
 import { z } from "zod";
 import { nearest } from "../numeric/nearest.js";
 import type { Source } from "./contract.js";
-import { bitsOf, type Bits } from "./conversion.js";
-import { ORDERS, ownCongruential, ownRecursive, ownXorshift, refuse, within } from "./own-recurrence.js";
+import { bitsOf } from "./conversion.js";
+import { DRAW_FORMATS } from "./draws/formats.js";
+import { drawsSchema, ownDraws } from "./draws/own-draws.js";
+import { ORDERS, ownCongruential, ownRecursive, ownXorshift, refuse } from "./own-recurrence.js";
+import {
+  parseBits,
+  parseSeeding,
+  parseTuples,
+  publishedSeeds,
+  seedingSchema,
+  stateSchema,
+} from "./own-usage.js";
 import {
   isPseudoRandom,
   pseudoRandom,
   USUAL,
   type PseudoRandomSource,
   type Recurrence,
-  type Tuples,
   type Usage,
 } from "./pseudo-random.js";
 import { findSource, isSourceId, sourceIds } from "./registry.js";
-import { seedOf, UNIFORM_STATE, type Seeding } from "./seeding.js";
-
-const LARGEST_SEED = 2n ** 64n - 1n;
-
-/** Outputs that `strided` may pass over: beyond it a run is nearly all waste. */
-const LARGEST_STRIDE = 4096;
+import { seedOf } from "./seeding.js";
 
 const whole = z.union([z.number(), z.string()]);
 
@@ -40,15 +45,6 @@ const recursive = z.strictObject({
   multipliers: z.array(whole).min(ORDERS.least).max(ORDERS.most),
   increment: whole.optional(),
 });
-const publishedSeeds = z.strictObject({ base: whole.optional(), stride: whole.optional() });
-
-/** How a mapping says where replicates start; sources of draws take it too. */
-export const seedingSchema = z.union([
-  z.enum(["uniform-state", "published"]),
-  z.strictObject({ published: publishedSeeds }),
-]);
-export const stateSchema = z.union([z.int().min(0), z.string().min(1)]);
-
 const xorshift = z.strictObject({
   bits: z.union([z.literal(32), z.literal(64)]),
   shifts: z.tuple([z.int(), z.int(), z.int()]),
@@ -61,6 +57,7 @@ export const ownSourceSchema = z.strictObject({
   recursive: recursive.optional(),
   xorshift: xorshift.optional(),
   source: z.string().optional(),
+  draws: drawsSchema.optional(),
   tuples: z
     .string()
     .regex(/^(successive|per-coordinate|strided \d{1,5})$/)
@@ -82,16 +79,13 @@ const INNER: Readonly<Record<string, z.ZodObject>> = {
   congruential,
   recursive,
   xorshift,
+  draws: drawsSchema,
   "seeding.published": publishedSeeds,
 };
 
 /** The generator of the mapping stands under one of these. */
-const GENERATORS = ["congruential", "recursive", "xorshift", "source"] as const;
+const GENERATORS = ["congruential", "recursive", "xorshift", "source", "draws"] as const;
 const ONE_GENERATOR = `one of the keys ${GENERATORS.map((key) => `"${key}"`).join(", ")}`;
-
-export const SEEDING =
-  '"uniform-state", "published" (seeds 1, 2, 3, …) or { published: { base: 1, stride: 1 } }';
-export const STATE = "a starting state in the source's published form";
 
 /** What is allowed at each key, for messages; numbers in a path stand as *. */
 const ALLOWED: Readonly<Record<string, string>> = {
@@ -111,15 +105,21 @@ const ALLOWED: Readonly<Record<string, string>> = {
   "xorshift.shifts": "three whole numbers, positive to the left and negative to the right",
   "xorshift.shifts.*": "a whole number, positive to the left and negative to the right",
   source: "the id of a pseudo-random source",
+  draws: 'a mapping with "format" and "file" or "program"',
+  "draws.format": `one of ${DRAW_FORMATS.join(", ")}`,
+  "draws.file": "the path of a file or FIFO of draws",
+  "draws.program": "a list of texts, the program first and then its arguments",
+  "draws.program.*": "a text",
+  "draws.folder": "the folder that paths are relative to",
   tuples: '"successive", "strided k" (like "strided 2") or "per-coordinate"',
   endpoint: '"middle" or "left"',
   bits: '"all", "top b" or "low b" (like "top 31")',
   float32: "true or false",
-  seeding: SEEDING,
+  seeding: '"uniform-state", "published" (seeds 1, 2, 3, …) or { published: { base: 1, stride: 1 } }',
   "seeding.published": 'a mapping with "base" and "stride"',
   "seeding.published.base": "a whole number, the seed of the first replicate",
   "seeding.published.stride": "a whole number, the step from one replicate's seed to the next",
-  state: STATE,
+  state: "a starting state in the source's published form",
 };
 
 /** The source that a mapping describes. Throws with the key, what was found and what is allowed. */
@@ -129,6 +129,10 @@ export function parseOwnSource(written: Readonly<Record<string, unknown>>): Sour
   const mapping = result.data;
   if (isSourceId(mapping.name))
     refuse("name", `"${mapping.name}"`, "a name that no source of the program has");
+  if (mapping.draws !== undefined) {
+    onlyGenerator(mapping);
+    return ownDraws({ ...mapping, draws: mapping.draws });
+  }
   const { recurrence, usage } = baseOf(mapping);
   const seeding = parseSeeding(mapping);
   const start = seedOf(seeding, 0);
@@ -149,14 +153,18 @@ export function parseOwnSource(written: Readonly<Record<string, unknown>>): Sour
 
 /** The generator and, for one of the registry, how it is used there. */
 function baseOf(mapping: Mapping): { recurrence: Recurrence; usage: Usage } {
-  const given = GENERATORS.filter((key) => mapping[key] !== undefined);
+  onlyGenerator(mapping);
   const { name, congruential, recursive, xorshift, source } = mapping;
-  if (given.length > 1) refuseGenerators(given.map((key) => `"${key}"`).join(" and "));
   if (source !== undefined) return named(source);
   if (recursive !== undefined) return { recurrence: ownRecursive(name, recursive), usage: USUAL };
   if (xorshift !== undefined) return { recurrence: ownXorshift(name, xorshift), usage: USUAL };
   if (congruential !== undefined) return { recurrence: ownCongruential(name, congruential), usage: USUAL };
   return refuseGenerators("none");
+}
+
+function onlyGenerator(mapping: Mapping): void {
+  const given = GENERATORS.filter((key) => mapping[key] !== undefined);
+  if (given.length > 1) refuseGenerators(given.map((key) => `"${key}"`).join(" and "));
 }
 
 function refuseGenerators(found: string): never {
@@ -168,42 +176,6 @@ function named(id: string): PseudoRandomSource {
   if (isPseudoRandom(source)) return source;
   const all = sourceIds().filter((candidate) => isPseudoRandom(findSource(candidate)));
   return refuse("source", `"${id}"`, `a pseudo-random source (${all.join(", ")})`);
-}
-
-/** Where replicates start. Throws a RangeError for a stride that would repeat a seed, or a state beside a seeding. */
-export function parseSeeding({
-  seeding,
-  state,
-}: {
-  readonly seeding?: z.infer<typeof seedingSchema> | undefined;
-  readonly state?: z.infer<typeof stateSchema> | undefined;
-}): Seeding {
-  if (state !== undefined) {
-    if (seeding !== undefined) refuse("seeding", JSON.stringify(seeding), "none beside a state");
-    return { kind: "state", text: String(state) };
-  }
-  if (seeding === undefined || seeding === "uniform-state") return UNIFORM_STATE;
-  const { base = 1, stride = 1 } = seeding === "published" ? {} : seeding.published;
-  return {
-    kind: "published",
-    base: within("seeding.published.base", base, 0n, LARGEST_SEED),
-    stride: within("seeding.published.stride", stride, 1n, LARGEST_SEED),
-  };
-}
-
-function parseTuples(written = "successive"): Tuples {
-  if (written === "per-coordinate") return { kind: "per-coordinate" };
-  const step = written === "successive" ? 1 : Number(written.slice("strided ".length));
-  if (step >= 1 && step <= LARGEST_STRIDE) return { kind: "strided", step };
-  return refuse("tuples", `"${written}"`, `"strided k" with k from 1 to ${LARGEST_STRIDE}`);
-}
-
-function parseBits(written: string, available: number): Bits | null {
-  const [end, digits] = written.split(" ");
-  if (end !== "top" && end !== "low") return null;
-  const count = Number(digits);
-  if (count >= 1 && count <= available) return { end, count };
-  return refuse("bits", `"${end} ${count}"`, `1 to ${available} bits (an output has ${available})`);
 }
 
 /** One message for what zod found first. */

@@ -14,9 +14,17 @@ export interface Executor {
   close(): Promise<void>;
 }
 
+/** What the command line allowed beside reading and computing. */
+export interface Leave {
+  /** Users' programs may be started. */
+  readonly allowPrograms: boolean;
+}
+
+const NO_LEAVE: Leave = { allowPrograms: false };
+
 /** Runs tasks one after the other in this thread: for tests and for the library. */
-export function inProcess(problems: readonly RunnableProblem[]): Executor {
-  const runner = new TaskRunner(problems);
+export function inProcess(problems: readonly RunnableProblem[], leave: Leave = NO_LEAVE): Executor {
+  const runner = new TaskRunner(problems, leave.allowPrograms);
   return {
     async run(tasks, done, signal) {
       for (const task of tasks) {
@@ -30,13 +38,17 @@ export function inProcess(problems: readonly RunnableProblem[]): Executor {
 }
 
 /** Runs tasks on worker threads. Two tasks a thread are in flight, so that no thread waits and an interruption is quick. */
-export function threads(problems: readonly RunnableProblem[], count: number): Executor {
+export function threads(
+  problems: readonly RunnableProblem[],
+  count: number,
+  leave: Leave = NO_LEAVE,
+): Executor {
   const pool = new Piscina({
     filename: new URL("../../dist/study/worker.js", import.meta.url).href,
     minThreads: count,
     maxThreads: count,
     concurrentTasksPerWorker: 1,
-    workerData: { problems },
+    workerData: { problems, ...leave },
   });
   return {
     async run(tasks, done, signal) {

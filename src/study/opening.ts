@@ -4,7 +4,8 @@
  */
 import { createHash } from "node:crypto";
 import type { Kernels } from "../kernels/instance.js";
-import type { PointStream } from "../sources/contract.js";
+import { parseSource } from "../sources/choice.js";
+import type { PointStream, Source } from "../sources/contract.js";
 import type { Task, TaskResult } from "./tasks.js";
 
 /** Coordinates that are looked at: 1,000 draws, or the replicate's first call where that gives fewer. */
@@ -70,4 +71,33 @@ export function findRepetitions(
   return [...rows.values()].flatMap(({ found, replicates }) =>
     found === null ? [] : [{ ...found, replicates }],
   );
+}
+
+/** Refuses replicates that begin alike, of sources for which that is an error; results come in any order. */
+export class RepetitionWatch {
+  readonly #dimensions: ReadonlyMap<string, number>;
+  readonly #sources = new Map<string, Source>();
+  readonly #seen = new Map<string, number>();
+
+  constructor(problems: readonly { readonly id: string; readonly dimension: number }[]) {
+    this.#dimensions = new Map(problems.map(({ id, dimension }) => [id, dimension]));
+  }
+
+  /** Throws a RangeError where a replicate of the task repeats another one. */
+  add(task: Task, { openings }: TaskResult): void {
+    const source = this.#sources.get(task.sourceId) ?? parseSource(task.source).source;
+    this.#sources.set(task.sourceId, source);
+    if (source.repetition === undefined) return;
+    for (const { replicate, digest } of openings) {
+      if (digest === "") continue;
+      const key = JSON.stringify([task.problem, task.sourceId, digest]);
+      const here = task.before + replicate;
+      const other = this.#seen.get(key);
+      this.#seen.set(key, here);
+      if (other === undefined) continue;
+      const [first, second] = [Math.min(here, other), Math.max(here, other)];
+      const dimension = this.#dimensions.get(task.problem) ?? 1;
+      throw new RangeError(source.repetition(first, second, dimension, task.sizes.at(-1) ?? 1));
+    }
+  }
 }

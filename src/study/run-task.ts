@@ -1,11 +1,24 @@
 /** Running one task: open the source for each replicate, integrate, estimate. Pure: the same task, the same result. */
 import { estimatorOf } from "../estimators/registry.js";
 import { parseSource, type SourceChoice } from "../sources/choice.js";
+import type { OpenStream } from "../sources/contract.js";
 import { makeKey } from "../sources/key.js";
-import { Integrator } from "./integrator.js";
+import { Integrator, type IntegrationResult } from "./integrator.js";
 import { watchOpening } from "./opening.js";
 import type { RunnableProblem } from "./runnable.js";
 import type { Offence, Opening, ReplicateResult, Task, TaskResult } from "./tasks.js";
+
+function runAndClose(
+  integrator: Integrator,
+  stream: OpenStream,
+  sizes: readonly number[],
+): IntegrationResult {
+  try {
+    return integrator.run(stream, sizes);
+  } finally {
+    stream.close?.();
+  }
+}
 
 /** Keeps what a thread needs again: one integrator per problem, one parsed source per id. */
 export class TaskRunner {
@@ -13,7 +26,11 @@ export class TaskRunner {
   readonly #integrators = new Map<string, Integrator>();
   readonly #sources = new Map<string, SourceChoice>();
 
-  constructor(problems: readonly RunnableProblem[]) {
+  readonly #allowPrograms: boolean;
+
+  /** `allowPrograms`: whether the command line gave leave to start users' programs. */
+  constructor(problems: readonly RunnableProblem[], allowPrograms = false) {
+    this.#allowPrograms = allowPrograms;
     this.#problems = new Map(problems.map((problem) => [problem.id, problem]));
   }
 
@@ -41,11 +58,17 @@ export class TaskRunner {
         ...(task.perSize ? { n } : {}),
       });
       const stream = source.open(
-        { dimension, n, key: source.deterministic ? null : key, replicate: task.before + replicate },
+        {
+          dimension,
+          n,
+          key: source.deterministic ? null : key,
+          replicate: task.before + replicate,
+          allowPrograms: this.#allowPrograms,
+        },
         integrator.kernels,
       );
       const opening = watchOpening(stream, integrator.kernels);
-      const integration = integrator.run(stream, task.sizes);
+      const integration = runAndClose(integrator, stream, task.sizes);
       arena.release(mark);
       openings.push({ replicate, digest: opening() });
       endpoints += stream.endpointsHit?.() ?? 0;

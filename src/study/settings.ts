@@ -45,6 +45,7 @@ export function buildSpec(entries: readonly SuiteProblem[], flags: StudySettings
   entries.forEach(({ problem }, i) => {
     for (const choice of sources[i] ?? []) checkSupply(problem, choice, at(i).sizes, at(i).replicates);
   });
+  checkPasses(entries, sources, warnings);
   const spec: StudySpec = {
     problems: entries.map(({ problem }) => problem),
     sources: perProblem((i) => (sources[i] ?? []).map((choice) => choice.spec)),
@@ -114,6 +115,31 @@ function checkSupply(problem: Problem, choice: SourceChoice, sizes: readonly num
   throw new RangeError(
     `replicates: source "${choice.id}" has ${supply.count} of ${n} points in ${problem.dimension} coordinates (${supply.why}), but ${asked} are asked for by "${problem.id}"; take fewer replicates or points (--replicates, --sizes)`,
   );
+}
+
+/** Throws where draws that pass by once would have to serve two problems. */
+function checkPasses(
+  entries: readonly SuiteProblem[],
+  sources: readonly (readonly SourceChoice[])[],
+  warnings: string[],
+): void {
+  const once = new Map<string, string>();
+  entries.forEach(({ problem }, i) => {
+    for (const { id, source } of sources[i] ?? []) {
+      if (source.singlePass !== true) continue;
+      if (source.replicateSupply?.(problem.dimension, 1).fresh !== false) continue;
+      const other = once.get(id);
+      if (other !== undefined) {
+        throw new RangeError(
+          `sources: the draws of "${id}" pass by once and serve one problem, found "${other}" and "${problem.id}"; study them one at a time`,
+        );
+      }
+      once.set(id, problem.id);
+      warnings.push(
+        `${id}: its draws pass by once: the study cannot be repeated, and a bias not be confirmed.`,
+      );
+    }
+  });
 }
 
 function common(

@@ -54,6 +54,7 @@ function request(spec: StudySpec, { problem, choice, spec: source }: Row) {
     perSize: choice.source.nesting === "per-size",
     estimators: spec.estimators[problem.id] ?? [],
     seed: spec.seed,
+    singlePass: choice.source.singlePass === true,
   };
 }
 
@@ -111,9 +112,9 @@ export function confirmationTasks(
     if (sizes.length === 0) return [];
     const before = spec.replicates[row.problem.id] ?? 1;
     const largest = Math.max(...sizesFor(spec, row.problem, row.choice));
-    const supply = row.choice.source.replicateSupply?.(row.problem.dimension, largest).count ?? Infinity;
-    const fresh = Math.min(replicates, supply - before);
-    if (fresh < FEWEST_FRESH) return [];
+    const supply = row.choice.source.replicateSupply?.(row.problem.dimension, largest);
+    const fresh = Math.min(replicates, (supply?.count ?? Infinity) - before);
+    if (fresh < FEWEST_FRESH || supply?.fresh === false) return [];
     const own = { estimators, purpose: "confirmation" as const, replicates: fresh, sizes, before };
     return planTasks({ ...request(spec, row), ...own });
   });
@@ -142,6 +143,7 @@ export function recordSources(spec: StudySpec): RecordSource[] {
       period: period === null ? null : period.toString(),
       deterministic,
       randomisations,
+      ...(source.repeatable === false ? { repeatable: source.repeatable } : {}),
     };
   });
 }

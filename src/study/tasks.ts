@@ -78,27 +78,19 @@ export interface PlanRequest {
   /** Valid, distinct, ascending. */
   readonly sizes: readonly number[];
   readonly before: number;
+  /** True where one task must read all replicates, one after the other. */
+  readonly singlePass: boolean;
 }
 
 /** The tasks of one problem x source. */
 export function planTasks(request: PlanRequest): Task[] {
-  const {
-    problem,
-    dimension,
-    source,
-    sourceId,
-    perSize,
-    estimators,
-    purpose,
-    seed,
-    replicates,
-    sizes,
-    before,
-  } = request;
+  const { problem, dimension, source, sourceId, perSize, estimators, purpose, seed } = request;
+  const { replicates, sizes, before, singlePass } = request;
   const passes = perSize ? sizes.map((n) => [n]) : [sizes];
   return passes.flatMap((pass) => {
     const coordinates = Math.max(1, pass.at(-1) ?? 1) * dimension;
-    const chunk = Math.max(1, Math.min(replicates, Math.ceil(COORDINATES_PER_TASK / coordinates)));
+    const several = Math.max(1, Math.min(replicates, Math.ceil(COORDINATES_PER_TASK / coordinates)));
+    const chunk = singlePass ? replicates : several;
     const tasks: Task[] = [];
     for (let from = 0; from < replicates; from += chunk) {
       const to = Math.min(replicates, from + chunk);

@@ -4,8 +4,8 @@ import type { RunnableProblem } from "./runnable.js";
 import { TaskRunner } from "./run-task.js";
 import type { Task, TaskResult } from "./tasks.js";
 
-const { problems } = workerData as { problems: RunnableProblem[] };
-const runner = new TaskRunner(problems);
+const { problems, allowPrograms } = workerData as { problems: RunnableProblem[]; allowPrograms: boolean };
+const runner = new TaskRunner(problems, allowPrograms);
 
 export default function runTask(task: Task): TaskResult {
   return runner.run(task);

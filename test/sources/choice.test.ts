@@ -141,7 +141,7 @@ describe("the user's own source", () => {
     ],
     [
       { name: "house", congruental: house },
-      'source: unknown key "congruental", did you mean "congruential"?; allowed are name, congruential, recursive, xorshift, source, tuples, endpoint, bits, float32, seeding, state',
+      'source: unknown key "congruental", did you mean "congruential"?; allowed are name, congruential, recursive, xorshift, source, draws, tuples, endpoint, bits, float32, seeding, state',
     ],
     [
       { name: "house", congruential: { ...house, modulo: 3 } },
@@ -149,11 +149,11 @@ describe("the user's own source", () => {
     ],
     [
       { name: "house" },
-      'source: expected one of the keys "congruential", "recursive", "xorshift", "source", found none',
+      'source: expected one of the keys "congruential", "recursive", "xorshift", "source", "draws", found none',
     ],
     [
       { name: "house", congruential: house, source: "mt19937" },
-      'source: expected one of the keys "congruential", "recursive", "xorshift", "source", found "congruential" and "source"',
+      'source: expected one of the keys "congruential", "recursive", "xorshift", "source", "draws", found "congruential" and "source"',
     ],
     [
       { name: "mt19937", congruential: house },

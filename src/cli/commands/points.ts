@@ -2,13 +2,21 @@
 import type { Arguments, Io, Output } from "../command.js";
 import { EXIT } from "../command.js";
 import { InputError, asInput } from "../errors.js";
-import { textFlag, textOrFile, wholeFlag } from "../read.js";
+import { booleanFlag, textFlag, textOrFile, wholeFlag } from "../read.js";
 import { sourceFromText } from "../study-flags.js";
 import { instantiateKernels } from "../../kernels/instance.js";
 import { DEFAULT_SETTINGS } from "../../problem/defaults.js";
 import { parseSource, type SourceChoice } from "../../sources/choice.js";
 import type { IntegerSource, PointStream, Seekable, Source } from "../../sources/contract.js";
+import {
+  FORMATS,
+  isDrawFormat,
+  writeIntegers,
+  writeReals,
+  type DrawFormat,
+} from "../../sources/draws/formats.js";
 import { makeKey, type Key } from "../../sources/key.js";
+import { checkLeave } from "../../study/programs.js";
 
 const BLOCK = 512;
 const DEFAULT_POINTS = 16;
@@ -19,7 +27,11 @@ interface Request {
   readonly first: number;
   readonly key: Key | null;
   readonly state: string | null;
+  readonly allowPrograms: boolean;
 }
+
+/** How points are written: a point on a line, or draw after draw. */
+type RealFormat = "f64le" | "f32le" | "text";
 
 export async function run(args: Arguments, io: Io): Promise<number> {
   const choice = asInput(() => parseSource(sourceFromText(String(args["source"]), io)));
@@ -36,12 +48,17 @@ export async function run(args: Arguments, io: Io): Promise<number> {
     key: choice.deterministic
       ? null
       : makeKey(choice.source.nesting === "per-size" ? { ...keyParts, n: total } : keyParts),
+    allowPrograms: booleanFlag(args, "allow-programs"),
     state: stateText === null ? null : textOrFile(stateText, "state", io).trim(),
   };
   const format = textFlag(args, "format") ?? "csv";
-  if (format === "csv" || format === "f64le")
-    await writePoints(request, dimensionOf(args), format, io.stdout);
-  else await writeIntegers(request, format, io.stdout);
+  asInput(() => {
+    checkLeave([choice], request.allowPrograms);
+  });
+  if (format === "integers") await printIntegers(request, null, io.stdout);
+  else if (!isDrawFormat(format)) await writePoints(request, dimensionOf(args), "csv", io);
+  else if (FORMATS[format].kind === "integer") await printIntegers(request, format, io.stdout);
+  else await writePoints(request, dimensionOf(args), format as RealFormat, io);
   return EXIT.done;
 }
 
@@ -49,8 +66,13 @@ function dimensionOf(args: Arguments): number {
   return wholeFlag(args, "dimension", 1) ?? 1;
 }
 
-async function writePoints(request: Request, dimension: number, format: string, out: Output): Promise<void> {
-  const { choice, points, first, key, state } = request;
+async function writePoints(
+  request: Request,
+  dimension: number,
+  format: RealFormat | "csv",
+  { stdout, stderr }: Io,
+): Promise<void> {
+  const { choice, points, first, key, state, allowPrograms } = request;
   const kernels = instantiateKernels();
   const n = first + points;
   if (choice.source.nesting === "per-size" && choice.source.nearestSize(n) !== n) {
@@ -61,19 +83,32 @@ async function writePoints(request: Request, dimension: number, format: string, 
   }
   const pointer = kernels.arena.allocate(BLOCK * dimension * 8);
   const stream = asInput(() => {
-    const opened = choice.open({ dimension, n, key, ...(state === null ? {} : { state }) }, kernels);
+    const opened = choice.open(
+      { dimension, n, key, allowPrograms, ...(state === null ? {} : { state }) },
+      kernels,
+    );
     skip(opened, first, pointer);
     return opened;
   });
+  let ones = 0;
   for (let done = 0; done < points; done += BLOCK) {
     const count = Math.min(BLOCK, points - done);
-    stream.fill(pointer, BLOCK, count);
+    asInput(() => {
+      stream.fill(pointer, BLOCK, count);
+    });
     const block = kernels.f64(pointer, BLOCK * dimension);
     const rows = new Float64Array(count * dimension);
     for (let i = 0; i < count; i++) {
       for (let j = 0; j < dimension; j++) rows[i * dimension + j] = block[j * BLOCK + i] as number;
     }
-    await write(out, format === "csv" ? csv(rows, dimension) : new Uint8Array(rows.buffer));
+    if (format === "f32le") ones += rows.filter((u) => Math.fround(u) === 1).length;
+    await write(stdout, format === "csv" ? csv(rows, dimension) : writeReals(rows, format));
+  }
+  stream.close?.();
+  if (ones > 0) {
+    stderr.write(
+      `note: ${ones} of ${points * dimension} numbers are 1 in single precision, and not below it\n`,
+    );
   }
 }
 
@@ -98,36 +133,30 @@ function hasIntegers(source: Source): source is IntegerSource {
   return "openIntegers" in source;
 }
 
-async function writeIntegers(request: Request, format: string, out: Output): Promise<void> {
+/** The source's own integers: as decimals (format null), or as words. */
+async function printIntegers(request: Request, format: DrawFormat | null, out: Output): Promise<void> {
   const { choice, points, first, key, state } = request;
   const { source } = choice;
   if (!hasIntegers(source)) {
     throw new InputError(
-      `--format: ${choice.id} has no integers of its own, found "${format}"; take csv or f64le`,
+      `--format: ${choice.id} has no integers of its own, found "${format ?? "integers"}"; take csv, f64le, f32le or text`,
     );
   }
   const stream = asInput(() => source.openIntegers({ key, ...(state === null ? {} : { state }) }));
   for (let i = 0; i < first; i++) stream.next();
   for (let done = 0; done < points; done += BLOCK) {
     const words = Array.from({ length: Math.min(BLOCK, points - done) }, () => stream.next());
-    await write(
-      out,
-      format === "integers" ? `${words.join("\n")}\n` : binary(words, format === "u64le" ? 8 : 4, choice.id),
-    );
+    await write(out, format === null ? `${words.join("\n")}\n` : binary(words, format, choice.id));
   }
 }
 
-function binary(words: readonly bigint[], size: 4 | 8, id: string): Uint8Array {
-  const limit = 1n << BigInt(8 * size);
-  const wide = words.find((word) => word >= limit);
-  if (wide !== undefined) {
-    throw new InputError(
-      `--format: the integers of ${id} do not fit 32 bits (${wide} came); take u64le or integers`,
-    );
-  }
-  return size === 8
-    ? new Uint8Array(BigUint64Array.from(words).buffer)
-    : new Uint8Array(Uint32Array.from(words, Number).buffer);
+function binary(words: readonly bigint[], format: DrawFormat, id: string): Uint8Array {
+  const bytes = writeIntegers(words, format);
+  if (bytes !== null) return bytes;
+  const wide = words.find((word) => word >= 2n ** 32n) ?? 0n;
+  throw new InputError(
+    `--format: the integers of ${id} do not fit 32 bits (${wide} came); take u64le, u64be or integers`,
+  );
 }
 
 /** Writes with back pressure: memory stays flat however slow the reader is. */

@@ -12,6 +12,7 @@ import { parseSource } from "../../sources/choice.js";
 import { JOURNAL_FILE, journalOwner, openJournal } from "../../study/journal.js";
 import { prepareProblems } from "../../study/runnable.js";
 import { startProgress } from "../../study/progress.js";
+import { tryPrograms } from "../../study/programs.js";
 import { buildSpec } from "../../study/settings.js";
 import { EXIT, type Arguments, type Io } from "../command.js";
 import { dryRun } from "../dry-run.js";
@@ -29,6 +30,7 @@ export async function run(args: Arguments, io: Io): Promise<number> {
   const loaded = await loadPaths(textFlags(args, "paths"), parseSource);
   const { spec, warnings } = asInput(() => buildSpec(loaded.problems, flags));
   const problems = await prepareProblems(spec.problems);
+  const allowPrograms = booleanFlag(args, "allow-programs");
   if (booleanFlag(args, "dry-run")) {
     io.stdout.write(dryRun(spec, problems, count, booleanFlag(args, "json")));
     return EXIT.done;
@@ -42,8 +44,9 @@ export async function run(args: Arguments, io: Io): Promise<number> {
     resume,
     replace: booleanFlag(args, "replace"),
   });
+  const programNotes = asInput(() => tryPrograms(spec, allowPrograms));
   const journal = openJournal(journalPath, specDigest, resume);
-  const executor = threads(problems, count);
+  const executor = threads(problems, count, { allowPrograms });
   const started = Date.now();
   let record: StudyRecord;
   try {
@@ -55,8 +58,13 @@ export async function run(args: Arguments, io: Io): Promise<number> {
       signal: io.signal,
       stage: (title, work) => startProgress(title, work, io.stderr),
       environment: (complete) => environmentOf(io, { threads: count, started, complete }),
-      warnings,
+      warnings: [...warnings, ...programNotes],
     });
+  } catch (error) {
+    // a source of the user's own failed in a thread, where only the kind and text of an error come back
+    if (error instanceof RangeError && error.message.startsWith("source "))
+      throw new InputError(error.message);
+    throw error;
   } finally {
     await executor.close();
   }

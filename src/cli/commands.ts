@@ -75,6 +75,9 @@ export const commands: readonly Command[] = [
       first: text("index of the first point, 0-based"),
       seed,
       state: text("the source's own starting state in published form, or @file"),
+      stream: text("one of several independent streams: 3/8 is the third of eight"),
+      "save-state": text("file for the state behind the last point, as JSON"),
+      "from-state": text("file with a saved state to go on from"),
       format: {
         ...text("form of the output"),
         choices: ["csv", "integers", ...DRAW_FORMATS],

@@ -51,6 +51,8 @@ export interface OpenRequest {
   readonly key: Key | null;
   /** A starting state in the source's published form; wins over the key. */
   readonly state?: string;
+  /** Outputs to pass over before the first; only for pseudo-random sources that can jump. */
+  readonly jump?: bigint;
   /** Which replicate of the whole study this is, 0-based (0 if absent); published seeds are numbered by it. */
   readonly replicate?: number;
   /** Whether the command line allowed programs to be started; false if absent. */
@@ -127,6 +129,8 @@ export interface IntegerSource extends Source {
 export interface IntegerRequest {
   readonly key: Key | null;
   readonly state?: string;
+  /** As in `OpenRequest`. */
+  readonly jump?: bigint;
 }
 
 export interface IntegerStream {

@@ -4,81 +4,27 @@
  * from there into rows of coordinates. Points are taken as method asks: successive outputs, every k-th output, or one
  * separately started stream per coordinate.
  */
-import type { FillWords, GeneratorExports, ToRows } from "../kernels/generator-exports.js";
+import type { FillWords, ToRows } from "../kernels/generator-exports.js";
 import type { Kernels } from "../kernels/instance.js";
-import {
-  bitsOf,
-  makeConversion,
-  takeBits,
-  type Bits,
-  type Endpoint,
-  type OutputWords,
-} from "./conversion.js";
+import { bitsOf, makeConversion, takeBits, type Bits } from "./conversion.js";
 import type {
   Family,
-  IntegerRequest,
   IntegerSource,
   OpenRequest,
   OpenStream,
   PointStream,
-  ReplicateSupply,
   Resumable,
   Seekable,
   Source,
-  SourceDescription,
 } from "./contract.js";
 import { withEndpoints } from "./endpoints.js";
-import type { Key } from "./key.js";
+import { USUAL, type Recurrence, type State, type Usage } from "./recurrence.js";
 import { restoreStates, saveStates } from "./saved-state.js";
-import { seedOf, seedingText, UNIFORM_STATE, validSeeds, type Seeding } from "./seeding.js";
+import { seedingText } from "./seeding.js";
+import { seeded, startingState, startingStates, supplyOfSeeds } from "./starting-state.js";
 
-/** A generator's state as 64-bit words, in the layout of its kernel. */
-export type State = readonly bigint[];
-
-export type About = Pick<
-  SourceDescription,
-  "id" | "title" | "citation" | "method" | "outputBits" | "period" | "knownStructure"
->;
-
-/** What a generator's file says: how its state comes about and moves on, and which kernel does it fast. */
-export interface Recurrence {
-  readonly about: About;
-  /** The words that the kernel writes, one for each coordinate. */
-  readonly output: OutputWords;
-  /** A starting state, uniform over all valid ones (or as the file says otherwise). */
-  stateFromKey(key: Key): State;
-  /** A starting state in the published form; throws with what is allowed. */
-  stateFromText(text: string): State;
-  /** Further words that stand behind the state in kernel memory. */
-  readonly constants?: readonly bigint[];
-  kernel(exports: GeneratorExports): FillWords;
-  /** The definition, in BigInt: the published integers from a state on. Plain and slow; the kernel's oracle in tests. */
-  integers(state: State): Iterator<bigint, never>;
-  /** The state `words` kernel words later, in O(log words). */
-  advance?(state: State, words: bigint): State;
-}
-
-/** How outputs become coordinates of points; `strided` with step 1 is `successive`. */
-export type Tuples =
-  { readonly kind: "strided"; readonly step: number } | { readonly kind: "per-coordinate" };
-
-/** How a generator is used: part of a source's identity. */
-export interface Usage {
-  readonly tuples: Tuples;
-  readonly endpoint: Endpoint;
-  readonly bits: Bits | null;
-  /** Each coordinate rounded to single precision. */
-  readonly float32: boolean;
-  readonly seeding: Seeding;
-}
-
-export const USUAL: Usage = {
-  tuples: { kind: "strided", step: 1 },
-  endpoint: "middle",
-  bits: null,
-  float32: false,
-  seeding: UNIFORM_STATE,
-};
+export type { About, Recurrence, State, Tuples, Usage } from "./recurrence.js";
+export { USUAL } from "./recurrence.js";
 
 /** More coordinates per point than this are refused (common practice, no single source; a point is then 8 MB). */
 export const LARGEST_DIMENSION = 1_000_000;
@@ -143,61 +89,6 @@ function nextCut({ output }: Recurrence, bits: Bits, integers: Iterator<bigint, 
   let word = 0n;
   for (let part = 0n; part < BigInt(output.integers); part++) word |= integers.next().value << (part * width);
   return takeBits(word, bits, bitsOf(output.modulus));
-}
-
-/** The request with the state that the source's seeding names, unless it names one itself. */
-function seeded<R extends IntegerRequest & { readonly replicate?: number }>(seeding: Seeding, request: R): R {
-  const seed = request.state ?? seedOf(seeding, request.replicate ?? 0);
-  return seed === null ? request : { ...request, state: seed };
-}
-
-/**
- * As many replicates as there are seeds. One stream per coordinate takes the seeds s, s + 1, ...: a stride below the
- * dimension would hand a coordinate's stream to the next replicate.
- */
-function supplyOfSeeds(
-  recurrence: Recurrence,
-  { seeding, tuples }: Usage,
-  dimension: number,
-): ReplicateSupply {
-  const { id } = recurrence.about;
-  const perCoordinate = tuples.kind === "per-coordinate";
-  if (seeding.kind === "published" && perCoordinate && seeding.stride < BigInt(dimension)) {
-    throw new RangeError(
-      `source.seeding: expected a stride of at least ${dimension} for source "${id}", whose ${dimension} coordinates take one seed each, found ${seeding.stride}`,
-    );
-  }
-  const valid = (seed: string): boolean => {
-    try {
-      recurrence.stateFromText(perCoordinate ? nextSeed(seed, dimension - 1) : seed);
-      return true;
-    } catch (error) {
-      if (error instanceof RangeError) return false;
-      throw error;
-    }
-  };
-  return { count: validSeeds(seeding, valid), why: "it has no more valid seeds" };
-}
-
-function startingState(recurrence: Recurrence, { key, state }: IntegerRequest): State {
-  if (state !== undefined) return recurrence.stateFromText(state);
-  if (key !== null) return recurrence.stateFromKey(key);
-  throw new TypeError(`key: source "${recurrence.about.id}" needs a key or a state, found neither`);
-}
-
-/** One starting state, or one per coordinate: from keys below the stream's, or from published seeds s, s + 1, ... */
-function startingStates(recurrence: Recurrence, usage: Usage, asked: OpenRequest): readonly State[] {
-  const request = seeded(usage.seeding, asked);
-  if (usage.tuples.kind === "strided") return [startingState(recurrence, request)];
-  return Array.from({ length: request.dimension }, (_, j) => {
-    if (request.state !== undefined) return recurrence.stateFromText(nextSeed(request.state, j));
-    return startingState(recurrence, { key: request.key?.derive(`coordinate ${j}`) ?? null });
-  });
-}
-
-function nextSeed(seed: string, j: number): string {
-  if (/^\d+$/.test(seed)) return (BigInt(seed) + BigInt(j)).toString();
-  throw new RangeError(`state: expected one whole number with tuples per-coordinate, found "${seed}"`);
 }
 
 class Stream implements PointStream, Resumable {

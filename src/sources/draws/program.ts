@@ -20,7 +20,7 @@ export const REPLICATE_VARIABLE = "TOLERAND_REPLICATE";
  * the group, so that the program is waited for and leaves no zombie where nobody else takes note of it (containers). What the shell has to say of that is not shown; the
  * program's standard error is the user's.
  */
-const SCRIPT = 'trap : TERM; exec 4>&2 2>/dev/null; "$@" 2>&4 3>&- 4>&-; echo $? >&3';
+const SCRIPT = 'trap : TERM; exec 4>&2 2>/dev/null; (exec "$@" 2>&4 3>&- 4>&-); echo $? >&3';
 
 /** A program that does not end when it is asked to is killed after this time. */
 const GRACE_MILLISECONDS = 1000;

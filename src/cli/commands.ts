@@ -14,7 +14,7 @@ const dimension: Options = { ...text("coordinates per point"), alias: "dimension
 
 const studySettings = {
   source,
-  sources: text("ids of sources, with commas between"),
+  sources: text("ids of sources, with commas between; all: every source that has an error bar"),
   sizes: text('numbers of points, e.g. "2^8..2^16", "1000..1000000 by 10" or "1000,5000"'),
   replicates: text("independent replicates per source"),
   estimators: text("estimators, with commas between"),
@@ -26,8 +26,8 @@ export const commands: readonly Command[] = [
   {
     name: "new",
     positional: "<name>",
-    summary: "write a commented problem file that runs as it is",
-    options: { kind: { ...text("what to write"), choices: ["problem"], default: "problem" } },
+    summary: "write a commented problem or source file that runs as it is",
+    options: { kind: { ...text("what to write"), choices: ["problem", "source"], default: "problem" } },
     load: () => import("./commands/new.js"),
   },
   {

@@ -2,7 +2,7 @@
 import { parse } from "yaml";
 import type { SourceSpec, StudySettings } from "../problem/contract.js";
 import { parseSizes } from "../problem/sizes.js";
-import { parseSource } from "../sources/choice.js";
+import { comparableSources, parseSource } from "../sources/choice.js";
 import type { Arguments, Io } from "./command.js";
 import { asInput, InputError } from "./errors.js";
 import { textFlag, textFlags, textOrFile, wholeFlag } from "./read.js";
@@ -27,7 +27,9 @@ export function settingsFromFlags(args: Arguments, io: Io): StudySettings {
 }
 
 function sourcesFromFlags(args: Arguments, io: Io): SourceSpec[] {
-  const ids = textFlags(args, "sources").flatMap(list);
+  const ids = textFlags(args, "sources")
+    .flatMap(list)
+    .flatMap((id) => (id === "all" ? comparableSources() : [id]));
   const own = textFlags(args, "source").map((text) => sourceFromText(text, io));
   const specs = [...own, ...ids];
   for (const spec of specs) asInput(() => parseSource(spec));

@@ -53,13 +53,17 @@ tolerance: { absolute: 0.01, confidence: 0.99 }
 }
 
 /**
- * Writes a new problem file `NAME.yaml` and returns its path. Throws ProblemError where the file exists already or
- * cannot be written.
+ * Writes a new file `NAME.yaml` with the text that `template` gives for its name, and returns its path. Throws
+ * ProblemError where the file exists already or cannot be written.
  */
-export async function newProblem(given: string): Promise<string> {
+export async function writeNew(
+  given: string,
+  template: (name: string, path: string) => string,
+): Promise<string> {
   const path = [".yaml", ".yml"].includes(extname(given)) ? given : `${given}.yaml`;
+  const text = template(basename(path, extname(path)), path);
   try {
-    await writeFile(path, problemTemplate(basename(path, extname(path))), { flag: "wx" });
+    await writeFile(path, text, { flag: "wx" });
   } catch (error) {
     const code = error instanceof Error && "code" in error ? String(error.code) : "unknown error";
     const why = code === "EEXIST" ? "exists already and is not overwritten" : `cannot be written (${code})`;

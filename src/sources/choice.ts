@@ -6,7 +6,7 @@ import { checkCapacity } from "./capacity.js";
 import type { OpenRequest, OpenStream, Randomisation, Source } from "./contract.js";
 import { isOwnQuasiRandom, parseOwnQuasiRandom } from "./own-quasi-random.js";
 import { parseOwnSource } from "./own-source.js";
-import { checkRandomisations } from "./randomisations.js";
+import { acceptedRandomisations, checkRandomisations } from "./randomisations.js";
 import { findSource, sourceIds } from "./registry.js";
 
 /** What a stream of a choice is opened with; see `OpenRequest`. */
@@ -31,6 +31,21 @@ export function parseSource(spec: SourceSpec): SourceChoice {
   if (typeof spec === "string") return parseId(spec);
   if (typeof spec === "object" && spec !== null && !Array.isArray(spec)) return parseMapping(spec);
   throw new TypeError(`source: expected an id like "mt19937" or a mapping, found ${JSON.stringify(spec)}`);
+}
+
+/**
+ * What `--sources all` stands for: every source that can be repeated, a quasi-random one with each of its randomisations
+ * alone. An unrandomised one has no error bar and is left out.
+ */
+export function comparableSources(): string[] {
+  return sourceIds().flatMap((id) => {
+    const source = findSource(id);
+    if (source === undefined || source.repeatable === false) return [];
+    if (source.randomisations.length === 0) return [id];
+    return acceptedRandomisations(source)
+      .filter((names) => names.length === 1)
+      .map(([name]) => `${id}+${name}`);
+  });
 }
 
 function parseMapping(spec: Readonly<Record<string, unknown>>): SourceChoice {

@@ -85,7 +85,8 @@ describe("points", () => {
     expect(tolerand("points", "sobol", "--format", "integers")).toMatchObject({
       status: 2,
       stdout: "",
-      stderr: '--format: sobol has no integers of its own, found "integers"; take csv, f64le, f32le or text\n',
+      stderr:
+        '--format: sobol has no integers of its own, found "integers"; take csv, f64le, f32le or text\n',
     });
     expect(tolerand("points", "xoshiro256++", "--format", "u32le").stderr).toMatch(
       /^--format: the integers of xoshiro256\+\+ do not fit 32 bits \(\d+ came\); take u64le, u64be or integers\n$/,

@@ -4,7 +4,7 @@ import { join } from "node:path";
 import { afterEach, beforeEach, describe, expect, test } from "vitest";
 import { copySuite, listProblems } from "../../src/problem/catalogue.js";
 import { loadPaths, loadProblem, loadSuite } from "../../src/problem/load.js";
-import { newProblem, problemTemplate } from "../../src/problem/template.js";
+import { problemTemplate, writeNew } from "../../src/problem/template.js";
 import { parseSource } from "../../src/sources/choice.js";
 import { fileWith } from "./text.js";
 
@@ -173,12 +173,12 @@ describe("copies", () => {
 
 describe("a new problem", () => {
   test("runs as it is and is never overwritten", async () => {
-    const path = await newProblem(join(folder, "first"));
+    const path = await writeNew(join(folder, "first"), problemTemplate);
     expect(path).toBe(join(folder, "first.yaml"));
     expect(await readFile(path, "utf8")).toBe(problemTemplate("first"));
     const { problem } = await loadProblem(path);
     expect(problem.dimension).toBe(12);
-    await expect(newProblem(path)).rejects.toThrow(
+    await expect(writeNew(path, problemTemplate)).rejects.toThrow(
       `${path}: exists already and is not overwritten; choose another name`,
     );
   });

@@ -40,7 +40,7 @@ export function threadTable(rounds) {
     "--sources",
     "philox4x32,pcg64,sobol+owen",
     "--sizes",
-    "2^18",
+    "2^20",
     "--replicates",
     "32",
   ];

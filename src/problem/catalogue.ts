@@ -109,7 +109,7 @@ export async function copySuite(suite: string, target: string): Promise<string[]
   if (!suites.includes(suite)) {
     const guess = nearest(suite, suites);
     const hint = guess === null ? "" : `; did you mean "${guess}"?`;
-    throw fileError(suite, `no shipped suite of that name${hint} Shipped suites: ${suites.join(", ")}`);
+    throw fileError(suite, `no shipped suite of that name; shipped suites: ${suites.join(", ")}${hint}`);
   }
   const { text, taken } = await suiteFile(suite);
   const settings = parseDocument(text);

@@ -164,10 +164,10 @@ async function loadOne(
     return { name: loaded.problem.id, problems: [loaded] };
   }
   const guess = nearest(given, suites);
-  const hint = guess === null ? "" : `, did you mean "${guess}"?`;
+  const hint = guess === null ? "" : `; did you mean "${guess}"?`;
   throw fileError(
     given,
-    `no such file, folder or shipped suite${hint}; shipped suites: ${suites.join(", ")}`,
+    `no such file, folder or shipped suite; shipped suites: ${suites.join(", ")}${hint}`,
   );
 }
 

@@ -20,7 +20,7 @@ const put = async (file: string, text: string): Promise<string> => {
   return path;
 };
 const ids = (problems: readonly { problem: { id: string } }[]) => problems.map(({ problem }) => problem.id);
-const SHIPPED = "Shipped suites: classic, planes, tidal, tour";
+const SHIPPED = "shipped suites: classic, planes, tidal, tour";
 
 describe("one file", () => {
   test("its name is the problem's id, and the suite beside it counts", async () => {
@@ -111,7 +111,7 @@ describe("names", () => {
 
   test("a mistyped name gets a proposal", async () => {
     await expect(loadPaths(["tuor"])).rejects.toThrow(
-      `tuor: no such file, folder or shipped suite; did you mean "tour"? ${SHIPPED}`,
+      `tuor: no such file, folder or shipped suite; ${SHIPPED}; did you mean "tour"?`,
     );
   });
 
@@ -166,7 +166,7 @@ describe("copies", () => {
       `${folder}: exists already and is not overwritten; name a folder that does not exist yet, in one that does`,
     );
     await expect(copySuite("tidle", join(folder, "x"))).rejects.toThrow(
-      `tidle: no shipped suite of that name; did you mean "tidal"? ${SHIPPED}`,
+      `tidle: no shipped suite of that name; ${SHIPPED}; did you mean "tidal"?`,
     );
   });
 });

@@ -12,8 +12,8 @@ import { join } from "node:path";
 import { pipeStream, type ByteStream } from "./bytes.js";
 
 /** Environment variables that a program finds. */
-export const SEED_VARIABLE = "TOLERAND_SEED";
-export const REPLICATE_VARIABLE = "TOLERAND_REPLICATE";
+const SEED_VARIABLE = "TOLERAND_SEED";
+const REPLICATE_VARIABLE = "TOLERAND_REPLICATE";
 
 /**
  * Runs the command and notes its exit code on descriptor 3, which it does not see itself. The shell outlives a SIGTERM to

@@ -65,18 +65,80 @@ function orbitsOf(n: number): { generator: number; orbits: Orbit[] } {
   return { generator, orbits: [orbit(1, 1, 1), orbit(n, generator, (n - 1) / 2)] };
 }
 
-/**
- * The vector of `weights.length` components for n points; n a power of two or a prime below 2^26. Throws RangeError for
- * another n.
- */
-export function constructVector(n: number, weights: Float64Array): Uint32Array {
+/** The orbits of n points and the candidates of each component. */
+function searchSpace(n: number): { readonly candidates: Uint32Array; readonly orbits: readonly Orbit[] } {
   const prime = Number.isInteger(n) && n < LARGEST_SIZE && isPrime(BigInt(n));
   if (!prime && !(n >= 1 && n < LARGEST_SIZE && Number.isInteger(Math.log2(n)))) {
     throw new RangeError(`lattice: expected a power of two or a prime below 2^26 points, found ${n}`);
   }
   const { generator, orbits } = orbitsOf(n);
-  const longest = orbits.at(-1)?.values.length ?? 1;
-  const candidates = candidatesOf(n, generator, longest);
+  return { candidates: candidatesOf(n, generator, orbits.at(-1)?.values.length ?? 1), orbits };
+}
+
+/**
+ * The vector of `dimension` components for n points and order-dependent weights: each set of l components has the weight
+ * `order[l - 1]`, sets larger than `order` has entries have none. R. Cools, F. Y. Kuo and D. Nuyens, "Constructing
+ * embedded lattice rules for multivariate integration", SIAM Journal on Scientific Computing 28 (2006) 2162-2188, section
+ * 5.3: with p_l(k) the sum over sets of l components of the products of kernels, a new component adds its kernel times
+ * sum of order[l] p_l, so that each step is one cyclic correlation. O(d n log n + d L n) in all, O(L n) memory.
+ */
+export function constructOrderVector(n: number, dimension: number, order: Float64Array): Uint32Array {
+  const { candidates, orbits } = searchSpace(n);
+  // sets[orbit][l][i]: p_l at entry i of the orbit; p_0 = 1.
+  const sets = orbits.map(({ values }) =>
+    Array.from({ length: order.length + 1 }, (_, l) => new Float64Array(values.length).fill(l === 0 ? 1 : 0)),
+  );
+  const vector = new Uint32Array(dimension);
+  let value = 0;
+  for (let j = 0; j < dimension; j++) {
+    for (const [m, { products }] of orbits.entries()) weighSets(sets[m] ?? [], order, products);
+    const chosen = smallestMinimiser(candidateSums(orbits), candidates, 1, n, value);
+    vector[j] = candidates[chosen] ?? 0;
+    value = 0;
+    for (const [m, { values, count }] of orbits.entries()) {
+      value += (count * joinSets(sets[m] ?? [], order, values, chosen)) / n;
+    }
+  }
+  return vector;
+}
+
+/** The sum of order[l] p_l over l, into `out`. */
+function weighSets(sets: readonly Float64Array[], order: Float64Array, out: Float64Array): void {
+  out.fill(0);
+  for (const [l, weight] of order.entries()) {
+    const set = sets[l] ?? out;
+    for (let i = 0; i < out.length; i++) out[i] = (out[i] ?? 0) + weight * (set[i] ?? 0);
+  }
+}
+
+/** Takes candidate t in: p_l grows by its kernel times p_(l-1). Returns the sum of order[l - 1] p_l over the orbit. */
+function joinSets(
+  sets: readonly Float64Array[],
+  order: Float64Array,
+  values: Float64Array,
+  t: number,
+): number {
+  let total = 0;
+  for (let l = order.length; l >= 1; l--) {
+    const set = sets[l] ?? values;
+    const below = sets[l - 1] ?? values;
+    let sum = 0;
+    for (let i = 0, at = t % values.length; i < values.length; i++) {
+      set[i] = (set[i] ?? 0) + (values[at] ?? 0) * (below[i] ?? 0);
+      sum += set[i] ?? 0;
+      at = at + 1 === values.length ? 0 : at + 1;
+    }
+    total += (order[l - 1] ?? 0) * sum;
+  }
+  return total;
+}
+
+/**
+ * The vector of `weights.length` components for n points; n a power of two or a prime below 2^26. Throws RangeError for
+ * another n.
+ */
+export function constructVector(n: number, weights: Float64Array): Uint32Array {
+  const { candidates, orbits } = searchSpace(n);
   const vector = new Uint32Array(weights.length);
   let value = 0;
   for (const [j, weight] of weights.entries()) {
@@ -209,6 +271,21 @@ export function latticeP2(n: number, vector: ArrayLike<number>, weights: ArrayLi
     sum += product;
   }
   return sum / n - 1;
+}
+
+/** P_2 for order-dependent weights of the lattice {k z / n}, directly from its definition: O(n d L). */
+export function latticeOrderP2(n: number, vector: ArrayLike<number>, order: ArrayLike<number>): number {
+  let total = 0;
+  for (let k = 0; k < n; k++) {
+    const sets = new Float64Array(order.length + 1);
+    sets[0] = 1;
+    for (let j = 0; j < vector.length; j++) {
+      const factor = kernel((k * (vector[j] ?? 0)) % n, n);
+      for (let l = order.length; l >= 1; l--) sets[l] = (sets[l] ?? 0) + factor * (sets[l - 1] ?? 0);
+    }
+    for (let l = 1; l <= order.length; l++) total += (order[l - 1] ?? 0) * (sets[l] ?? 0);
+  }
+  return total / n;
 }
 
 /** The least primitive root of an odd prime below 2^26 (C. F. Gauss, Disquisitiones arithmeticae, art. 73). */

@@ -2,15 +2,19 @@
  * The user's own quasi-random source, as a mapping in a problem file or inline on the command line:
  *
  *     { name: house, lattice: { vector: [1, 182667, 469891] }, randomisation: shift+tent }
+ *     { name: house, lattice: { weights: { product: [1, 0.5, 0.25] } }, randomisation: shift }
+ *     { name: house, lattice: { weights: { order: [1, 0.1] }, dimension: 20 }, randomisation: shift }
  *     { name: house, matrices: { base: 2, rows: [[[1, 0], [0, 1]], [[0, 1], [1, 0]]] }, randomisation: owen }
  *
- * The rows of the matrices stand coordinate by coordinate, the first digit's row first.
+ * Weights give a vector that is constructed for each n asked for: one weight a coordinate, or one for each number of
+ * coordinates that act together. The rows of the matrices stand coordinate by coordinate, the first digit's row first.
  */
 import { Matrix } from "ml-matrix";
 import { parseInteger } from "../numeric/integer-formula.js";
 import { nearest } from "../numeric/nearest.js";
 import type { Randomisation, Source } from "./contract.js";
 import { ownLattice } from "./lattice.js";
+import { LARGEST_ORDER, LARGEST_WEIGHTED, weightedLattice, type LatticeWeights } from "./weighted-lattice.js";
 import { ownNet } from "./own-net.js";
 import { checkRandomisations } from "./randomisations.js";
 import { isSourceId } from "./registry.js";
@@ -60,13 +64,55 @@ export function parseOwnQuasiRandom(written: Mapping): OwnQuasiRandom {
 }
 
 function latticeOf(name: string, body: Mapping): Source {
-  checkKeys("source.lattice", body, ["vector"]);
-  const { vector } = body;
+  checkKeys("source.lattice", body, ["vector", "weights", "dimension"]);
+  const { vector, weights, dimension } = body;
+  if ((vector === undefined) === (weights === undefined)) {
+    throw new TypeError("source.lattice: expected either vector or weights; give one of them");
+  }
+  if (weights !== undefined) return weightedLattice(name, weightsOf(weights, dimension));
+  if (dimension !== undefined)
+    throw new TypeError("source.lattice.dimension: goes with weights.order; leave it out");
   return ownLattice(
     name,
     listAt("source.lattice.vector", vector, "a list of whole numbers").map((component, j) =>
       parseInteger(component, `source.lattice.vector[${j + 1}]`),
     ),
+  );
+}
+
+function weightsOf(written: unknown, dimension: unknown): LatticeWeights {
+  const body = mappingAt("source.lattice.weights", written);
+  checkKeys("source.lattice.weights", body, ["product", "order"]);
+  const kind = body["product"] === undefined ? "order" : "product";
+  const key = `source.lattice.weights.${kind}`;
+  if (body["product"] !== undefined && body["order"] !== undefined) {
+    throw new TypeError("source.lattice.weights: expected product or order, found both; give one of them");
+  }
+  const weights = listAt(key, body[kind], "a list of numbers above 0, such as [1, 0.25]").map((weight, j) => {
+    if (typeof weight === "number" && weight > 0 && Number.isFinite(weight)) return weight;
+    throw new RangeError(`${key}[${j + 1}]: expected a number above 0, found ${found(weight)}`);
+  });
+  if (kind === "product") {
+    if (dimension !== undefined) {
+      throw new TypeError(
+        "source.lattice.dimension: product weights have one for each coordinate; leave it out",
+      );
+    }
+    return { kind, weights, dimension: weights.length };
+  }
+  if (weights.length > LARGEST_ORDER) {
+    throw new RangeError(`${key}: expected at most ${LARGEST_ORDER} weights, found ${weights.length}`);
+  }
+  if (
+    typeof dimension === "number" &&
+    Number.isInteger(dimension) &&
+    dimension >= 1 &&
+    dimension <= LARGEST_WEIGHTED
+  ) {
+    return { kind, weights, dimension };
+  }
+  throw new RangeError(
+    `source.lattice.dimension: expected a whole number from 1 to ${LARGEST_WEIGHTED}, found ${found(dimension)}`,
   );
 }
 

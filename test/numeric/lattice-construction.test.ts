@@ -1,6 +1,12 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { constructVector, inverseSquareWeights, latticeP2 } from "../../src/numeric/lattice-construction.js";
+import {
+  constructOrderVector,
+  constructVector,
+  inverseSquareWeights,
+  latticeOrderP2,
+  latticeP2,
+} from "../../src/numeric/lattice-construction.js";
 import { isPrime } from "../../src/numeric/factor.js";
 import { firstPrimes } from "../../src/numeric/primes.js";
 
@@ -62,5 +68,35 @@ describe("primes", () => {
     for (let count = 1; count <= 20; count++) {
       expect([...firstPrimes(count)]).toEqual([...firstPrimes(20)].slice(0, count));
     }
+  });
+});
+
+describe("order-dependent weights", () => {
+  /** Component by component straight from the definition: every candidate prime to n, the smallest of the best. */
+  const plainSearch = (n: number, dimension: number, order: Float64Array): number[] => {
+    const chosen: number[] = [];
+    for (let j = 0; j < dimension; j++) {
+      const candidates = Array.from({ length: n - 1 }, (_, i) => i + 1).filter((z) => gcd(z, n) === 1);
+      const values = candidates.map((z) => latticeOrderP2(n, [...chosen, z], order));
+      const least = Math.min(...values);
+      chosen.push(
+        candidates[values.findIndex((value) => value <= least + 1e-10 * Math.abs(least) + 1e-14)] as number,
+      );
+    }
+    return chosen;
+  };
+
+  it("give what a search by the definition gives, for powers of two and primes", () => {
+    for (const n of [16, 64, 127, 251]) {
+      const order = Float64Array.of(1, 0.3, 0.05);
+      expect([...constructOrderVector(n, 5, order)]).toEqual(plainSearch(n, 5, order));
+    }
+  });
+
+  it("that are 1 for every order are product weights of 1", () => {
+    const ones = new Float64Array(6).fill(1);
+    expect(constructOrderVector(1024, 6, ones)).toEqual(constructVector(1024, ones));
+    const vector = constructVector(256, ones);
+    expect(latticeOrderP2(256, vector, ones)).toBeCloseTo(latticeP2(256, vector, ones), 9);
   });
 });

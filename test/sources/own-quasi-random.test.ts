@@ -63,7 +63,7 @@ const refusals: [SourceSpec, string][] = [
     { name: "house", lattice: { vector: [] } },
     "source.lattice.vector: expected a list of whole numbers, found []",
   ],
-  [{ name: "house", lattice: {} }, "source.lattice.vector: expected a list of whole numbers, found nothing"],
+  [{ name: "house", lattice: {} }, "source.lattice: expected either vector or weights; give one of them"],
   [
     { name: "house", lattice: { vector: [1, -7] } },
     "source.lattice.vector[2]: expected a whole number from 0, found -7",
@@ -101,4 +101,45 @@ const refusals: [SourceSpec, string][] = [
 
 test.each(refusals)("refuses %j", (spec, message) => {
   expect(() => parseSource(spec)).toThrow(message);
+});
+
+test("a lattice is constructed for weights of one's own, product or order-dependent", () => {
+  const product = parseSource({
+    name: "house",
+    lattice: { weights: { product: [1, 0.5, 0.1] } },
+    randomisation: "shift",
+  });
+  expect(product.source.largestDimension).toBe(3);
+  expect(product.source.nearestSize(1000)).toBe(1024);
+  expect(product.source.nearestSize(1009)).toBe(1009);
+  const order = parseSource({ name: "pairs", lattice: { weights: { order: [1, 0.2] }, dimension: 4 } });
+  // Every component is prime to n, so each coordinate holds every multiple of 1/n once.
+  const points = pointsOf(order.source, { dimension: 4, count: 64 });
+  for (const j of [0, 1, 2, 3]) {
+    const cells = points.map((point) => Math.round((point[j] as number) * 64)).sort((a, b) => a - b);
+    expect(cells).toEqual(Array.from({ length: 64 }, (_, k) => k));
+  }
+});
+
+test.each([
+  [
+    { vector: [1], weights: { product: [1] } },
+    "source.lattice: expected either vector or weights; give one of them",
+  ],
+  [{ weights: { product: [1, 0] } }, "source.lattice.weights.product[2]: expected a number above 0, found 0"],
+  [
+    { weights: { order: [1] } },
+    "source.lattice.dimension: expected a whole number from 1 to 1000, found nothing",
+  ],
+  [
+    { weights: { product: [1] }, dimension: 3 },
+    "source.lattice.dimension: product weights have one for each coordinate; leave it out",
+  ],
+  [{ vector: [1], dimension: 3 }, "source.lattice.dimension: goes with weights.order; leave it out"],
+  [
+    { weights: { product: [1], order: [1] } },
+    "source.lattice.weights: expected product or order, found both; give one of them",
+  ],
+])("lattice %j is refused", (lattice, message) => {
+  expect(() => parseSource({ name: "house", lattice })).toThrow(message);
 });

@@ -1,7 +1,8 @@
 """The four benchmark integrands in NumPy/SciPy, in blocks of 16,384 points so that arrays stay in cache.
 
 Generators: NumPy's PCG64 and MT19937, SciPy's unscrambled Sobol'. Reads lines "WORKLOAD SOURCE POINTS" on standard input,
-answers each with "ESTIMATE SECONDS"; "fill D POINTS" times SciPy's Sobol' alone. Imports are not timed.
+answers each with "ESTIMATE SECONDS"; "points SOURCE D POINTS" times points alone (PCG64, ..., sobol, sobol-scrambled,
+halton, halton-scrambled). Imports and set-up are not timed.
 """
 import sys
 import time
@@ -51,16 +52,29 @@ def estimate(name, source, points):
     return total / points, time.perf_counter() - start
 
 
-def fill(d, points):
-    sobol = qmc.Sobol(d, scramble=False, bits=52)
+def maker(source, d):
+    if source.startswith("sobol"):
+        return qmc.Sobol(d, scramble=source.endswith("scrambled"), bits=52, rng=1).random
+    if source.startswith("halton"):
+        return qmc.Halton(d, scramble=source.endswith("scrambled"), rng=1).random
+    rng = np.random.Generator(getattr(np.random, source)(1))
+    return lambda n: rng.random((n, d))
+
+
+def points_alone(source, d, points):
+    make = maker(source, d)
+    block = min(points, max(64, BLOCK * 8 // d))
     start = time.perf_counter()
-    for begin in range(0, points, BLOCK):
-        x = sobol.random(min(BLOCK, points - begin))
+    for _ in range(0, points, block):
+        x = make(block)
     return float(x[-1, 0]), time.perf_counter() - start
 
 
 print(np.__version__, scipy.__version__, flush=True)
 for line in sys.stdin:
     words = line.split()
-    answer = fill(int(words[1]), int(words[2])) if words[0] == "fill" else estimate(words[0], words[1], int(words[2]))
+    if words[0] == "points":
+        answer = points_alone(words[1], int(words[2]), int(words[3]))
+    else:
+        answer = estimate(words[0], words[1], int(words[2]))
     print("%.17g %.9f" % answer, flush=True)

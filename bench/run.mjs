@@ -1,6 +1,7 @@
 // npm run bench: this engine against C and NumPy/SciPy on four integrands, in one run, one thread each, in turn.
 // Every figure is a median over rounds; what is compared is the ratio within the run. Needs gcc and python3 with NumPy
-// and SciPy. Writes the tables to standard output and, with --write, into docs/measurements.md.
+// and SciPy, and GSL for a column more. Writes the tables to standard output and, with --write, into docs/measurements.md.
+// Names of sections run these alone: npm run bench -- sources --write
 import { spawn, execFileSync } from "node:child_process";
 import { mkdtempSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import { cpus, tmpdir } from "node:os";
@@ -9,7 +10,7 @@ import { createInterface } from "node:readline";
 import { fileURLToPath } from "node:url";
 import { sobol } from "../dist/sources/sobol.js";
 import { engineRates } from "./engine.mjs";
-import { sobolFill } from "./fill.mjs";
+import { constructionTable, sourceTable } from "./sources.mjs";
 import { memoryTable, studyTable, threadTable } from "./study.mjs";
 import { insert, median, table } from "./table.mjs";
 
@@ -111,13 +112,20 @@ async function workloadTable(peers, python) {
 const peers = buildPeers();
 const python = await startPython();
 try {
-  const sections = {
-    workloads: await workloadTable(peers, python),
-    "sobol-fill": await sobolFill(python, ROUNDS),
-    threads: threadTable(ROUNDS),
-    memory: memoryTable(),
-    study: studyTable(),
+  const all = {
+    workloads: () => workloadTable(peers, python),
+    sources: () => sourceTable(python, folder, 5),
+    construction: () => constructionTable(),
+    threads: () => threadTable(ROUNDS),
+    memory: () => memoryTable(),
+    study: () => studyTable(),
   };
+  const asked = process.argv.slice(2).filter((word) => word !== "--write");
+  const unknown = asked.find((name) => !Object.hasOwn(all, name));
+  if (unknown !== undefined)
+    throw new Error(`no section "${unknown}"; there are ${Object.keys(all).join(", ")}`);
+  const sections = {};
+  for (const name of asked.length === 0 ? Object.keys(all) : asked) sections[name] = await all[name]();
   const machine = `${cpus()[0].model.trim()}, ${cpus().length} processors, Node ${process.version}, NumPy and SciPy ${python.versions}`;
   for (const [name, text] of Object.entries(sections)) process.stdout.write(`\n${name}\n${text}`);
   if (process.argv.includes("--write")) {

@@ -40,3 +40,5 @@ export function setUp() {
   const code = run(process.execPath, ["tools/build.mjs"]);
   if (code !== 0) process.exit(code);
 }
+
+if (process.argv[1] === fileURLToPath(import.meta.url)) setUp();

@@ -52,6 +52,22 @@ export const commands: readonly Command[] = [
     load: () => import("./commands/study.js"),
   },
   {
+    name: "explain",
+    positional: "<problem>",
+    summary: "why a source errs on a problem; without a source, which inputs matter",
+    options: {
+      source,
+      sources: studySettings.sources,
+      points: text("points of one estimate"),
+      replicates: studySettings.replicates,
+      "full-cycle": flag("average over every state of the source as well"),
+      seed,
+      out: text("folder for a report (default: none is written)"),
+      json,
+    },
+    load: () => import("./commands/explain.js"),
+  },
+  {
     name: "check",
     positional: "<paths..>",
     summary: "validate problem files and print what the program understood",

@@ -30,6 +30,9 @@ export const messages = {
     `--resume: ${folder} holds an unfinished run of another study (other problems, sources, sizes or seed); choose another folder with --out, or give it up with --replace`,
   otherStudy: (folder: string) =>
     `--out: ${folder} holds the record of another study and is not overwritten; choose another folder with --out, or overwrite it with --replace`,
+  oneProblem: (path: string, found: readonly string[]) =>
+    `problem: expected one problem, found ${found.length} in "${path}"; name one of them: ${found.slice(0, 6).join(", ")}`,
+  explainNeeds: (problem: string) => `explain: nothing to explain about "${problem}" yet`,
   next: (text: string) => `Next: ${text}\n`,
 };
 

@@ -119,20 +119,27 @@ function weightsOf(written: unknown, dimension: unknown): LatticeWeights {
 function netOf(name: string, body: Mapping): Source {
   checkKeys("source.matrices", body, ["base", "rows"]);
   const { base, rows } = body;
-  if (base !== 2) throw new RangeError(`source.matrices.base: expected 2, found ${found(base)}`);
+  if (typeof base !== "number") {
+    throw new TypeError(`source.matrices.base: expected a prime such as 2, found ${found(base)}`);
+  }
   const matrices = listAt("source.matrices.rows", rows, "a list of matrices").map((matrix, j) => {
     const key = `source.matrices.rows[${j + 1}]`;
     const entries = listAt(key, matrix, "a matrix, a list of rows").map((row, r) => {
-      const digits = listAt(`${key}[${r + 1}]`, row, "a row of zeros and ones");
-      if (digits.every((digit) => digit === 0 || digit === 1)) return digits;
-      throw new RangeError(`${key}[${r + 1}]: expected a row of zeros and ones, found ${found(row)}`);
+      const expected = base === 2 ? "a row of zeros and ones" : `a row of digits from 0 to ${base - 1}`;
+      const digits = listAt(`${key}[${r + 1}]`, row, expected);
+      if (digits.every((digit) => isDigit(digit, base))) return digits as number[];
+      throw new RangeError(`${key}[${r + 1}]: expected ${expected}, found ${found(row)}`);
     });
     if (entries.some((row) => row.length !== entries[0]?.length)) {
       throw new RangeError(`${key}: expected rows of the same length, found ${found(matrix)}`);
     }
     return new Matrix(entries);
   });
-  return ownNet(name, matrices);
+  return ownNet(name, base, matrices);
+}
+
+function isDigit(value: unknown, base: number): boolean {
+  return typeof value === "number" && Number.isInteger(value) && value >= 0 && value < base;
 }
 
 function listAt(key: string, value: unknown, expected: string): readonly unknown[] {

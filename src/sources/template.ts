@@ -61,6 +61,7 @@ seeding: uniform-state
 # Quasi-random sources of your own are described by a vector or by matrices, without the keys above:
 #   name: ${name}
 #   lattice: { vector: [1, 182667, 469891] }     or     matrices: { base: 2, rows: [[[1, 0], [0, 1]]] }
+#                                            or weights: { product: [1, 0.5] } in the place of vector
 #   randomisation: shift
 `;
 }

@@ -55,6 +55,8 @@ const ownQuasiRandom: Readonly<Record<string, SourceSpec>> = {
   "a shifted lattice": { name: "house", lattice, randomisation: "shift" },
   "a net": { name: "house", matrices: { base: 2, rows } },
   "a scrambled net": { name: "house", matrices: { base: 2, rows }, randomisation: "owen" },
+  "a net in base 3": { name: "house", matrices: { base: 3, rows } },
+  "a scrambled net in base 3": { name: "house", matrices: { base: 3, rows }, randomisation: "owen" },
   "a shifted and folded lattice": { name: "house", lattice, randomisation: "shift+tent" },
 };
 

@@ -1,5 +1,6 @@
 import { expect, test } from "vitest";
 import type { SourceSpec } from "../../src/problem/contract.js";
+import { faure } from "../../src/sources/faure.js";
 import { sobolNatural } from "../../src/sources/sobol.js";
 import { pointsOf } from "./points.js";
 import { parseSource } from "../../src/sources/choice.js";
@@ -14,6 +15,12 @@ test("a lattice has the name given, its randomisation in the id, and any n", () 
   expect(choice.deterministic).toBe(false);
   expect(parseSource({ name: "house", lattice: { vector } }).deterministic).toBe(true);
 });
+
+const identity = [
+  [1, 0, 0],
+  [0, 1, 0],
+  [0, 0, 1],
+];
 
 const rows = [
   [
@@ -35,6 +42,26 @@ test("generating matrices give their net in natural order: the first two coordin
   expect(pointsOf(choice.source, { dimension: 2, count: 8 })).toEqual(
     pointsOf(sobolNatural, { dimension: 2, count: 8 }),
   );
+});
+
+test("generating matrices in another base: Faure's first two coordinates in base 3, plain and scrambled", () => {
+  const pascal = [
+    [1, 1, 1],
+    [0, 1, 2],
+    [0, 0, 1],
+  ];
+  const own = { name: "house", matrices: { base: 3, rows: [identity, pascal] } };
+  const { source } = parseSource(own);
+  expect(source.nearestSize(100)).toBe(27);
+  const plain = pointsOf(source, { dimension: 2, count: 27 });
+  // Faure in three coordinates has base 3; its first two matrices are the identity and Pascal's
+  expect(plain).toEqual(pointsOf(faure, { dimension: 3, count: 27 }).map((point) => point.slice(0, 2)));
+  for (const randomisation of ["digital-shift", "linear", "owen"] as const) {
+    const points = pointsOf(source, { dimension: 2, count: 27, randomisations: [randomisation], key: "k" });
+    const boxes = points.map(([x = 0, y = 0]) => Math.floor(9 * x) * 3 + Math.floor(3 * y));
+    // a net with t = 0: each of the 27 boxes of 1/9 x 1/3 holds one point
+    expect(new Set(boxes).size).toBe(27);
+  }
 });
 
 const refusals: [SourceSpec, string][] = [
@@ -72,7 +99,18 @@ const refusals: [SourceSpec, string][] = [
     { name: "house", lattice: { vector: [1, 2.5] } },
     'source.lattice.vector[2]: expected a whole number (write large ones as text, like "2^64 - 59"), found 2.5',
   ],
-  [{ name: "house", matrices: { base: 3, rows } }, "source.matrices.base: expected 2, found 3"],
+  [
+    { name: "house", matrices: { base: 4, rows } },
+    "source.matrices.base: expected a prime from 2 to 127, found 4",
+  ],
+  [
+    { name: "house", matrices: { base: "2", rows } },
+    'source.matrices.base: expected a prime such as 2, found "2"',
+  ],
+  [
+    { name: "house", matrices: { base: 3, rows: [[[1, 3]]] } },
+    "source.matrices.rows[1][1]: expected a row of digits from 0 to 2, found [1,3]",
+  ],
   [
     { name: "house", matrices: { base: 2, rows: [] } },
     "source.matrices.rows: expected a list of matrices, found []",

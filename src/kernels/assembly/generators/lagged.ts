@@ -34,13 +34,25 @@ export function fillSubtractive55(state: usize, out: usize, count: i32): void {
  */
 export function fillR250(state: usize, out: usize, count: i32): void {
   let index = <i32>load<u32>(state, 1000);
-  for (let i = 0; i < count; i++) {
-    let oldest = state + (<usize>index << 2);
-    let x = load<u32>(oldest) ^ load<u32>(state + (<usize>backAt(index, 250, 103) << 2));
-    store<u32>(oldest, x);
-    store<u32>(out, x);
-    out += 4;
-    index = index == 249 ? 0 : index + 1;
+  while (count > 0) {
+    let back = backAt(index, 250, 103);
+    // as far as neither place wraps round; a word is read again 103 words later at the earliest, so four go at once
+    let run = min(count, 250 - max(index, back));
+    let oldest = state + (<usize>index << 2), later = state + (<usize>back << 2);
+    let end = oldest + (<usize>run << 2), fours = oldest + (<usize>(run & ~3) << 2);
+    for (; oldest < fours; oldest += 16, later += 16, out += 16) {
+      let x = v128.xor(v128.load(oldest), v128.load(later));
+      v128.store(oldest, x);
+      v128.store(out, x);
+    }
+    for (; oldest < end; oldest += 4, later += 4, out += 4) {
+      let x = load<u32>(oldest) ^ load<u32>(later);
+      store<u32>(oldest, x);
+      store<u32>(out, x);
+    }
+    index += run;
+    if (index == 250) index = 0;
+    count -= run;
   }
   store<u32>(state, <u32>index, 1000);
 }

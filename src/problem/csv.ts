@@ -46,11 +46,5 @@ export function parseCsv(text: string, file: string): CsvTable {
     throw new ProblemError([{ file, line, column: line === null ? null : 1, message }]);
   }
   if (parsed.length === 0) throw fileError(file, "expected a header line and rows below it, found no row");
-  // the parser counts the end of a row's line as read, where there is one
-  const open = /\n$/.test(text) ? -1 : parsed.length - 1;
-  const rows = parsed.map(({ record, info }, k) => ({
-    line: info.lines - (k === open ? 0 : 1),
-    fields: record,
-  }));
-  return { columns, rows };
+  return { columns, rows: parsed.map(({ record, info }) => ({ line: info.lines, fields: record })) };
 }

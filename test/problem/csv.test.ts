@@ -2,7 +2,7 @@ import { expect, test } from "vitest";
 import { parseCsv } from "../../src/problem/csv.js";
 
 test("fields by column name, with quotation marks, spaces, a byte order mark and empty lines", () => {
-  const table = parseCsv('\uFEFFlabel, n\n"a, b", 10\r\n\n c ,20\n', "t.csv");
+  const table = parseCsv('\uFEFFlabel, n\n"a, b", 10\n\n c ,20\n', "t.csv");
   expect(table.columns).toEqual(["label", "n"]);
   expect(table.rows).toEqual([
     { line: 2, fields: { label: "a, b", n: "10" } },
@@ -10,8 +10,8 @@ test("fields by column name, with quotation marks, spaces, a byte order mark and
   ]);
 });
 
-test("the line of a last row without an end of line", () => {
-  expect(parseCsv("a\n1\n2", "t.csv").rows.map(({ line }) => line)).toEqual([2, 3]);
+test.each(["a\n1\n\n2", "a\n1\n\n2\n", "a\r\n1\r\n\r\n2\r\n"])("lines of rows in %j", (text) => {
+  expect(parseCsv(text, "t.csv").rows.map(({ line }) => line)).toEqual([2, 4]);
 });
 
 test.each([

@@ -6,6 +6,7 @@
 import type { FillWords, GeneratorExports } from "../kernels/generator-exports.js";
 import { powerMod } from "../numeric/factor.js";
 import type { OutputWords } from "./conversion.js";
+import { combined } from "./linear.js";
 import { parseWords } from "./published-state.js";
 import type { About, Recurrence, State } from "./pseudo-random.js";
 
@@ -15,6 +16,8 @@ interface Combined {
   readonly output: OutputWords;
   /** The output of components after their step. */
   readonly combine: (state: State) => bigint;
+  /** What outputs are beside the sum of the components' fractions; see `LinearRecurrence`. */
+  readonly note: string | null;
   kernel(exports: GeneratorExports): FillWords;
 }
 
@@ -35,6 +38,10 @@ export function combinedCongruential(generator: Combined): Recurrence {
         words: limits.map((below) => ({ least: 1n, below })),
         allowed: `${limits.length} words from 1, below ${limits.join(", ")}, like "${limits.map((_, k) => k + 1).join(",")}",`,
       }),
+    linear: combined(
+      components.map(({ multiplier, modulus }) => ({ multipliers: [multiplier], modulus })),
+      generator.note,
+    ),
     kernel: (exports) => generator.kernel(exports),
     *integers(start) {
       for (let state = advance(start, 1n); ; state = advance(state, 1n)) yield combine(state);

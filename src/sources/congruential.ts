@@ -36,6 +36,7 @@ export function congruential(about: About, map: Affine): Recurrence {
       const allowed = `a whole number from ${first} to ${modulus - 1n}`;
       throw new RangeError(`state: expected ${allowed} for source "${about.id}", found "${text}"`);
     },
+    linear: { multipliers: [multiplier], increment, modulus, note: null },
     constants: [multiplier, increment, leap.multiplier, leap.increment, ...words],
     kernel,
     *integers([x = 0n]) {

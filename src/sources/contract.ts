@@ -146,6 +146,12 @@ export interface DigitalNet extends Source {
   generatingMatrices(dimension: number, n: number): GeneratingMatrices;
 }
 
+/** A source whose first n points, randomisations apart, are the rank-1 lattice {k z / n}, in whatever order. */
+export interface RankOneLattice extends Source {
+  /** z for n points (a valid size; where any prefix is valid, a power of two), each component from 0 to n - 1. */
+  generatingVector(n: number, dimension: number): readonly bigint[];
+}
+
 /**
  * Digit r + 1 (after the point) of coordinate j of point i is row r of matrices[j] times the digits of i in `base`, least
  * significant first; in `gray` order, times the digits of the Gray code of i.

@@ -57,6 +57,12 @@ export const knuthSubtractive = pseudoRandom({
     period: null,
     knownStructure: "x(n) - x(n-55) + x(n-24) is 0 or 1: triples at these lags lie on two planes",
   },
+  linear: {
+    multipliers: Array.from({ length: 55 }, (_, k) => (k === 54 ? 1n : k === 23 ? BILLION - 1n : 0n)),
+    increment: 0n,
+    modulus: BILLION,
+    note: null,
+  },
   output: { modulus: BILLION, bytes: 8, zeroless: false, integers: 1 },
   stateFromKey: (key) => [...uniformWords(key, 55, BILLION), 0n],
   stateFromText: (text) => {

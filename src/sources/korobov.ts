@@ -7,7 +7,7 @@
  * Good for: a vector that one number describes. Bad for: what `lattice` is bad for; its P_2 is larger.
  */
 import { inverseSquareWeights, latticeP2 } from "../numeric/lattice-construction.js";
-import type { Source } from "./contract.js";
+import type { RankOneLattice } from "./contract.js";
 import { openLattice, rankOneLattice } from "./lattice.js";
 import { nearestPowerOfTwo } from "./quasi-random.js";
 
@@ -15,7 +15,7 @@ const LARGEST_SIZE = 2 ** 17;
 const CANDIDATES = 64;
 const SEARCHED_DIMENSIONS = 8;
 
-export const korobov: Source = {
+export const korobov: RankOneLattice = {
   ...rankOneLattice,
   id: "korobov",
   title: "Korobov lattice, multiplier searched for weights 1/j^2",
@@ -23,7 +23,8 @@ export const korobov: Source = {
     "N. M. Korobov, The approximate computation of multiple integrals, Doklady Akademii Nauk SSSR 124 (1959) 1207-1210",
   largestDimension: 1000,
   nearestSize: (n) => nearestPowerOfTwo(n, LARGEST_SIZE),
-  open: (request, kernels) => openLattice(korobov, vectorOf, request, kernels),
+  generatingVector: (n, dimension) => vectorOf(n, dimension).map(BigInt),
+  open: (request, kernels) => openLattice(korobov, request, kernels),
 };
 
 /** Multipliers found so far in this process, by n and the number of coordinates that the search looked at. */

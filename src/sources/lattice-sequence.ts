@@ -9,7 +9,7 @@
  * for: sizes that are not powers of two, and more than 2^20 points, for which the vector was not chosen.
  */
 import type { Kernels } from "../kernels/instance.js";
-import type { OpenRequest, PointStream, Seekable, Source } from "./contract.js";
+import type { OpenRequest, PointStream, RankOneLattice, Seekable } from "./contract.js";
 import { embeddedTableVector, TABLE_DIMENSIONS } from "./lattice-table.js";
 import { checkIndex, checkOpening } from "./quasi-random.js";
 import { ROTATION_RANDOMISATIONS } from "./rotation.js";
@@ -18,7 +18,7 @@ const RECORD_WORDS = 54;
 const SHIFT = 1;
 const BITS = 2;
 
-export const latticeSequence: Source = {
+export const latticeSequence: RankOneLattice = {
   id: "lattice-sequence",
   title: "Extensible rank-1 lattice sequence, radical-inverse order",
   citation:
@@ -32,6 +32,8 @@ export const latticeSequence: Source = {
   randomisations: ROTATION_RANDOMISATIONS,
   knownStructure: null,
   nearestSize: (n) => n,
+  generatingVector: (n, dimension) =>
+    Array.from(embeddedTableVector(dimension), (component) => BigInt(component) % BigInt(n)),
   open: openLatticeSequence,
 };
 

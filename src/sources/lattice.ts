@@ -8,14 +8,10 @@
  * jumps; the vector favours the first coordinates.
  */
 import type { Kernels } from "../kernels/instance.js";
-import type { OpenRequest, PointStream, Seekable, Source } from "./contract.js";
+import type { OpenRequest, PointStream, RankOneLattice, Seekable } from "./contract.js";
 import { TABLE_DIMENSIONS, TABLE_LOG_SIZE, tableVector } from "./lattice-table.js";
 import { nearestPowerOfTwo } from "./quasi-random.js";
 import { openRotation, ROTATION_RANDOMISATIONS } from "./rotation.js";
-
-/** The vector of n = 2^m points; one point needs none. */
-const vectorOf = (n: number, dimension: number): Uint32Array =>
-  n === 1 ? new Uint32Array(dimension) : tableVector(Math.log2(n), dimension);
 
 /** What all rank-1 lattices built for one size say of themselves. */
 export const rankOneLattice = {
@@ -28,7 +24,7 @@ export const rankOneLattice = {
   knownStructure: null,
 } as const;
 
-export const lattice: Source = {
+export const lattice: RankOneLattice = {
   ...rankOneLattice,
   id: "lattice",
   title: "Rank-1 lattice, vector component by component with weights 1/j^2",
@@ -36,21 +32,24 @@ export const lattice: Source = {
     "D. Nuyens and R. Cools, Fast component-by-component construction of rank-1 lattice rules with a non-prime number of points, Journal of Complexity 22 (2006) 4-28",
   largestDimension: TABLE_DIMENSIONS,
   nearestSize: (n) => nearestPowerOfTwo(n, 2 ** TABLE_LOG_SIZE),
-  open: (request, kernels) => openLattice(lattice, vectorOf, request, kernels),
+  // one point needs no vector
+  generatingVector: (n, dimension) =>
+    Array.from(n === 1 ? new Uint32Array(dimension) : tableVector(Math.log2(n), dimension), BigInt),
+  open: (request, kernels) => openLattice(lattice, request, kernels),
 };
 
 /**
  * The lattice of a vector of one's own, for any n. Throws RangeError for a component below 0; larger ones than n are
  * taken modulo n.
  */
-export function ownLattice(id: string, vector: readonly bigint[]): Source {
+export function ownLattice(id: string, vector: readonly bigint[]): RankOneLattice {
   for (const [j, component] of vector.entries()) {
     if (component >= 0n) continue;
     throw new RangeError(
       `source.lattice.vector[${j + 1}]: expected a whole number from 0, found ${component}`,
     );
   }
-  const source: Source = {
+  const source: RankOneLattice = {
     ...rankOneLattice,
     family: "own",
     id,
@@ -59,25 +58,23 @@ export function ownLattice(id: string, vector: readonly bigint[]): Source {
       "the user's own; method: I. H. Sloan and S. Joe, Lattice Methods for Multiple Integration (1994)",
     largestDimension: vector.length,
     nearestSize: (n) => n,
-    open: (request, kernels) => openLattice(source, () => vector, request, kernels),
+    generatingVector: (n, dimension) => vector.slice(0, dimension).map((component) => component % BigInt(n)),
+    open: (request, kernels) => openLattice(source, request, kernels),
   };
   return source;
 }
 
-/** Opens a stream of the lattice whose vector `vector` gives for n and the dimension. */
+/** Opens a stream of the lattice. */
 export function openLattice(
-  source: Source,
-  vector: (n: number, dimension: number) => ArrayLike<number | bigint>,
+  source: RankOneLattice,
   request: OpenRequest,
   kernels: Kernels,
 ): PointStream & Seekable {
   const alphas = (dimension: number): bigint[] => {
     const n = BigInt(request.n);
-    const components = vector(request.n, dimension);
-    return Array.from({ length: dimension }, (_, j) => {
-      const residue = BigInt(components[j] ?? 0) % n;
-      return ((residue << 128n) + n - 1n) / n;
-    });
+    return source
+      .generatingVector(request.n, dimension)
+      .map((component) => ((component << 128n) + n - 1n) / n);
   };
   return openRotation(source, alphas, request, kernels);
 }

@@ -12,6 +12,7 @@
  * The published form is the six words, "12345,12345,12345,12345,12345,12345", oldest first.
  */
 import { applyMatrix, powerMatrix, type Matrix } from "../numeric/matrix-mod.js";
+import { combined } from "./linear.js";
 import { pseudoRandom, type State } from "./pseudo-random.js";
 import { equalWords, parseWords } from "./published-state.js";
 
@@ -61,6 +62,13 @@ export const mrg32k3a = pseudoRandom({
       allowed: `six words, three below ${M1} and three below ${M2}, neither three all 0, like "12345,12345,12345,12345,12345,12345",`,
       valid,
     }),
+  linear: combined(
+    [
+      { multipliers: [0n, 1403580n, M1 - 810728n], modulus: M1 },
+      { multipliers: [527612n, 0n, M2 - 1370589n], modulus: M2 },
+    ],
+    "the output z / 4294967088 differs from x / m1 - y / m2 by less than 6e-6",
+  ),
   kernel: (exports) => exports.fillMrg32k3a,
   *integers(start) {
     let [x, y] = [start.slice(0, 3), start.slice(3)];

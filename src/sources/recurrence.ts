@@ -3,6 +3,7 @@ import type { FillWords, GeneratorExports } from "../kernels/generator-exports.j
 import type { SourceDescription } from "./contract.js";
 import type { Bits, Endpoint, OutputWords } from "./conversion.js";
 import type { Key } from "./key.js";
+import type { LinearRecurrence } from "./linear.js";
 import { UNIFORM_STATE, type Seeding } from "./seeding.js";
 
 /** A generator's state as 64-bit words, in the layout of its kernel. */
@@ -27,6 +28,8 @@ export interface Recurrence {
   kernel(exports: GeneratorExports): FillWords;
   /** The definition, in BigInt: the published integers from a state on. Plain and slow; the kernel's oracle in tests. */
   integers(state: State): Iterator<bigint, never>;
+  /** The linear recurrence of one output to the next; absent where there is none (modulo a whole number). */
+  readonly linear?: LinearRecurrence;
   /** The state `words` kernel words later, in O(log words). */
   advance?(state: State, words: bigint): State;
 }

@@ -55,6 +55,7 @@ export function recursive(about: About, { multipliers, increment, modulus }: Rec
           valid,
         }),
       ),
+    linear: { multipliers, increment, modulus, note: null },
     constants: [BigInt(order), BigInt(terms.length), increment, scaled, reciprocal, shift, ...terms.flat()],
     kernel: (exports) => exports.fillRecursive,
     *integers(state) {

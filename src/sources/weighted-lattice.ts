@@ -8,7 +8,7 @@
  */
 import { constructOrderVector, constructVector } from "../numeric/lattice-construction.js";
 import { isPrime } from "../numeric/factor.js";
-import type { Source } from "./contract.js";
+import type { RankOneLattice } from "./contract.js";
 import { openLattice, rankOneLattice } from "./lattice.js";
 import { nearestPowerOfTwo } from "./quasi-random.js";
 
@@ -29,7 +29,7 @@ export const LARGEST_WEIGHTED = 1000;
 const LARGEST_SIZE = 2 ** 20;
 
 /** The lattice of these weights, for n a power of two or a prime up to 2^20. Throws RangeError for more than 1,000 product weights. */
-export function weightedLattice(id: string, { kind, weights, dimension }: LatticeWeights): Source {
+export function weightedLattice(id: string, { kind, weights, dimension }: LatticeWeights): RankOneLattice {
   if (dimension > LARGEST_WEIGHTED) {
     throw new RangeError(
       `source.lattice.weights.product: expected at most ${LARGEST_WEIGHTED} weights, found ${dimension}`,
@@ -45,7 +45,7 @@ export function weightedLattice(id: string, { kind, weights, dimension }: Lattic
     }
     return vector;
   };
-  const source: Source = {
+  const source: RankOneLattice = {
     ...rankOneLattice,
     family: "own",
     id,
@@ -55,7 +55,8 @@ export function weightedLattice(id: string, { kind, weights, dimension }: Lattic
     largestDimension: dimension,
     nearestSize: (n) =>
       n > 2 && n <= LARGEST_SIZE && isPrime(BigInt(n)) ? n : nearestPowerOfTwo(n, LARGEST_SIZE),
-    open: (request, kernels) => openLattice(source, vectorOf, request, kernels),
+    generatingVector: (n, coordinates) => Array.from(vectorOf(n).subarray(0, coordinates), BigInt),
+    open: (request, kernels) => openLattice(source, request, kernels),
   };
   return source;
 }

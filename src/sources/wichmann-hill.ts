@@ -31,6 +31,7 @@ export const wichmannHill = pseudoRandom(
     output: { modulus: PRODUCT, bytes: 8, zeroless: true, integers: 1 },
     combine: ([x = 0n, y = 0n, z = 0n]) =>
       (x * 30307n * 30323n + y * 30269n * 30323n + z * 30269n * 30307n) % PRODUCT,
+    note: null,
     kernel: (exports) => exports.fillWichmannHill,
   }),
 );

@@ -24,6 +24,11 @@ interface LatticeReference {
   readonly d: number;
   readonly P2: string;
   readonly P2_weights_1_over_j2: string;
+  /** Shortest dual vector, squared, and the one of least sum of absolute values. */
+  readonly nu2: number;
+  readonly shortest_dual_vector: number[];
+  readonly l1_min: number;
+  readonly l1_vector: number[];
 }
 
 interface QmcReference {

@@ -100,7 +100,8 @@ interface Periods {
 }
 
 function read<T>(name: string): T {
-  return JSON.parse(readFileSync(new URL(`./data/${name}`, import.meta.url), "utf8"));
+  const data: unknown = JSON.parse(readFileSync(new URL(`./data/${name}`, import.meta.url), "utf8"));
+  return data as T;
 }
 
 export const dualLattices = read<DualLattices>("dual-lattices.json");

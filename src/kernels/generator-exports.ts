@@ -88,4 +88,20 @@ export interface GeneratorExports {
   /** Keeps words 0, step, 2 step, ..., `count` in all, in place. */
   readonly keepEvery32: (words: number, count: number, step: number) => void;
   readonly keepEvery64: (words: number, count: number, step: number) => void;
+  /**
+   * 64-bit words first, first + step, ... modulo `modulus`, at most 2^48; gives the word that follows. Writes up to
+   * three words behind the last.
+   */
+  readonly fillProgression: (
+    out: number,
+    count: number,
+    first: number,
+    step: number,
+    modulus: number,
+  ) => number;
+  /**
+   * 32-bit words of the states first, first + 1, ... below 2^32 under the linear map at `map`: its 32 columns, then the
+   * words of the states 0 ... 255. Writes up to three words behind the last.
+   */
+  readonly fillSpan32: (out: number, count: number, first: number, map: number) => void;
 }

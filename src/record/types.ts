@@ -206,6 +206,27 @@ export interface Budget {
   readonly inUse: boolean;
 }
 
+/** The integrand averaged over every valid starting state of a source. */
+export interface FullCycleAverage {
+  readonly states: number;
+  readonly mean: number;
+  /** The exact seed-averaged bias: the mean less the reference; null without one. */
+  readonly bias: number | null;
+  readonly referenceUncertainty: number | null;
+  /** Standard deviation of the integrand over the states; null for a single one. */
+  readonly deviation: number | null;
+  /** States with a non-finite value; the mean then is not finite either. */
+  readonly nonFinite: number;
+  /** The first of them by its index in the order of states. */
+  readonly offending: {
+    readonly index: number;
+    readonly inputs: readonly number[];
+    readonly value: string;
+  } | null;
+  /** Coordinates that were exactly 0 or 1, of sources where they may be. */
+  readonly endpoints: number;
+}
+
 export interface StudyRecord {
   readonly schema: typeof RECORD_SCHEMA;
   readonly spec: StudySpec;

@@ -12,9 +12,10 @@
 import type { FillWords, GeneratorExports } from "../kernels/generator-exports.js";
 import { affinePower, applyAffine, type Affine } from "../numeric/affine.js";
 import { coprime } from "../numeric/factor.js";
-import { bitsOf, divisorOf } from "./conversion.js";
+import { bitsOf, divisorOf, type Bits } from "./conversion.js";
 import type { Key } from "./key.js";
 import type { About, Recurrence } from "./pseudo-random.js";
+import { countOf, digitalWords, units, type Digital, type StateSpace } from "./states.js";
 
 /** Largest modulus that the kernels hold. */
 export const LARGEST_MODULUS = 1n << 64n;
@@ -43,6 +44,7 @@ export function congruential(about: About, map: Affine): Recurrence {
       for (;;) yield (x = applyAffine(map, x));
     },
     advance: ([x = 0n], steps) => [applyAffine(affinePower(map, steps), x)],
+    states: (bits) => statesOf(about.id, map, bits),
   };
 }
 
@@ -63,6 +65,36 @@ function reduction({ modulus }: Affine): {
   }
   const { scaled, reciprocal, shift } = divisorOf(modulus);
   return { kernel: (exports) => exports.fillGeneral, words: [scaled, reciprocal, shift] };
+}
+
+/** The states of a map; where only low bits of a power of two are used, they are a generator modulo a smaller one. */
+function statesOf(id: string, map: Affine, bits: Bits | null): StateSpace {
+  const lowest = bits?.end === "low" ? 1n << BigInt(bits.count) : 0n;
+  const modulus = lowest > 0n && map.modulus % lowest === 0n ? lowest : map.modulus;
+  const multiplier = map.multiplier % modulus;
+  const increment = map.increment % modulus;
+  if (!coprime(multiplier, modulus)) {
+    throw new RangeError(
+      `source "${id}": multiplier ${map.multiplier} and modulus ${map.modulus} have a common factor, so a run leaves some of its states for ever, and an average over all states is not one over its points`,
+    );
+  }
+  const digits =
+    map.increment === 0n ? units(modulus) : { constant: 0n, sizes: [modulus], weights: [1n], skipped: 0n };
+  return {
+    count: countOf(digits),
+    output: { modulus, bytes: 8, zeroless: map.increment === 0n, integers: 1 },
+    bits,
+    open: (outputs, kernels) => {
+      const rows = outputs.map((output): Digital => {
+        const power = affinePower({ multiplier, increment, modulus }, output);
+        return {
+          constant: applyAffine(power, digits.constant),
+          weights: digits.weights.map((weight) => (power.multiplier * weight) % modulus),
+        };
+      });
+      return digitalWords(digits, rows, modulus, kernels);
+    },
+  };
 }
 
 /** A state coprime to m, by rejection: at least one in ten is, whatever m up to 2^64. */

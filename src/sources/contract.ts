@@ -120,6 +120,18 @@ export interface Source extends SourceDescription {
   repetition?(first: number, second: number, dimension: number, n: number): string;
 }
 
+/** A source whose valid starting states can all be gone through. */
+export interface FullCycle extends Source {
+  /** Throws a RangeError with what can be done instead where this one's states cannot. */
+  cycle(): Cycle;
+}
+
+/** Every valid starting state once, in a fixed order: point i is the tuple that state i begins. */
+export interface Cycle {
+  readonly states: number;
+  open(dimension: number, kernels: Kernels): PointStream & Seekable & Partial<EndpointCounter>;
+}
+
 /** A source whose own integer outputs can be seen, as published. */
 export interface IntegerSource extends Source {
   /** The source's own integers from a key or a published state, in order. */

@@ -11,6 +11,8 @@ import {
   type LinearStep,
 } from "../numeric/gf2-polynomial.js";
 import { equalWords, parseWords } from "./published-state.js";
+import type { Bits } from "./conversion.js";
+import { f2States } from "./f2-states.js";
 import type { About, Recurrence, State } from "./pseudo-random.js";
 
 export interface F2Linear {
@@ -80,6 +82,9 @@ export function f2Linear(generator: F2Linear): Recurrence {
       );
       return applyPolynomial(powerOfX(count - 1n, polynomial), step, start);
     },
+    ...(words === 1 && wordBits === 32 && least === undefined
+      ? { states: (bits: Bits | null) => f2States(generator, bits) }
+      : {}),
   };
 }
 

@@ -17,6 +17,7 @@ import type {
   Seekable,
   Source,
 } from "./contract.js";
+import { cycleOf } from "./cycle.js";
 import { withEndpoints } from "./endpoints.js";
 import { USUAL, type Recurrence, type State, type Usage } from "./recurrence.js";
 import { restoreStates, saveStates } from "./saved-state.js";
@@ -73,6 +74,7 @@ export function pseudoRandom(
         ? withEndpoints(stream, usage.float32, kernels)
         : stream;
     },
+    ...(recurrence.states === undefined ? {} : { cycle: () => cycleOf(recurrence, usage) }),
     openIntegers: (request) => {
       const integers = recurrence.integers(startingState(recurrence, seeded(seeding, request)));
       const { bits } = usage;

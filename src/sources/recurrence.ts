@@ -5,6 +5,7 @@ import type { Bits, Endpoint, OutputWords } from "./conversion.js";
 import type { Key } from "./key.js";
 import type { LinearRecurrence } from "./linear.js";
 import { UNIFORM_STATE, type Seeding } from "./seeding.js";
+import type { StateSpace } from "./states.js";
 
 /** A generator's state as 64-bit words, in the layout of its kernel. */
 export type State = readonly bigint[];
@@ -32,6 +33,11 @@ export interface Recurrence {
   readonly linear?: LinearRecurrence;
   /** The state `words` kernel words later, in O(log words). */
   advance?(state: State, words: bigint): State;
+  /**
+   * All that `stateFromKey` may draw, as they matter where these bits of an output are used (null for all). Throws
+   * RangeError where the map is not one to one on them, so that later outputs are spread otherwise than first ones.
+   */
+  states?(bits: Bits | null): StateSpace;
 }
 
 /** How outputs become coordinates of points; `strided` with step 1 is `successive`. */

@@ -6,10 +6,12 @@
  *
  * Starting states: k uniform words, not all 0 without an increment. The published form is the words, oldest first.
  */
+import { coprime } from "../numeric/factor.js";
 import { applyMatrix, powerMatrix, type Matrix } from "../numeric/matrix-mod.js";
 import { divisorOf } from "./conversion.js";
 import { equalWords, parseWords } from "./published-state.js";
 import type { About, Recurrence, State } from "./pseudo-random.js";
+import { countOf, digitalWords, type Digital } from "./states.js";
 
 export const LARGEST_ORDER = 64;
 
@@ -69,6 +71,29 @@ export function recursive(about: About, { multipliers, increment, modulus }: Rec
       const matrix = companion(multipliers, increment);
       const after = applyMatrix(powerMatrix(matrix, steps, modulus), [...unpack(state), 1n], modulus);
       return pack(after.slice(0, order));
+    },
+    states: (bits) => {
+      const last = multipliers[order - 1] ?? 0n;
+      if (!coprime(last, modulus)) {
+        throw new RangeError(
+          `source "${about.id}": the last multiplier ${last} and modulus ${modulus} have a common factor, so a run leaves some of its states for ever, and an average over all states is not one over its points`,
+        );
+      }
+      const digits = { sizes: multipliers.map(() => modulus), skipped: increment === 0n ? 1n : 0n };
+      const matrix = companion(multipliers, increment);
+      return {
+        count: countOf(digits),
+        output: { modulus, bytes: 8, zeroless: false, integers: 1 },
+        bits,
+        open: (outputs, kernels) => {
+          // the newest word of the state that many steps later
+          const rows = outputs.map((output): Digital => {
+            const weights = powerMatrix(matrix, output, modulus)[order - 1] ?? [];
+            return { constant: weights[order] ?? 0n, weights: weights.slice(0, order) };
+          });
+          return digitalWords(digits, rows, modulus, kernels);
+        },
+      };
     },
   };
 }

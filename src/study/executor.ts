@@ -5,12 +5,12 @@ import type { RunnableProblem } from "./runnable.js";
 import { TaskRunner } from "./run-task.js";
 import type { Task, TaskResult } from "./tasks.js";
 
-export interface Executor {
+export interface Executor<T = Task, R = TaskResult> {
   /**
    * Runs the tasks, calling `done` for each result. Resolves when all are done, or, after `signal` is aborted, when
    * the tasks in flight are. Rejects with the first error of a task.
    */
-  run(tasks: readonly Task[], done: (result: TaskResult) => void, signal: AbortSignal): Promise<void>;
+  run(tasks: readonly T[], done: (result: R) => void, signal: AbortSignal): Promise<void>;
   close(): Promise<void>;
 }
 
@@ -25,11 +25,25 @@ const NO_LEAVE: Leave = { allowPrograms: false };
 /** Runs tasks one after the other in this thread: for tests and for the library. */
 export function inProcess(problems: readonly RunnableProblem[], leave: Leave = NO_LEAVE): Executor {
   const runner = new TaskRunner(problems, leave.allowPrograms);
+  return serially((task) => runner.run(task));
+}
+
+/** Runs the tasks of studies on worker threads. */
+export function threads(
+  problems: readonly RunnableProblem[],
+  count: number,
+  leave: Leave = NO_LEAVE,
+): Executor {
+  return onThreads("worker.js", { problems, ...leave }, count);
+}
+
+/** Runs tasks of any kind one after the other in this thread. */
+export function serially<T, R>(runTask: (task: T) => R): Executor<T, R> {
   return {
     async run(tasks, done, signal) {
       for (const task of tasks) {
         if (signal.aborted) return;
-        done(runner.run(task));
+        done(runTask(task));
         await setImmediate();
       }
     },
@@ -37,26 +51,25 @@ export function inProcess(problems: readonly RunnableProblem[], leave: Leave = N
   };
 }
 
-/** Runs tasks on worker threads. Two tasks a thread are in flight, so that no thread waits and an interruption is quick. */
-export function threads(
-  problems: readonly RunnableProblem[],
-  count: number,
-  leave: Leave = NO_LEAVE,
-): Executor {
+/**
+ * Runs tasks of any kind on worker threads, whose entry in this room takes one at a time. Two tasks a thread are in
+ * flight, so that no thread waits and an interruption is quick.
+ */
+export function onThreads<T, R>(entry: string, workerData: unknown, count: number): Executor<T, R> {
   const pool = new Piscina({
-    filename: new URL("../../dist/study/worker.js", import.meta.url).href,
+    filename: new URL(`../../dist/study/${entry}`, import.meta.url).href,
     minThreads: count,
     maxThreads: count,
     concurrentTasksPerWorker: 1,
-    workerData: { problems, ...leave },
+    workerData,
   });
   return {
     async run(tasks, done, signal) {
       let next = 0;
       const lane = async (): Promise<void> => {
         while (next < tasks.length && !signal.aborted) {
-          const task = tasks[next++] as Task;
-          done((await pool.run(task)) as TaskResult);
+          const task = tasks[next++] as T;
+          done((await pool.run(task)) as R);
         }
       };
       await Promise.all(Array.from({ length: Math.min(tasks.length, 2 * count) }, lane));

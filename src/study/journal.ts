@@ -18,22 +18,32 @@ export function journalOwner(path: string): string | null {
 }
 
 /** A journal opened for appending, with what it already held. */
-export interface Journal {
+export interface Journal<R = TaskResult> {
   /** Results by task id from an earlier run of the same spec. */
-  readonly done: ReadonlyMap<string, TaskResult>;
-  add(result: TaskResult): void;
+  readonly done: ReadonlyMap<string, R>;
+  add(result: R): void;
   /** Removes the file: the record has taken its place. */
   remove(): void;
 }
 
-/** Opens the journal at `path` for the spec with digest `spec`; `resume` keeps what an earlier run of it left. */
+/** Opens the journal of a study at `path` for the spec with digest `spec`; `resume` keeps what an earlier run left. */
 export function openJournal(path: string, spec: string, resume: boolean): Journal {
+  return openJournalOf(path, spec, resume, revive);
+}
+
+/** As `openJournal` for results of any kind; `revived` makes one of its parsed line. */
+export function openJournalOf<R extends { readonly id: string }>(
+  path: string,
+  spec: string,
+  resume: boolean,
+  revived: (parsed: R) => R,
+): Journal<R> {
   mkdirSync(dirname(path), { recursive: true });
-  const done = new Map<string, TaskResult>();
+  const done = new Map<string, R>();
   if (resume && journalOwner(path) === spec) {
     for (const line of readFileSync(path, "utf8").split("\n").slice(1)) {
-      const result = parseLine(line);
-      if (result !== null) done.set((result as TaskResult).id, revive(result as TaskResult));
+      const result = parseLine(line) as R | null;
+      if (result !== null) done.set(result.id, revived(result));
     }
   }
   // Rewritten whole, so that a cut last line does not stay in the middle.

@@ -22,6 +22,7 @@ export { fillPhilox4x32 } from "./philox4x32";
 export { fillSfc64, fillSplitMix64 } from "./small64";
 export { fillRecursive, fillXorshiftTriple32, fillXorshiftTriple64 } from "./recursive";
 export { fillLfsr113, fillTaus88 } from "./tausworthe";
+export { fillProgression, fillSpan32 } from "./states";
 export { fillXoroshiro128Plus, fillXoroshiro128PlusPlus, fillXoroshiro128StarStar } from "./xoroshiro128";
 export { fillXorshift128, fillXorshift32, fillXorshift64Star } from "./xorshift";
 export { fillXoshiro256Plus, fillXoshiro256PlusPlus, fillXoshiro256StarStar } from "./xoshiro256";

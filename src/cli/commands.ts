@@ -68,6 +68,21 @@ export const commands: readonly Command[] = [
     load: () => import("./commands/explain.js"),
   },
   {
+    name: "inspect",
+    positional: "<sources..>",
+    summary: "structure of sources: period, low bits, dual lattice and planes by dimension",
+    options: {
+      dimension: { ...dimension, describe: "numbers of coordinates, e.g. 2..16 (the default), 8 or 2,3,6" },
+      points: text("points of a planned study, or of a point set"),
+      streams: text("independent runs of that many points"),
+      state: text("the source's own starting state in published form, or @file"),
+      indices: text("an index set, 0-based: which outputs or coordinates, e.g. 0,1,5"),
+      span: text("index sets of the worst projections lie below this index (12)"),
+      json,
+    },
+    load: () => import("./commands/inspect.js"),
+  },
+  {
     name: "check",
     positional: "<paths..>",
     summary: "validate problem files and print what the program understood",

@@ -33,6 +33,14 @@ export const messages = {
   oneProblem: (path: string, found: readonly string[]) =>
     `problem: expected one problem, found ${found.length} in "${path}"; name one of them: ${found.slice(0, 6).join(", ")}`,
   explainNeeds: (problem: string) => `explain: nothing to explain about "${problem}" yet`,
+  dimensions: (most: number, found: string) =>
+    `--dimensions: expected whole numbers from 2 to ${most} such as 2..16, 8 or 2,3,6, found "${found}"`,
+  indices: (most: number, found: string) =>
+    `--indices: expected at most ${most} whole numbers from 0 such as 0,1,5, found "${found}"`,
+  repeatedIndex: (repeated: number, found: string) =>
+    `--indices: expected indices that differ, found ${repeated} twice in "${found}"`,
+  nothingToInspect: (id: string, why: readonly string[]) =>
+    `source: nothing can be said about the structure of "${id}" (${why.join("; ")}); tolerand study measures what it does`,
   next: (text: string) => `Next: ${text}\n`,
 };
 

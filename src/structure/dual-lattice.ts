@@ -51,18 +51,27 @@ export const DEFAULT_STEPS: Steps = { squaredLength: 2 ** 27, absoluteSum: 2 ** 
 
 export const LARGEST_DUAL_DIMENSION = LARGEST_HERMITE;
 
+export interface DualRequest {
+  /** The first dimension that is given. */
+  readonly from?: number;
+  readonly steps?: Steps;
+  /** The dimensions that are given; absent for all of them. */
+  readonly wanted?: ReadonlySet<number>;
+}
+
 /** The dual lattice of the outputs with these indices, dimension after dimension from 1 on (2 at least are of use). */
 export function* dualFigures(
   tuples: Tuples,
   indices: readonly number[],
-  { from = 2, steps = DEFAULT_STEPS }: { readonly from?: number; readonly steps?: Steps } = {},
+  { from = 2, steps = DEFAULT_STEPS, wanted }: DualRequest = {},
 ): Generator<DualFigures, void> {
   checkIndices(tuples, indices);
   const lattice = new KernelLattice(tuples.modulus, tuples.residues);
   const basis = new ReducedBasis();
   for (const index of indices) {
     basis.append(lattice.append(tuples.vector(index)));
-    if (basis.size >= from) yield figuresOf(basis, lattice.determinant, steps);
+    if (basis.size >= from && wanted?.has(basis.size) !== false)
+      yield figuresOf(basis, lattice.determinant, steps);
   }
 }
 

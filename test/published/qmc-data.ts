@@ -29,6 +29,33 @@ interface LatticeReference {
   readonly shortest_dual_vector: number[];
   readonly l1_min: number;
   readonly l1_vector: number[];
+  readonly P4: string;
+  readonly P6: string;
+  readonly zaremba_rho: number;
+  readonly zaremba_vector: number[];
+}
+
+export interface DiscrepancyReference {
+  readonly n: number;
+  readonly d: number;
+  /** Squares to 25 digits from exact rational arithmetic, and their roots. */
+  readonly centered_L2_squared: string;
+  readonly centered_L2: string;
+  readonly wraparound_L2_squared: string;
+  readonly wraparound_L2: string;
+  readonly mixture_L2_squared: string;
+  readonly mixture_L2: string;
+  readonly L2_star_squared_warnock: string;
+  readonly L2_star_warnock: string;
+  readonly modified_L2_star_squared_hickernell: string;
+  readonly modified_L2_star_hickernell: string;
+  /** As SciPy gives them: squares, of star L2 the root. */
+  readonly scipy_CD: number;
+  readonly scipy_WD: number;
+  readonly scipy_MD: number;
+  readonly "scipy_L2-star": number;
+  /** Exact, for sets small enough. */
+  readonly star_discrepancy?: string;
 }
 
 interface QmcReference {
@@ -43,6 +70,8 @@ interface QmcReference {
     readonly direction_integers_v_k_32bit: Record<string, string[]>;
     /** Keys like "dims1..3", then m: the least t of the first 2^m points. */
     readonly "t_values_first_2^m_points": Record<string, Record<string, number>>;
+    /** Keys like "27,32", then m. */
+    readonly t_values_2d_projections: Record<string, Record<string, number>>;
   };
   readonly niederreiter_base2_gsl: { readonly numerators_2_32: string[][] };
   readonly faure: Record<string, { readonly base: number; readonly first27_fractions: string[][] }>;
@@ -51,7 +80,14 @@ interface QmcReference {
     readonly first16_fractions: string[][];
     readonly at_n: Record<string, string[]>;
   };
-  readonly rank1_lattices: { readonly lattices: LatticeReference[] };
+  readonly rank1_lattices: {
+    readonly lattices: LatticeReference[];
+    readonly fibonacci_rho_check: Record<string, number>;
+  };
+  readonly discrepancy: {
+    readonly sets: Record<string, DiscrepancyReference>;
+    readonly one_dimensional: Record<string, { star: string; extreme: string }>;
+  };
   readonly cbc: CbcReference[];
 }
 

@@ -1,0 +1,2 @@
+// Exports of the discrepancy group of kernels.
+export { minimumPairs, mixturePairs, wraparoundPairs } from "./products";

@@ -24,6 +24,8 @@ export const messages = {
     `--${flag}: expected a whole number of at least ${least}, found "${found}"`,
   interrupted: (folder: string, command: string) =>
     `Interrupted. What is done stands in ${folder}.\nNext: ${command}${command.includes(" --resume") ? "" : " --resume"}\n`,
+  cycleInterrupted: (file: string, command: string) =>
+    `Interrupted. The states that are done stand in ${file}.\nNext: ${command}   (the same command goes on from there)\n`,
   unfinished: (folder: string) =>
     `--out: ${folder} holds an unfinished run of this study; go on with --resume, or start anew with --replace`,
   otherJournal: (folder: string) =>
@@ -41,6 +43,10 @@ export const messages = {
     `--indices: expected indices that differ, found ${repeated} twice in "${found}"`,
   nothingToInspect: (id: string, why: readonly string[]) =>
     `source: nothing can be said about the structure of "${id}" (${why.join("; ")}); tolerand study measures what it does`,
+  probe: (source: string, planes: string, gap: number, error: number) =>
+    `Tuples of ${source} lie on planes of ${planes}, ${Number(gap.toPrecision(3))} apart; predicted error ${error > 0 ? "+" : "−"}${Math.abs(Number((100 * error).toPrecision(3)))} % of the integral.\n`,
+  probeUnseen: (source: string, planes: string, least: number) =>
+    `source "${source}": its own points do not stand on the planes of ${planes} as its recurrence says (least cosine ${Number(least.toPrecision(3))}, expected 1); no probe is written`,
   next: (text: string) => `Next: ${text}\n`,
 };
 

@@ -34,9 +34,17 @@ export function mostColumns(base: number): number {
   return base === 2 ? WORD : Math.floor(Math.log(2 ** 53) / Math.log(base));
 }
 
-/** Over GF(base), base a prime below 2^15, for the first `columns` columns of the matrices, entries 0...base - 1. */
-export function elimination(base: number, columns: number, matrices: readonly Matrix[]): Elimination {
-  return base === 2 ? new Words(columns, matrices) : new Digits(base, columns, matrices);
+/**
+ * Over GF(base), base a prime below 2^15, for the first `columns` columns and `depth` rows (at least `columns`) of the
+ * matrices, entries 0...base - 1.
+ */
+export function elimination(
+  base: number,
+  columns: number,
+  matrices: readonly Matrix[],
+  depth = columns,
+): Elimination {
+  return base === 2 ? new Words(columns, matrices, depth) : new Digits(base, columns, matrices, depth);
 }
 
 class Words implements Elimination {
@@ -51,28 +59,32 @@ class Words implements Elimination {
   /** Products of four bits at a time with the inverse of the frame. */
   readonly #products = new Int32Array(8 * 16);
 
-  constructor(columns: number, matrices: readonly Matrix[]) {
+  readonly #depth: number;
+
+  constructor(columns: number, matrices: readonly Matrix[], depth: number) {
+    this.#depth = depth;
     this.columns = columns;
     this.matrices = matrices.length;
-    this.#rows = new Int32Array(matrices.length * columns);
-    this.#framed = new Int32Array(matrices.length * columns);
+    this.#rows = new Int32Array(matrices.length * depth);
+    this.#framed = new Int32Array(matrices.length * depth);
     for (const [j, matrix] of matrices.entries()) {
-      for (let r = 0; r < Math.min(columns, matrix.rows); r++) {
+      for (let r = 0; r < Math.min(depth, matrix.rows); r++) {
         let word = 0;
         for (let c = 0; c < columns; c++) word |= matrix.get(r, c) << c;
-        this.#rows[j * columns + r] = word;
+        this.#rows[j * depth + r] = word;
       }
     }
   }
 
   frame(first: number): number {
     const { columns } = this;
+    const start = first * this.#depth;
     this.reset();
     // the frame's rows, then unit vectors that fill it up
     const chosen: number[] = [];
     let independent = 0;
-    while (independent < columns && this.#reduce(this.#rows[first * columns + independent] ?? 0) >= 0) {
-      chosen.push(this.#rows[first * columns + independent++] ?? 0);
+    while (independent < columns && this.#reduce(this.#rows[start + independent] ?? 0) >= 0) {
+      chosen.push(this.#rows[start + independent++] ?? 0);
     }
     for (let c = 0; c < columns && chosen.length < columns; c++) {
       if (this.#reduce(1 << c) >= 0) chosen.push(1 << c);
@@ -86,7 +98,7 @@ class Words implements Elimination {
         this.#products[part * 16 + bits] = rest ^ (inverse[part * 4 + low] ?? 0);
       }
     }
-    for (let at = first * columns; at < this.#rows.length; at++) {
+    for (let at = start; at < this.#rows.length; at++) {
       let word = 0;
       for (let rest = this.#rows[at] ?? 0, part = 0; rest !== 0; rest >>>= 4, part += 16) {
         word ^= this.#products[part + (rest & 15)] ?? 0;
@@ -97,7 +109,7 @@ class Words implements Elimination {
   }
 
   insert(j: number, r: number): number {
-    return this.#reduce(r < this.columns ? (this.#framed[j * this.columns + r] ?? 0) : 0);
+    return this.#reduce(r < this.#depth ? (this.#framed[j * this.#depth + r] ?? 0) : 0);
   }
 
   pop(): void {
@@ -157,12 +169,12 @@ class Digits implements Elimination {
   readonly #echelon: (Int32Array | null)[];
   readonly #places: number[] = [];
 
-  constructor(base: number, columns: number, matrices: readonly Matrix[]) {
+  constructor(base: number, columns: number, matrices: readonly Matrix[], depth: number) {
     this.base = base;
     this.columns = columns;
     this.matrices = matrices.length;
     this.#rows = matrices.map((matrix) =>
-      Array.from({ length: columns }, (_, r) =>
+      Array.from({ length: depth }, (_, r) =>
         Int32Array.from({ length: columns }, (_, c) => (r < matrix.rows ? matrix.get(r, c) : 0)),
       ),
     );
@@ -175,7 +187,7 @@ class Digits implements Elimination {
     this.reset();
     const chosen: Int32Array[] = [];
     const own = this.#rows[first] ?? [];
-    for (const row of own) {
+    for (const row of own.slice(0, columns)) {
       if (this.#reduce(row) < 0) break;
       chosen.push(row);
     }

@@ -45,10 +45,18 @@ export function isMixed(v: Row): boolean {
   return v.some((entry) => entry > 0n) && v.some((entry) => entry < 0n);
 }
 
-/** The shortest vectors of a reduced basis. Candidates of coordinates are counted as steps, at most `limit` of them. */
-export function shortestVectors(basis: ReducedBasis, norm: Norm, limit: number): ShortVectors {
+/**
+ * The shortest vectors of a reduced basis. Candidates of coordinates are counted as steps, at most `limit` of them. `known`
+ * are vectors of the lattice that may be short: the search begins with the best of them and of the basis.
+ */
+export function shortestVectors(
+  basis: ReducedBasis,
+  norm: Norm,
+  limit: number,
+  known: readonly Row[] = [],
+): ShortVectors {
   const shortest = norm === "squared-length" ? new AllShortest() : new OneShortest(basis);
-  for (const row of basis.rows) shortest.offer(row);
+  for (const row of [...basis.rows, ...known]) shortest.offer(row);
   const search = new Search(basis, norm, shortest);
   const complete = search.run(limit) && shortest.all;
   return { norm: shortest.norm ?? 0n, vectors: shortest.sorted(), complete, steps: search.steps };

@@ -13,6 +13,12 @@ export interface LinearRecurrence {
   readonly modulus: bigint;
   /** What outputs are beside x / m, in a few words; null where they are just that (or the middle of its cell). */
   readonly note: string | null;
+  /** Where some of every `block` terms are dropped: the first `kept` are outputs. Absent where every term is one. */
+  readonly luxury?: { readonly kept: number; readonly block: number };
+  /** Words of state, which fill a cube of this dimension evenly, where they are more than the multipliers. */
+  readonly words?: number;
+  /** Terms that a short relation ties together, 0-based, where the multipliers do not show them. */
+  readonly lags?: readonly number[];
 }
 
 /** The recurrence of the sum of fractions of components without increment, whose moduli are coprime in pairs. */

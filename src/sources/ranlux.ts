@@ -12,6 +12,8 @@
  * a seed of 40014 x mod 2147483563 (19780503 by default in C++), one output a word, or two, the first one low; James fills
  * the words from the newest, C++ from the oldest.
  */
+import { inverseMod } from "../numeric/factor.js";
+import type { LinearRecurrence } from "./linear.js";
 import { pseudoRandom, type PseudoRandomSource, type State } from "./pseudo-random.js";
 import { equalWords, parseWords } from "./published-state.js";
 
@@ -46,6 +48,22 @@ function fromSeed(seed: bigint, { long, bits }: Lags, first: Luxury["first"]): S
   return pack(first === "oldest" ? words : words.toReversed(), words.at(-1) === 0n ? 1n : 0n);
 }
 
+/**
+ * The congruential generator whose outputs w / m begin with the words as their first digits in base 2^b: multiplier 1 / 2^b,
+ * modulus m = 2^(rb) - 2^(sb) + 1 (Tezuka, L'Ecuyer and Couture, 1993).
+ */
+function equivalent({ long, short, bits }: Lags, { kept, block }: Luxury): LinearRecurrence {
+  const modulus = (1n << BigInt(long * bits)) - (1n << BigInt(short * bits)) + 1n;
+  return {
+    multipliers: [inverseMod(1n << BigInt(bits), modulus)],
+    increment: 0n,
+    modulus,
+    note: `Subtract with borrow as its equivalent congruential generator: outputs are the first ${bits} bits of its fractions, so a plane h is blurred by up to |h|₁ / 2^${bits}.`,
+    words: long,
+    ...(kept === block ? { lags: [0, long - short, long] } : { luxury: { kept, block } }),
+  };
+}
+
 function subtractWithBorrow(
   id: string,
   title: string,
@@ -78,6 +96,7 @@ function subtractWithBorrow(
       const form = { id, words: equalWords(1, 1n << 32n), allowed: "a seed below 2^32" };
       return fromSeed(parseWords(text, form)[0] ?? 0n, lags, luxury.first);
     },
+    linear: equivalent(lags, luxury),
     constants: [long, short, bits, luxury.block, luxury.kept].map(BigInt),
     kernel: (exports) => exports.fillSubtractWithBorrow,
     *integers(state) {

@@ -54,7 +54,8 @@ export const LARGEST_DUAL_DIMENSION = LARGEST_HERMITE;
 export interface DualRequest {
   /** The first dimension that is given. */
   readonly from?: number;
-  readonly steps?: Steps;
+  /** The same for all dimensions, or by dimension. */
+  readonly steps?: Steps | ((dimension: number) => Steps);
   /** The dimensions that are given; absent for all of them. */
   readonly wanted?: ReadonlySet<number>;
 }
@@ -68,10 +69,16 @@ export function* dualFigures(
   checkIndices(tuples, indices);
   const lattice = new KernelLattice(tuples.modulus, tuples.residues);
   const basis = new ReducedBasis();
+  let known: readonly Row[] = [];
   for (const index of indices) {
     basis.append(lattice.append(tuples.vector(index)));
-    if (basis.size >= from && wanted?.has(basis.size) !== false)
-      yield figuresOf(basis, lattice.determinant, steps);
+    // a relation between fewer outputs is one between more
+    known = known.map((row) => [...row, 0n]);
+    if (!(basis.size >= from && wanted?.has(basis.size) !== false)) continue;
+    const most = typeof steps === "function" ? steps(basis.size) : steps;
+    const figures = figuresOf(basis, lattice.determinant, most, known);
+    known = [figures.vector, figures.l1Vector];
+    yield figures;
   }
 }
 
@@ -82,10 +89,15 @@ export function dualFigure(tuples: Tuples, indices: readonly number[], steps = D
   return figures;
 }
 
-function figuresOf(basis: ReducedBasis, determinant: bigint, steps: Steps): DualFigures {
+function figuresOf(
+  basis: ReducedBasis,
+  determinant: bigint,
+  steps: Steps,
+  known: readonly Row[],
+): DualFigures {
   const dimension = basis.size;
-  const short = shortestVectors(basis, "squared-length", steps.squaredLength);
-  const sparse = shortestVectors(basis, "absolute-sum", steps.absoluteSum);
+  const short = shortestVectors(basis, "squared-length", steps.squaredLength, known);
+  const sparse = shortestVectors(basis, "absolute-sum", steps.absoluteSum, [...known, ...short.vectors]);
   const [vector = [], l1Vector = []] = [short.vectors[0], sparse.vectors[0]];
   const root = integerRoot(factorial(dimension) * determinant, dimension);
   return {

@@ -17,17 +17,22 @@ export interface Tuples {
   readonly size: number | null;
 }
 
-/** Every `stride`-th output of a recurrence: v_i is x^(i stride) modulo the characteristic polynomial. */
+/** Every `stride`-th output of a recurrence, output i its term n(i): v_i is x^(n(i)) modulo the characteristic polynomial. */
 export function recurrenceTuples(
-  recurrence: Pick<LinearRecurrence, "multipliers" | "modulus">,
+  recurrence: Pick<LinearRecurrence, "multipliers" | "modulus" | "luxury">,
   stride = 1,
 ): Tuples {
-  const { multipliers, modulus } = recurrence;
+  const { multipliers, modulus, luxury = { kept: 1, block: 1 } } = recurrence;
+  const term = (index: number): bigint => {
+    const output = BigInt(index) * BigInt(stride);
+    const kept = BigInt(luxury.kept);
+    return (output / kept) * BigInt(luxury.block) + (output % kept);
+  };
   const [a = 0n] = multipliers;
   const vector =
     multipliers.length === 1
-      ? (index: number) => [powerMod(a, BigInt(index) * BigInt(stride), modulus)]
-      : (index: number) => polynomialPower(multipliers, BigInt(index) * BigInt(stride), modulus);
+      ? (index: number) => [powerMod(a, term(index), modulus)]
+      : (index: number) => polynomialPower(multipliers, term(index), modulus);
   return { modulus, residues: multipliers.length, vector, size: null };
 }
 

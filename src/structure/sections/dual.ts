@@ -7,7 +7,14 @@
 import type { SourceChoice } from "../../sources/choice.js";
 import type { TupleLattice } from "../congruential-lattices.js";
 import type { InspectionRequest, Part, Section, Table } from "../contract.js";
-import { dualFigure, dualFigures, LARGEST_DUAL_DIMENSION, type DualFigures } from "../dual-lattice.js";
+import {
+  dualFigure,
+  dualFigures,
+  DEFAULT_STEPS,
+  LARGEST_DUAL_DIMENSION,
+  type DualFigures,
+  type Steps,
+} from "../dual-lattice.js";
 import { hasLattice, latticeStructure, whyNoLattice, type LatticeStructure } from "../lattice-structure.js";
 import { worstProjections } from "../projections.js";
 import { shiftedHyperplanes } from "../shifted-hyperplanes.js";
@@ -60,6 +67,12 @@ const KEYS = {
 /** Coordinates of the projections that are looked through, and how many of each number are kept. */
 const PROJECTIONS = { largest: 3, keep: 3 };
 
+/**
+ * Most steps of enumeration: beyond 24 dimensions the sum of absolute values is seldom proved least anyhow, so it has a quarter
+ * of a second there; and for the lattices beside the full one everywhere.
+ */
+const LARGE = { above: 24, absoluteSum: 2 ** 21 };
+
 /** A recurrence of at most this many terms has an index set of its own. */
 const FEW_TERMS = 4;
 
@@ -77,7 +90,7 @@ function inspectDual(choice: SourceChoice, request: InspectionRequest): DualData
   const { tuples, lattices, recurrence } = structure;
   const [full, ...others] = lattices.map((lattice) => entriesOf(structure, lattice, dimensions));
   const indices = request.indices ?? ownIndices(structure, dimensions.at(-1) ?? 1);
-  const order = recurrence?.multipliers.length ?? 1;
+  const order = recurrence?.words ?? recurrence?.multipliers.length ?? 1;
   return {
     lattices: lattices.map((lattice) => ({ ...lattice, key: KEYS[lattice.kind] })),
     order,
@@ -120,7 +133,11 @@ function entriesOf(
   const wanted = new Set(dimensions);
   const own: Tuples = { ...tuples, modulus: lattice.modulus };
   const entries: DualEntry[] = [];
-  for (const figures of dualFigures(own, indices, { from: Math.min(2, indices.length), wanted })) {
+  const steps = (dimension: number): Steps =>
+    lattice.kind === "full" && dimension <= LARGE.above
+      ? DEFAULT_STEPS
+      : { ...DEFAULT_STEPS, absoluteSum: LARGE.absoluteSum };
+  for (const figures of dualFigures(own, indices, { steps, wanted })) {
     const hyperplanes =
       lattice.kind === "full" ? figures.hyperplanes : shiftedHyperplanes(figures.l1Vector, lattice, tuples);
     entries.push(withGap({ ...figures, hyperplanes }));
@@ -131,7 +148,8 @@ function entriesOf(
 /** The terms of a recurrence of more terms than there are dimensions: x(n-k), ..., x(n) that it ties together. */
 function ownIndices({ recurrence, stride }: LatticeStructure, largest: number): number[] | null {
   if (recurrence === null || stride > 1) return null;
-  const { multipliers } = recurrence;
+  const { multipliers, lags } = recurrence;
+  if (lags !== undefined) return [...lags];
   const order = multipliers.length;
   const terms = multipliers.flatMap((a, k) => (a === 0n ? [] : [order - 1 - k]));
   return order >= largest && terms.length <= FEW_TERMS ? [...terms.reverse(), order] : null;

@@ -35,7 +35,8 @@ export function hasLattice({ source }: SourceChoice): boolean {
 
 /** Why there is no lattice, in a sentence. */
 export function whyNoLattice({ id, source }: SourceChoice): string {
-  if (!isPseudoRandom(source)) return `${id}: no lattice; ${source.method} points are another structure`;
+  if (!isPseudoRandom(source))
+    return `${id}: no lattice of points, as its method (${source.method}) is another`;
   if (source.usage.tuples.kind === "per-coordinate") {
     return `${id}: no joint lattice, as every coordinate is a stream of its own that starts from a state of its own`;
   }
@@ -75,17 +76,22 @@ function rankOne(source: RankOneLattice, points: number | null, dimension: numbe
 }
 
 function linearOf(source: PseudoRandomSource): LatticeStructure | null {
-  const { recurrence, usage } = source;
+  const { usage } = source;
   const { tuples, bits, float32 } = usage;
-  if (recurrence.linear === undefined || tuples.kind === "per-coordinate") return null;
-  const linear = bits === null ? recurrence.linear : cut(recurrence.linear, bits);
-  if (linear === null) return null;
+  const linear = recurrenceInUse(source);
+  if (linear === null || tuples.kind === "per-coordinate") return null;
   const stride = tuples.step;
   const notes: string[] = [];
   if (linear.note !== null) notes.push(linear.note);
-  if (bits?.end === "top") {
+  if (bits?.end === "top" && bits.count < bitsOf(linear.modulus)) {
     notes.push(
       `Outputs are cut to their top ${bits.count} of ${bitsOf(linear.modulus)} bits: a plane h is blurred by up to |h|₁ / 2^${bits.count} of the distance to the next.`,
+    );
+  }
+  const { luxury } = linear;
+  if (luxury !== undefined) {
+    notes.push(
+      `Of every ${luxury.block} terms ${luxury.kept} are outputs; tuples here begin such a block, as points do where ${luxury.kept} divides their coordinates.`,
     );
   }
   if (float32)
@@ -98,6 +104,15 @@ function linearOf(source: PseudoRandomSource): LatticeStructure | null {
     points: null,
     notes,
   };
+}
+
+/** The recurrence of the outputs as they are used; null where they follow none. */
+export function recurrenceInUse({
+  recurrence: { linear },
+  usage: { bits },
+}: PseudoRandomSource): LinearRecurrence | null {
+  if (linear === undefined) return null;
+  return bits === null ? linear : cut(linear, bits);
 }
 
 /** The recurrence of some bits of the outputs: low ones of a power of two follow one, top ones are cut off the full one. */

@@ -183,7 +183,7 @@ function fullPart(data: DualData): Part {
   return {
     title: "Dual lattice",
     lines: [
-      `Modulus ${full?.modulus ?? "?"}: ${full?.what ?? ""}.${data.stride > 1 ? ` Every ${data.stride}-th output.` : ""}`,
+      `Modulus ${full?.modulus ?? "?"}: ${full?.what ?? ""}.${data.stride > 1 ? ` One of every ${data.stride} outputs.` : ""}`,
       ...(order > 1 ? [`Order ${order}: tuples of up to ${order} outputs fill the cube evenly.`] : []),
       ...data.latticeNotes,
       ...(worst === null

@@ -7,6 +7,7 @@ import { periodText } from "../../sources/period-text.js";
 import { isPseudoRandom, type PseudoRandomSource } from "../../sources/pseudo-random.js";
 import { UnfinishedFactorisation } from "../../numeric/factor.js";
 import type { InspectionRequest, Part, Section } from "../contract.js";
+import { recurrenceInUse } from "../lattice-structure.js";
 import { FACTOR_STEPS, periodOf, usageOf, type Reason } from "../period.js";
 import { recurrencePeriod } from "../recurrence-period.js";
 
@@ -61,14 +62,14 @@ export const periodSection: Section<PeriodData> = {
 function factsOf(source: PseudoRandomSource, state: string | null): Facts {
   const { recurrence } = source;
   const start = state === null ? null : recurrence.stateFromText(state);
-  const { linear } = recurrence;
-  if (linear === undefined || linear.modulus > LARGEST_FACTORISED) return published(source, state);
+  const linear = recurrenceInUse(source);
+  if (linear === null || linear.modulus > LARGEST_FACTORISED) return published(source, state);
   const [a = 0n, ...more] = linear.multipliers;
   // a combined generator has a state of several words, the one recurrence of order 1 that is equivalent to it only one
-  const single = recurrence.output.modulus === linear.modulus;
+  const single = recurrence.linear?.modulus === recurrence.output.modulus;
   if (more.length === 0 && single) {
     const map = { multiplier: a, increment: linear.increment, modulus: linear.modulus };
-    const report = periodOf(map, start?.[0] ?? null);
+    const report = periodOf(map, start?.[0] === undefined ? null : start[0] % linear.modulus);
     return {
       period: report.period,
       periodBasis: report.period === null ? null : "computed",
@@ -145,7 +146,8 @@ function showPeriod(data: PeriodData): Part[] {
     const states = periodStates === null ? "" : `, ${periodStates}`;
     lines.push(`${digits}${states} (${periodBasis ?? ""}).`);
   }
-  if (periodMissing !== null) lines.push(`Period: ${periodMissing}.`);
+  if (periodMissing !== null)
+    lines.push(`${periodMissing.charAt(0).toUpperCase()}${periodMissing.slice(1)}.`);
   lines.push(...periodReasons.map(({ condition, holds }) => `${holds ? "yes" : "no "}  ${condition}`));
   if (
     periodFromState !== null &&

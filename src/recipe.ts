@@ -2,10 +2,12 @@
  * The main line of the program: spec → plan → run → confirm → record. It touches no file but the journal that it is
  * handed; reading problems and writing reports are its neighbours' work.
  */
-import { assembleRecord, candidatesOf } from "./findings/assemble.js";
+import { assembleRecord, candidatesOf, confirmedTests, type Measured } from "./findings/assemble.js";
 import { CONFIRMATION_REPLICATES, type Confirmation } from "./findings/bias.js";
 import { consensusOf } from "./findings/consensus.js";
 import type { Consensus, Environment, RawCell, StudyRecord, StudySpec } from "./record/types.js";
+import type { Explanation } from "./record/explanation.js";
+import { explainStudy, pairsToExplain, type ExplainedPairs } from "./study/explanations.js";
 import { collectCells, type CellInfo } from "./study/collect.js";
 import type { Executor } from "./study/executor.js";
 import { notesOf } from "./study/notes.js";
@@ -32,6 +34,8 @@ export interface StudyRun {
   readonly environment: (complete: boolean) => Environment;
   /** Said in the record before what the findings add. */
   readonly warnings: readonly string[];
+  /** Which pairs get a prediction from the structure of their source; those with a confirmed bias by default. */
+  readonly explain?: ExplainedPairs;
 }
 
 /** Runs a study and gives its record; after an abort the record holds what is done and says so. */
@@ -54,9 +58,26 @@ export async function runStudy(run: StudyRun): Promise<StudyRecord> {
   if (fresh.length > 0) await runStage(run, "confirmation", fresh, results, watch);
   const confirmations: Confirmation[] = run.signal.aborted ? [] : cellsOf(run, fresh, results);
 
+  const explanations = await explainMeasured(run, measured, confirmations);
+
   const environment = run.environment(!run.signal.aborted);
   const warnings = [...run.warnings, ...notesOf([...tasks, ...fresh], results)];
-  return assembleRecord({ ...measured, environment, confirmations, warnings });
+  return assembleRecord({ ...measured, environment, confirmations, explanations, warnings });
+}
+
+/** What the structure of sources does to integrands; nothing after an interruption, when no bias is confirmed yet. */
+async function explainMeasured(
+  { spec, problems, signal, stage: open, explain = "confirmed" }: StudyRun,
+  measured: Measured,
+  confirmations: readonly Confirmation[],
+): Promise<Explanation[]> {
+  if (signal.aborted) return [];
+  const found = { spec, ...confirmedTests(measured, confirmations), pairs: explain };
+  const { predicted } = pairsToExplain(found);
+  const stage = predicted.length === 0 ? null : open("explanations", predicted.length);
+  const explanations = await explainStudy({ ...found, problems, signal, done: () => stage?.advance(1) });
+  stage?.finish();
+  return explanations;
 }
 
 async function runStage(

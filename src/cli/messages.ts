@@ -24,8 +24,6 @@ export const messages = {
     `--${flag}: expected a whole number of at least ${least}, found "${found}"`,
   interrupted: (folder: string, command: string) =>
     `Interrupted. What is done stands in ${folder}.\nNext: ${command}${command.includes(" --resume") ? "" : " --resume"}\n`,
-  cycleInterrupted: (file: string, command: string) =>
-    `Interrupted. The states that are done stand in ${file}.\nNext: ${command}   (the same command goes on from there)\n`,
   unfinished: (folder: string) =>
     `--out: ${folder} holds an unfinished run of this study; go on with --resume, or start anew with --replace`,
   otherJournal: (folder: string) =>
@@ -34,7 +32,8 @@ export const messages = {
     `--out: ${folder} holds the record of another study and is not overwritten; choose another folder with --out, or overwrite it with --replace`,
   oneProblem: (path: string, found: readonly string[]) =>
     `problem: expected one problem, found ${found.length} in "${path}"; name one of them: ${found.slice(0, 6).join(", ")}`,
-  explainNeeds: (problem: string) => `explain: nothing to explain about "${problem}" yet`,
+  explainNeeds: (problem: string) =>
+    `explain: expected a source to explain "${problem}" with, found none; name one with --source`,
   dimensions: (most: number, found: string) =>
     `--dimensions: expected whole numbers from 2 to ${most} such as 2..16, 8 or 2,3,6, found "${found}"`,
   indices: (most: number, found: string) =>
@@ -43,10 +42,6 @@ export const messages = {
     `--indices: expected indices that differ, found ${repeated} twice in "${found}"`,
   nothingToInspect: (id: string, why: readonly string[]) =>
     `source: nothing can be said about the structure of "${id}" (${why.join("; ")}); tolerand study measures what it does`,
-  probe: (source: string, planes: string, gap: number, error: number) =>
-    `Tuples of ${source} lie on planes of ${planes}, ${Number(gap.toPrecision(3))} apart; predicted error ${error > 0 ? "+" : "−"}${Math.abs(Number((100 * error).toPrecision(3)))} % of the integral.\n`,
-  probeUnseen: (source: string, planes: string, least: number) =>
-    `source "${source}": its own points do not stand on the planes of ${planes} as its recurrence says (least cosine ${Number(least.toPrecision(3))}, expected 1); no probe is written`,
   next: (text: string) => `Next: ${text}\n`,
 };
 

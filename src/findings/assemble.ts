@@ -1,10 +1,12 @@
 /** From what was run to the record: cells, tests, convergence, budgets, warnings. Pure; touches no file. */
 import type { Problem } from "../problem/contract.js";
+import type { Explanation } from "../record/explanation.js";
 import { digestOf } from "../record/json.js";
 import {
   RECORD_SCHEMA,
   type BiasTest,
   type Budget,
+  type Cell,
   type Consensus,
   type Environment,
   type RawCell,
@@ -32,6 +34,8 @@ export interface Assembly extends Measured {
   readonly environment: Environment;
   /** Estimates on fresh keys for the candidates of `candidatesOf`. */
   readonly confirmations: readonly Confirmation[];
+  /** What the structure of sources does to integrands. */
+  readonly explanations: readonly Explanation[];
   /** Warnings from before the run, shown first. */
   readonly warnings: readonly string[];
 }
@@ -41,6 +45,21 @@ export function candidatesOf(measured: Measured): BiasTest[] {
   const context = makeContext(measured.problems, measured.sources, measured.consensus);
   const series = seriesOf(toCells(measured.rawCells, context, false));
   return findCandidates(series, context, measured.spec.falseAlarms).filter((test) => test.candidate);
+}
+
+/** Stage 2: cells (without the one costly interval) and completed tests, which tell what there is to explain. */
+export function confirmedTests(
+  measured: Measured,
+  confirmations: readonly Confirmation[],
+): { readonly cells: readonly Cell[]; readonly tests: readonly BiasTest[] } {
+  const context = makeContext(measured.problems, measured.sources, measured.consensus);
+  const cells = toCells(measured.rawCells, context, false);
+  const series = seriesOf(cells);
+  const screened = findCandidates(series, context, measured.spec.falseAlarms);
+  return {
+    cells,
+    tests: confirmCandidates(screened, confirmations, series, context, measured.spec.falseAlarms),
+  };
 }
 
 export function assembleRecord(assembly: Assembly): StudyRecord {
@@ -69,6 +88,7 @@ export function assembleRecord(assembly: Assembly): StudyRecord {
     family: { tests: tests.filter((test) => test.kind !== "none").length, level: spec.falseAlarms },
     convergence: series.map((one) => convergenceOf(one, testOf.get(seriesKey(one)), context)),
     budgets: [...budgets, ...inUseBudgets(problems, series, testOf, context)],
+    explanations: assembly.explanations,
     warnings: [...new Set([...assembly.warnings, ...warningsOf(series, consensus, context)])],
   };
 }

@@ -20,4 +20,18 @@ export interface SumExports {
    * `cut`. Returns the number of points.
    */
   treeTotal(tree: number, channels: number, cut: number, cutPoints: number, out: number): number;
+  /**
+   * Adds to out[k] the sum of (value - centre) cos 2 pi (h.x - phase) for each wave k; see assembly/sums/aliases.ts for the
+   * layout of waves.
+   */
+  aliasSums(
+    x: number,
+    stride: number,
+    count: number,
+    values: number,
+    centre: number,
+    waves: number,
+    vectors: number,
+    out: number,
+  ): void;
 }

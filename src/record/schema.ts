@@ -4,22 +4,10 @@
  * "-Infinity" and come out as numbers.
  */
 import { z } from "zod";
-import { numberFrom } from "./json.js";
+import { explanation } from "./explanation-schema.js";
+import { interval, name, number, orNull, real, reals, text, whole } from "./schema-parts.js";
 import { RECORD_SCHEMA, type StudyRecord } from "./types.js";
 
-const text = z.string();
-const whole = z.int().min(0);
-const real = z
-  .union([z.number(), z.enum(["NaN", "Infinity", "-Infinity"])], {
-    error: 'expected a number, "NaN", "Infinity" or "-Infinity"',
-  })
-  .transform(numberFrom);
-const reals = z.array(real);
-const orNull = <T extends z.ZodType>(schema: T) => z.union([schema, z.null()]);
-const number = orNull(real);
-const interval = orNull(z.tuple([real, real]));
-/** A text that names something; bounded, because tables and file names are made of it. */
-const name = z.string().min(1).max(1000);
 const settings = { problem: name, source: name, estimator: name, output: name };
 const sourceSpec = z.union([text, z.record(text, z.unknown())]);
 const constant = z.union([real, reals, z.array(reals)]);
@@ -203,6 +191,7 @@ const recordSchema = z
     family: z.strictObject({ tests: whole, level: z.number() }),
     convergence: z.array(convergence),
     budgets: z.array(budget),
+    explanations: z.array(explanation).default([]),
     warnings: z.array(text),
   })
   .describe("The record of a study by tolerand: what was asked, what was measured, what follows from it.");

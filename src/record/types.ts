@@ -5,6 +5,7 @@
  */
 import type { Problem, SourceSpec } from "../problem/contract.js";
 import type { SourceDescription } from "../sources/contract.js";
+import type { Explanation } from "./explanation.js";
 
 export const RECORD_SCHEMA = "tolerand/record/1";
 
@@ -244,5 +245,7 @@ export interface StudyRecord {
   readonly family: { readonly tests: number; readonly level: number };
   readonly convergence: readonly Convergence[];
   readonly budgets: readonly Budget[];
+  /** Pairs whose source has known structure: what it does to the integrand, or could do. */
+  readonly explanations: readonly Explanation[];
   readonly warnings: readonly string[];
 }

@@ -6,7 +6,7 @@
 import { createHash } from "node:crypto";
 
 /** Why points are drawn; different purposes never share points. */
-export type Purpose = "study" | "pilot" | "reference" | "confirmation" | "points" | "resolution";
+export type Purpose = "study" | "pilot" | "reference" | "confirmation" | "points" | "resolution" | "explain";
 
 export interface KeyParts {
   readonly seed: number;

@@ -95,22 +95,36 @@ export class Integrator {
     return { sizes: results, offending, nodes: this.#tree.nodes() };
   }
 
+  /**
+   * Values of the next points of a stream, at most a block of them, beside the uniform coordinates that they come from:
+   * those are left at `coordinates` (room for a block, rows a block apart), the values at the address that is returned.
+   */
+  evaluate(stream: PointStream, count: number, coordinates: number): number {
+    const { blockPoints, dimension } = this.#problem.formula;
+    stream.fill(coordinates, blockPoints, count);
+    const size = blockPoints * dimension;
+    this.kernels.f64(this.#x, size).set(this.kernels.f64(coordinates, size));
+    this.#transform(count);
+    this.#evaluate(this.#x, this.#values, count, this.#pool, this.#scratch);
+    return this.#values;
+  }
+
   /** Fills, transforms, evaluates and sums one block; gives the first point with a non-finite value, or -1. */
   #evaluateBlock(stream: PointStream, count: number): number {
-    const { exports } = this.kernels;
     const { blockPoints, channels } = this.#problem.formula;
     stream.fill(this.#x, blockPoints, count);
-    for (const { first, rows } of this.#problem.transforms) {
-      exports.normalBlock(
-        this.#x + first * blockPoints * 8,
-        blockPoints,
-        rows,
-        count,
-        this.#transformScratch,
-      );
-    }
+    this.#transform(count);
     this.#evaluate(this.#x, this.#values, count, this.#pool, this.#scratch);
-    return exports.leafMoments(this.#values, blockPoints, channels, count, this.#rows);
+    return this.kernels.exports.leafMoments(this.#values, blockPoints, channels, count, this.#rows);
+  }
+
+  /** Uniform coordinates of the block become inputs, in place. */
+  #transform(count: number): void {
+    const { blockPoints } = this.#problem.formula;
+    for (const { first, rows } of this.#problem.transforms) {
+      const at = this.#x + first * blockPoints * 8;
+      this.kernels.exports.normalBlock(at, blockPoints, rows, count, this.#transformScratch);
+    }
   }
 
   /** Pushes the whole leaves of the block from leaf `pushed` on that end at point `end` or before; gives the next leaf. */

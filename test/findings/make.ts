@@ -153,6 +153,7 @@ export function makeAssembly(rawCells: RawCell[], changes: Partial<Assembly> = {
     rawCells,
     consensus: [],
     confirmations: [],
+    explanations: [],
     warnings: [],
     ...changes,
   };

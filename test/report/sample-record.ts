@@ -342,6 +342,7 @@ export function sampleRecord(size: SampleSize = SMALL): StudyRecord {
     family: { tests: tests.filter((t) => t.kind !== "none").length, level: 0.01 },
     convergence,
     budgets,
+    explanations: [],
     warnings: ["sobol: its first point lies near z = -8 in every coordinate"],
   };
 }

@@ -1,0 +1,134 @@
+/** An explanation in words: the vector at fault, what it predicts, how that compares with what was measured. */
+import type { Alias, Estimated, Explanation } from "../record/explanation.js";
+import { formatCount, formatInterval, formatPercent, formatValue } from "./format.js";
+
+const SUBSCRIPTS = "₀₁₂₃₄₅₆₇₈₉";
+
+/** "9 u₁ − 6 u₂ + u₃"; coordinates are counted from 1. */
+export function vectorText({ indices, entries }: Pick<Alias, "indices" | "entries">): string {
+  return entries
+    .map((entry, k) => {
+      const size = Math.abs(entry);
+      const sign = k === 0 ? (entry < 0 ? "\u2212" : "") : entry < 0 ? " \u2212 " : " + ";
+      const index = String((indices[k] ?? 0) + 1).replace(
+        /\d/g,
+        (digit) => SUBSCRIPTS[Number(digit)] ?? digit,
+      );
+      return `${sign}${size === 1 ? "" : `${formatCount(size)}\u00a0`}u${index}`;
+    })
+    .join("");
+}
+
+/** "15 planes, gap 0.092". */
+export function planesText({ planes, gap, size }: Alias): string {
+  const share = size > 1 - 1e-9 ? "" : `, seen by ${formatPercent(Number(size.toPrecision(3)))}`;
+  return `${formatCount(planes)} planes, gap ${formatValue(gap)}${share}`;
+}
+
+/** The same combination of other coordinates, where it stands for several. */
+export function copiesText({ copies }: Alias): string {
+  return copies < 2 ? "" : ` (the same at ${formatCount(copies)} places along the coordinates)`;
+}
+
+/** What the structure of a source could still spoil. */
+export function hazardText({ aliases, structure }: Explanation): string | null {
+  const [alias] = aliases;
+  if (alias === undefined || structure === null) return null;
+  const exact = `all its points lie on the ${formatCount(alias.planes)} planes ${vectorText(alias)} = ${phaseText(alias)}, ${formatValue(alias.gap)} apart`;
+  return `${exact}; an integrand that varies from plane to plane would be off, whatever the number of points`;
+}
+
+function phaseText({ phase }: Alias): string {
+  const turn = Math.abs(phase - Math.round(phase)) < 1e-9 ? 0 : phase;
+  if (turn === 0) return "whole number";
+  return turn === 0.5 ? "whole number + \u00bd" : `whole number + ${formatValue(turn)}`;
+}
+
+/** The share of the measured bias (of the predicted one where none was measured) that the leading vector carries. */
+export function leadingShare({ aliases, measured, predicted }: Explanation): number | null {
+  const whole = measured?.value ?? predicted?.value ?? 0;
+  const part = aliases[0]?.contribution ?? null;
+  return part === null || whole === 0 ? null : part / whole;
+}
+
+/** The finding in one sentence. */
+export function explanationHeadline(explanation: Explanation): string {
+  const { reason, aliases, predicted, explained } = explanation;
+  if (predicted === null) return `No prediction: ${reason ?? "nothing was estimated"}.`;
+  const [alias] = aliases;
+  const share = leadingShare(explanation);
+  if (!explained) return unexplained(explanation);
+  const named = alias === undefined ? "its dual vectors" : `${vectorText(alias)}${copiesText(alias)}`;
+  const planes = alias === undefined ? "" : `: ${planesText(alias)}`;
+  const part = share === null ? "The bias" : `${shareText(share)} of the bias`;
+  return `${part} comes from ${named}${planes}.`;
+}
+
+/** "98 %"; several vectors of both signs make shares above 1. */
+function shareText(share: number): string {
+  return `${(100 * share).toFixed(0).replace("-", "\u2212")} %`;
+}
+
+/** Why the prediction does not explain what was measured. */
+function unexplained({ predicted, measured, difference }: Explanation): string {
+  if (predicted === null) return "No prediction.";
+  const none = predicted.interval[0] <= 0 && predicted.interval[1] >= 0;
+  const quiet = measured !== null && measured.interval[0] <= 0 && measured.interval[1] >= 0;
+  if (none && quiet)
+    return "No bias is predicted and none was found: the planes do not matter to this integrand.";
+  if (none)
+    return "Not explained: the dual vectors looked at add nothing that shows beside the noise of the prediction.";
+  if (measured === null || difference === null)
+    return "Predicted only: there is no measured bias to hold it against.";
+  if (!predicted.stable)
+    return "Not explained: the sum over dual vectors still moves when twice as many are taken.";
+  const share = predicted.value / measured.value;
+  const part = share > 0 && share < 1.5 ? `; the prediction makes ${shareText(share)} of the bias` : "";
+  return `Not explained in full: measured and predicted bias differ by ${formatValue(difference.value)} (${formatInterval(difference.interval)})${part}.`;
+}
+
+/** Whether an interval holds 0. */
+function hidden(estimated: Estimated | null): boolean {
+  return estimated !== null && estimated.interval[0] <= 0 && estimated.interval[1] >= 0;
+}
+
+/** Predicted, measured, full cycle and difference, each a line with its own words. */
+export function explanationLines(explanation: Explanation): string[] {
+  const { predicted, measured, difference, fullCycle } = explanation;
+  const lines: string[] = [];
+  const level = predicted === null ? "" : `${formatPercent(predicted.confidence)} interval `;
+  if (measured !== null) {
+    const error = measured.standardError;
+    const how =
+      error === null
+        ? `one run of ${formatCount(measured.n)} points without a random start`
+        : `standard error ${formatValue(error)}, ${formatCount(measured.replicates)} replicates of ${formatCount(measured.n)} points`;
+    lines.push(`measured bias ${formatValue(measured.value, error)} (${how})`);
+  }
+  if (predicted !== null) {
+    const { value, interval, standardError, pairs, source, points, replicates, tail } = predicted;
+    const sum = `${formatCount(pairs)} ${pairs === 1 ? "pair" : "pairs"} of dual vectors`;
+    lines.push(
+      `predicted bias ${formatValue(value, standardError)} (${level}${formatInterval(interval)}) from ${sum}, ` +
+        `estimated with ${replicates} \u00d7 ${formatCount(points)} points of ${source}`,
+      `unresolved tail ${formatValue(tail.value, (tail.interval[1] - tail.interval[0]) / 4)} ` +
+        `(${level}${formatInterval(tail.interval)}) from as many pairs again: ${predicted.stable ? "stable" : "not stable"}`,
+    );
+  }
+  if (fullCycle !== null && fullCycle.bias !== null)
+    lines.push(
+      `bias over all ${formatCount(fullCycle.states)} states ${Number(fullCycle.bias.toPrecision(8))} (exact average)`,
+    );
+  if (difference !== null) {
+    const words = explanation.explained
+      ? "explained"
+      : hidden(measured)
+        ? "nothing to explain"
+        : "not explained";
+    lines.push(
+      `measured less predicted ${formatValue(difference.value, (difference.interval[1] - difference.interval[0]) / 4)} ` +
+        `(${level}${formatInterval(difference.interval)}): ${words}`,
+    );
+  }
+  return lines;
+}

@@ -83,6 +83,19 @@ export const commands: readonly Command[] = [
     load: () => import("./commands/inspect.js"),
   },
   {
+    name: "probe",
+    positional: "<source>",
+    summary: "write the problem that resonates with the lattice of a source",
+    options: {
+      dimension: { ...dimension, describe: "coordinates of the problem (default 3)" },
+      peaked: flag("a peak between the planes in place of a wave along them"),
+      points: text("points of a rank-1 lattice, whose planes depend on their number (default 4096)"),
+      out: text("file to write (default: probe-SOURCE-DIMENSION.yaml); never overwritten"),
+      json,
+    },
+    load: () => import("./commands/probe.js"),
+  },
+  {
     name: "check",
     positional: "<paths..>",
     summary: "validate problem files and print what the program understood",

@@ -42,6 +42,10 @@ export const messages = {
     `--indices: expected indices that differ, found ${repeated} twice in "${found}"`,
   nothingToInspect: (id: string, why: readonly string[]) =>
     `source: nothing can be said about the structure of "${id}" (${why.join("; ")}); tolerand study measures what it does`,
+  probe: (source: string, planes: string, gap: number, error: number) =>
+    `Tuples of ${source} lie on planes of ${planes}, ${Number(gap.toPrecision(3))} apart; predicted error ${error > 0 ? "+" : "−"}${Math.abs(Number((100 * error).toPrecision(3)))} % of the integral.\n`,
+  probeUnseen: (source: string, planes: string, least: number) =>
+    `source "${source}": its own points do not stand on the planes of ${planes} as its recurrence says (least cosine ${Number(least.toPrecision(3))}, expected 1); no probe is written`,
   next: (text: string) => `Next: ${text}\n`,
 };
 

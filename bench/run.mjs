@@ -10,6 +10,7 @@ import { createInterface } from "node:readline";
 import { fileURLToPath } from "node:url";
 import { sobol } from "../dist/sources/sobol.js";
 import { engineRates } from "./engine.mjs";
+import { fullCycleTable } from "./full-cycle.mjs";
 import { constructionTable, sourceTable } from "./sources.mjs";
 import { memoryTable, studyTable, threadTable } from "./study.mjs";
 import { insert, median, table } from "./table.mjs";
@@ -119,6 +120,7 @@ try {
     threads: () => threadTable(ROUNDS),
     memory: () => memoryTable(),
     study: () => studyTable(),
+    "full-cycle": () => fullCycleTable(ROUNDS),
   };
   const asked = process.argv.slice(2).filter((word) => word !== "--write");
   const unknown = asked.find((name) => !Object.hasOwn(all, name));

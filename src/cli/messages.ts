@@ -24,6 +24,8 @@ export const messages = {
     `--${flag}: expected a whole number of at least ${least}, found "${found}"`,
   interrupted: (folder: string, command: string) =>
     `Interrupted. What is done stands in ${folder}.\nNext: ${command}${command.includes(" --resume") ? "" : " --resume"}\n`,
+  cycleInterrupted: (file: string, command: string) =>
+    `Interrupted. The states that are done stand in ${file}.\nNext: ${command}   (the same command goes on from there)\n`,
   unfinished: (folder: string) =>
     `--out: ${folder} holds an unfinished run of this study; go on with --resume, or start anew with --replace`,
   otherJournal: (folder: string) =>

@@ -1,5 +1,6 @@
 /** Reading flags: text to numbers and lists, with messages that say what was found and what is allowed. */
 import { readFileSync } from "node:fs";
+import { availableParallelism } from "node:os";
 import { resolve } from "node:path";
 import type { Arguments, Io } from "./command.js";
 import { InputError } from "./errors.js";
@@ -32,6 +33,17 @@ export function wholeFlag(args: Arguments, name: string, least: number): number 
     throw new InputError(messages.wholeNumber(name, least, text));
   }
   return value;
+}
+
+const MOST_THREADS = 256;
+
+/** Worker threads: --threads, or as many as there are processors. */
+export function threadCount(args: Arguments): number {
+  const given = wholeFlag(args, "threads", 1);
+  if (given !== null && given > MOST_THREADS) {
+    throw new InputError(`--threads: expected a whole number from 1 to ${MOST_THREADS}, found "${given}"`);
+  }
+  return given ?? availableParallelism();
 }
 
 /** `@file` stands for the content of the file, relative to the working folder. */

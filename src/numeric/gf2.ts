@@ -36,8 +36,11 @@ export function packColumns(matrix: Matrix): BigUint64Array {
 export function unpackColumns(words: BigUint64Array): Matrix {
   const matrix = Matrix.zeros(DIGITS, words.length);
   for (const [column, word] of words.entries()) {
+    // two halves of 26 bits: arithmetic on them is some ten times faster than on BigInt
+    const halves = [Number(word >> 26n), Number(word & 0x3ffffffn)];
     for (let row = 0; row < DIGITS; row++) {
-      matrix.set(row, column, Number((word >> BigInt(DIGITS - 1 - row)) & 1n));
+      const half = halves[row < 26 ? 0 : 1] ?? 0;
+      matrix.set(row, column, (half >>> (25 - (row % 26))) & 1);
     }
   }
   return matrix;

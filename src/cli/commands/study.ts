@@ -1,6 +1,5 @@
 /** `tolerand study PATH…`: the main job, from problem files to verdicts and a report folder. */
 import { existsSync, readFileSync } from "node:fs";
-import { availableParallelism } from "node:os";
 import { join, resolve } from "node:path";
 import { exitCodeOf } from "../../findings/headline.js";
 import { loadPaths } from "../../problem/load.js";
@@ -19,10 +18,8 @@ import { dryRun } from "../dry-run.js";
 import { environmentOf } from "../environment.js";
 import { asInput, InputError } from "../errors.js";
 import { messages } from "../messages.js";
-import { booleanFlag, textFlag, textFlags, wholeFlag } from "../read.js";
+import { booleanFlag, textFlag, textFlags, threadCount } from "../read.js";
 import { settingsFromFlags } from "../study-flags.js";
-
-const MOST_THREADS = 256;
 
 export async function run(args: Arguments, io: Io): Promise<number> {
   const flags = settingsFromFlags(args, io);
@@ -84,14 +81,6 @@ export async function run(args: Arguments, io: Io): Promise<number> {
   for (const warning of record.warnings) io.stderr.write(`note: ${warning}\n`);
   io.stderr.write(messages.next(`open ${join(folder, "index.html")}`));
   return exitCodeOf(record, textFlag(args, "undecided") === "fail");
-}
-
-function threadCount(args: Arguments): number {
-  const given = wholeFlag(args, "threads", 1);
-  if (given !== null && given > MOST_THREADS) {
-    throw new InputError(`--threads: expected a whole number from 1 to ${MOST_THREADS}, found "${given}"`);
-  }
-  return given ?? availableParallelism();
 }
 
 /** Refuses a folder that holds something else, before any work is done. */

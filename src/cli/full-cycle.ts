@@ -1,0 +1,60 @@
+/** Averages over every starting state for a command: threads, progress, and a journal that an interrupted run leaves. */
+import { join, relative, resolve } from "node:path";
+import type { Problem } from "../problem/contract.js";
+import type { FullCycleAverage } from "../record/types.js";
+import type { SourceChoice } from "../sources/choice.js";
+import { fullCycleOf } from "../sources/cycle.js";
+import { cycleDigest, cycleExecutor, fullCycle, reviveCycle } from "../study/full-cycle.js";
+import { openJournalOf } from "../study/journal.js";
+import { startProgress } from "../study/progress.js";
+import { prepareProblems } from "../study/runnable.js";
+import type { Io } from "./command.js";
+import { asInput } from "./errors.js";
+import { messages } from "./messages.js";
+
+/** Journals lie here, below the working folder, while a cycle is not complete. */
+const FOLDER = join("reports", "full-cycle");
+
+/** Throws an InputError where one of the sources has no full cycle; to be asked before any long work. */
+export function checkCycles(choices: readonly SourceChoice[]): void {
+  for (const { source } of choices) asInput(() => fullCycleOf(source).states);
+}
+
+/**
+ * The average of the problem's integrand over every starting state of `choice`. A run that was interrupted before is
+ * taken up: the journal names problem and source by their digest, and ranges do not depend on threads. Null after an
+ * interruption, which has then been said.
+ */
+export async function averageOverCycle(
+  problem: Problem,
+  choice: SourceChoice,
+  threads: number,
+  io: Io,
+): Promise<FullCycleAverage | null> {
+  const { states } = fullCycleOf(choice.source);
+  const digest = cycleDigest(problem, choice.spec);
+  const path = resolve(io.cwd, FOLDER, `${digest.slice(0, 16)}.jsonl`);
+  const journal = openJournalOf(path, digest, true, reviveCycle);
+  const [runnable] = await prepareProblems([problem]);
+  if (runnable === undefined) throw new Error("a problem that was loaded does not compile");
+  const executor = cycleExecutor({ problem: runnable, source: choice.spec }, threads);
+  const progress = startProgress(`full cycle of ${choice.id}`, states, io.stderr);
+  try {
+    const average = await fullCycle({
+      problem,
+      source: choice.spec,
+      executor,
+      journal,
+      signal: io.signal,
+      advance: (done) => {
+        progress.advance(done);
+      },
+    });
+    progress.finish();
+    if (average === null) io.stderr.write(messages.cycleInterrupted(relative(io.cwd, path), io.commandLine));
+    else journal.remove();
+    return average;
+  } finally {
+    await executor.close();
+  }
+}

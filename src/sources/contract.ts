@@ -156,6 +156,16 @@ export interface DigitalNet extends Source {
    * points use.
    */
   generatingMatrices(dimension: number, n: number): GeneratingMatrices;
+  /** How many coordinates of another net take turns in the digits of one; absent where none do. */
+  readonly interlacing?: number;
+}
+
+/** A source whose coordinates are radical inverses of the index. */
+export interface RadicalInverse extends Source {
+  /** The base of each of the first coordinates; null for one that is i/n. */
+  bases(dimension: number): readonly (number | null)[];
+  /** 1, or k where only every k-th point is taken. */
+  readonly leap: number;
 }
 
 /** A source whose first n points, randomisations apart, are the rank-1 lattice {k z / n}, in whatever order. */

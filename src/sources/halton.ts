@@ -13,14 +13,14 @@
  */
 import { firstPrimes } from "../numeric/primes.js";
 import type { Kernels } from "../kernels/instance.js";
-import type { OpenRequest, PointStream, Seekable, Source } from "./contract.js";
+import type { OpenRequest, PointStream, RadicalInverse, Seekable, Source } from "./contract.js";
 import { checkIndex, checkOpening } from "./quasi-random.js";
 
 const RECORD = 768;
 /** Entries in a table of the lowest digits: short runs cost time, long tables memory. */
 const LARGEST_TABLE = 4096;
 
-export const halton: Source = {
+export const halton: RadicalInverse = {
   id: "halton",
   title: "Halton sequence",
   citation:
@@ -34,22 +34,27 @@ export const halton: Source = {
   randomisations: ["permuted"],
   knownStructure: "coordinates i and j repeat their joint pattern every p_i p_j points",
   nearestSize: (n) => n,
+  leap: 1,
+  bases: (dimension) => [...firstPrimes(dimension)],
   open: (request, kernels) => openHalton(halton, 1, request, kernels),
 };
+
+const LEAP = 409;
 
 /**
  * Every 409th point (L. Kocis and W. J. Whiten, "Computational investigations of low-discrepancy sequences", ACM
  * Transactions on Mathematical Software 23, 1997, 266-294): high coordinates no longer rise in step. 409 is the 80th prime,
  * so there are 79 coordinates.
  */
-export const haltonLeaped: Source = {
+export const haltonLeaped: RadicalInverse = {
   ...halton,
   id: "halton-leaped",
   title: "Halton sequence, every 409th point",
   citation:
     "L. Kocis and W. J. Whiten, Computational investigations of low-discrepancy sequences, ACM Transactions on Mathematical Software 23 (1997) 266-294",
   largestDimension: 79,
-  open: (request, kernels) => openHalton(haltonLeaped, 409, request, kernels),
+  leap: LEAP,
+  open: (request, kernels) => openHalton(haltonLeaped, LEAP, request, kernels),
 };
 
 function openHalton(

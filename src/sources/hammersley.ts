@@ -6,13 +6,14 @@
  * Good for: few coordinates and a size fixed beforehand, one coordinate better than Halton's sequence. Bad for: high
  * coordinates, as Halton's sequence.
  */
+import { firstPrimes } from "../numeric/primes.js";
 import type { Kernels } from "../kernels/instance.js";
-import type { OpenRequest, PointStream, Seekable, Source } from "./contract.js";
+import type { OpenRequest, PointStream, RadicalInverse, Seekable } from "./contract.js";
 import { halton } from "./halton.js";
 import { checkOpening } from "./quasi-random.js";
 import { openRotation } from "./rotation.js";
 
-export const hammersley: Source = {
+export const hammersley: RadicalInverse = {
   ...halton,
   id: "hammersley",
   title: "Hammersley points",
@@ -20,6 +21,7 @@ export const hammersley: Source = {
     "J. M. Hammersley, Monte Carlo methods for solving multivariable problems, Annals of the New York Academy of Sciences 86 (1960) 844-874",
   largestDimension: halton.largestDimension + 1,
   nesting: "per-size",
+  bases: (dimension) => [null, ...firstPrimes(dimension - 1)],
   open: openHammersley,
 };
 

@@ -8,11 +8,12 @@
  * powers of two. The digital shift keeps the order; scrambling after interlacing would not, so it is not offered.
  */
 import { DIGITS } from "../numeric/gf2.js";
+import type { DigitalNet } from "./contract.js";
 import { netSource2 } from "./net2.js";
 import { SOBOL_DIMENSIONS, sobolColumns } from "./sobol.js";
 
-function interlaced(order: 2 | 3) {
-  return netSource2(
+function interlaced(order: 2 | 3): DigitalNet {
+  const net = netSource2(
     {
       id: `interlaced-${order}`,
       title: `Interlaced Sobol' sequence of order ${order}`,
@@ -24,6 +25,7 @@ function interlaced(order: 2 | 3) {
     },
     { order: "gray", columns: (dimension) => interlacedColumns(order, dimension) },
   );
+  return { ...net, interlacing: order };
 }
 
 export const interlaced2 = interlaced(2);

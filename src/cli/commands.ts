@@ -70,7 +70,7 @@ export const commands: readonly Command[] = [
   {
     name: "inspect",
     positional: "<sources..>",
-    summary: "structure of sources: period, low bits, dual lattice and planes by dimension",
+    summary: "structure of sources: period, low bits, dual lattice, net quality, discrepancy",
     options: {
       dimension: { ...dimension, describe: "numbers of coordinates, e.g. 2..16 (the default), 8 or 2,3,6" },
       points: text("points of a planned study, or of a point set"),
@@ -78,6 +78,11 @@ export const commands: readonly Command[] = [
       state: text("the source's own starting state in published form, or @file"),
       indices: text("an index set, 0-based: which outputs or coordinates, e.g. 0,1,5"),
       span: text("index sets of the worst projections lie below this index (12)"),
+      discrepancy: flag(
+        "discrepancies of the first --points points as well: their number squared is the cost",
+      ),
+      seed: text("seed of the points for --discrepancy (a whole number)"),
+      "allow-programs": allowPrograms,
       json,
     },
     load: () => import("./commands/inspect.js"),

@@ -1,10 +1,11 @@
 /** The flags of `tolerand inspect` as what is asked about a source. */
+import { DEFAULT_SETTINGS } from "../problem/defaults.js";
 import { parseInteger } from "../numeric/integer-formula.js";
 import type { InspectionRequest } from "../structure/contract.js";
 import type { Arguments, Io } from "./command.js";
 import { asInput, InputError } from "./errors.js";
 import { messages } from "./messages.js";
-import { textFlag, textOrFile, wholeFlag } from "./read.js";
+import { booleanFlag, textFlag, textOrFile, wholeFlag } from "./read.js";
 
 const USUAL_DIMENSIONS = "2..16";
 const USUAL_SPAN = 12;
@@ -27,6 +28,14 @@ export function inspectionRequest(args: Arguments, io: Io): InspectionRequest {
     state: state === null ? null : textOrFile(state, "state", io).trim(),
     indices: indices === null ? null : indicesOf(indices),
     span: wholeFlag(args, "span", 2) ?? USUAL_SPAN,
+    ...(booleanFlag(args, "discrepancy") ? { discrepancy: discrepancyRequest(args) } : {}),
+  };
+}
+
+function discrepancyRequest(args: Arguments): NonNullable<InspectionRequest["discrepancy"]> {
+  return {
+    seed: wholeFlag(args, "seed", 0) ?? DEFAULT_SETTINGS.seed,
+    allowPrograms: booleanFlag(args, "allow-programs"),
   };
 }
 

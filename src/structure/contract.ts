@@ -21,6 +21,8 @@ export interface InspectionRequest {
   readonly indices: readonly number[] | null;
   /** Index sets of the worst projections lie below this index. */
   readonly span: number;
+  /** Where discrepancies of the points are asked for: what the points are drawn with. */
+  readonly discrepancy?: { readonly seed: number; readonly allowPrograms: boolean };
 }
 
 export interface Column {

@@ -4,8 +4,8 @@
  * stay empty. In high coordinates both then rise in step, and the points lie on a few lines (W. J. Morokoff and R. E. Caflisch,
  * SIAM Journal on Scientific Computing 15 (1994) 1251-1279), which the correlation of the first points shows.
  *
- * A leap that shares no factor with the bases keeps p q and breaks the step (Kocis and Whiten 1997); so do random
- * permutations of the digits (Owen 2017).
+ * A leap that shares no factor with the bases keeps p q and changes which pairs rise in step (Kocis and Whiten 1997). Random
+ * permutations of the digits keep p q too, and no pair rises in step on average over them (Owen 2017).
  */
 import type { PointSet } from "./points.js";
 

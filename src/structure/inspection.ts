@@ -1,13 +1,21 @@
 /** The sections of an inspection, and one source taken through all of them. */
 import type { SourceChoice } from "../sources/choice.js";
 import type { InspectionRequest, Part, Section } from "./contract.js";
+import { discrepancySection } from "./sections/discrepancy.js";
 import { dualSection } from "./sections/dual.js";
+import { haltonSection } from "./sections/halton.js";
+import { latticeQualitySection } from "./sections/lattice-quality.js";
+import { netSection } from "./sections/net.js";
 import { periodSection } from "./sections/period.js";
 
 /** In the order of the output. */
 const SECTIONS = {
   period: periodSection,
   dual: dualSection,
+  latticeQuality: latticeQualitySection,
+  net: netSection,
+  halton: haltonSection,
+  discrepancy: discrepancySection,
 } as const;
 
 type Sections = typeof SECTIONS;

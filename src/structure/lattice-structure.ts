@@ -59,10 +59,15 @@ export function latticeStructure(
   return linear;
 }
 
+/** The size nearest to `points` at which a source's points are a lattice: of a sequence, a power of two. */
+export function latticeSize(source: RankOneLattice, points: number | null): number {
+  const asked = points ?? USUAL_POINTS;
+  return source.nesting === "sequence" ? 2 ** Math.round(Math.log2(asked)) : source.nearestSize(asked);
+}
+
 function rankOne(source: RankOneLattice, points: number | null, dimension: number): LatticeStructure {
   const asked = points ?? USUAL_POINTS;
-  // of a sequence, the points up to a power of two are a lattice
-  const n = source.nesting === "sequence" ? 2 ** Math.round(Math.log2(asked)) : source.nearestSize(asked);
+  const n = latticeSize(source, points);
   const z = source.generatingVector(n, Math.min(dimension, source.largestDimension));
   const modulus = BigInt(n);
   return {

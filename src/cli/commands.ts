@@ -9,6 +9,7 @@ const flag = (describe: string): Options => ({ type: "boolean", describe });
 const json = flag("print one JSON document instead of a table");
 const seed = text("seed of the study (a whole number)");
 const source = text("a source: id, inline mapping, or @file.yaml; repeatable");
+const threads = text("worker threads (default: all processors)");
 const allowPrograms = flag("start the programs that sources of your own name; they run with your rights");
 const dimension: Options = { ...text("coordinates per point"), alias: "dimensions" };
 
@@ -37,7 +38,7 @@ export const commands: readonly Command[] = [
     options: {
       ...studySettings,
       out: text("report folder (default: reports/NAME)"),
-      threads: text("worker threads (default: all processors)"),
+      threads,
       resume: flag("go on with an interrupted run of the same study"),
       replace: flag("overwrite a report folder that holds another study"),
       "allow-programs": allowPrograms,
@@ -60,7 +61,8 @@ export const commands: readonly Command[] = [
       sources: studySettings.sources,
       points: text("points of one estimate"),
       replicates: studySettings.replicates,
-      "full-cycle": flag("average over every state of the source as well"),
+      "full-cycle": flag("average over every state of the source as well (at most 2^32 of them)"),
+      threads,
       seed,
       out: text("folder for a report (default: none is written)"),
       json,

@@ -1,7 +1,7 @@
 /** Averages over every starting state for a command: threads, progress, and a journal that an interrupted run leaves. */
 import { join, relative, resolve } from "node:path";
 import type { Problem } from "../problem/contract.js";
-import type { FullCycleAverage } from "../record/types.js";
+import type { FullCycleAverage, StudyRecord } from "../record/types.js";
 import type { SourceChoice } from "../sources/choice.js";
 import { fullCycleOf } from "../sources/cycle.js";
 import { cycleDigest, cycleExecutor, fullCycle, reviveCycle } from "../study/full-cycle.js";
@@ -57,4 +57,34 @@ export async function averageOverCycle(
   } finally {
     await executor.close();
   }
+}
+
+/**
+ * The record with the average of its one problem over every state of these sources in their explanations; where the problem
+ * has no reference, the bias is taken against the study's consensus. Null after an interruption.
+ */
+export async function withFullCycles(
+  record: StudyRecord,
+  problem: Problem,
+  choices: readonly SourceChoice[],
+  threads: number,
+  io: Io,
+): Promise<StudyRecord | null> {
+  const averages = new Map<string, FullCycleAverage>();
+  for (const choice of choices) {
+    const average = await averageOverCycle(problem, choice, threads, io);
+    if (average === null) return null;
+    averages.set(choice.id, against(average, record));
+  }
+  const explanations = record.explanations.map((explanation) => ({
+    ...explanation,
+    fullCycle: averages.get(explanation.source) ?? null,
+  }));
+  return { ...record, explanations };
+}
+
+function against(average: FullCycleAverage, { consensus }: StudyRecord): FullCycleAverage {
+  const [common] = consensus;
+  if (average.bias !== null || common === undefined || common.value === null) return average;
+  return { ...average, bias: average.mean - common.value, referenceUncertainty: common.standardError };
 }

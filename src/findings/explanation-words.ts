@@ -117,7 +117,7 @@ export function explanationLines(explanation: Explanation): string[] {
   }
   if (fullCycle !== null && fullCycle.bias !== null)
     lines.push(
-      `bias over all ${formatCount(fullCycle.states)} states ${Number(fullCycle.bias.toPrecision(8))} (exact average)`,
+      `bias over all ${formatCount(fullCycle.states)} states ${String(Number(fullCycle.bias.toPrecision(8))).replace("-", "\u2212")} (exact average)`,
     );
   if (difference !== null) {
     const words = explanation.explained

@@ -27,6 +27,19 @@ const fullCycle = z.strictObject({
   endpoints: whole,
 });
 
+const paired = { bias: real, standardError: real, interval: z.tuple([real, real]) };
+
+const resolution = z.strictObject({
+  bits: z.int().min(1),
+  endpoint: z.enum(["middle", "left"]),
+  confidence: z.number().gt(0).lt(1),
+  ...paired,
+  unreachableTail: z.strictObject({ ...paired, probability: z.number().min(0).max(1) }),
+  points: z.int().min(1),
+  replicates: z.int().min(2),
+  nonFinite: whole,
+});
+
 export const explanation = z
   .strictObject({
     problem: name,
@@ -77,5 +90,6 @@ export const explanation = z
       }),
     ),
     fullCycle: orNull(fullCycle),
+    resolution: orNull(z.strictObject({ own: z.int().min(1), costs: z.array(resolution) })),
   })
   .describe("What the structure of a source predicts for an integrand, beside what was measured.");

@@ -1,4 +1,5 @@
 /** What the structure of a source predicts for one integrand, and how that compares with what was measured. */
+import type { ResolutionLadder } from "./resolution.js";
 import type { FullCycleAverage } from "./types.js";
 
 /** A number with the interval that belongs to it. */
@@ -98,4 +99,6 @@ export interface Explanation {
   readonly comb: PlaneComb | null;
   /** The average over every state, where it was asked for. */
   readonly fullCycle: FullCycleAverage | null;
+  /** What the bits of a coordinate cost, the source's own among others; null where it was not asked for. */
+  readonly resolution: ResolutionLadder | null;
 }

@@ -70,6 +70,7 @@ function structureOf({ problem, choice, n, measured, output }: ExplainRequest): 
     aliases: [],
     comb: null,
     fullCycle: null,
+    resolution: null,
   };
   if ("reason" in set) return { ...none, reason: set.reason };
   const { vectors, shortest } = aliasVectors(set, dimension, MOST_VECTORS);

@@ -12,10 +12,12 @@
 import { studentFactor } from "../numeric/student.js";
 import { deviation } from "../numeric/moments.js";
 import { mean } from "../numeric/sums.js";
-import type { OpenStream, PointStream } from "../sources/contract.js";
+import type { PairedEstimate, ResolutionCost } from "../record/resolution.js";
+import type { OpenStream, PointStream, Source } from "../sources/contract.js";
 import { COORDINATE_BITS, type Endpoint } from "../sources/conversion.js";
 import { makeKey, type Key } from "../sources/key.js";
 import { philox4x64 } from "../sources/philox4x64.js";
+import { isPseudoRandom } from "../sources/pseudo-random.js";
 import { channelMean } from "../estimators/moments.js";
 import { Integrator } from "./integrator.js";
 import type { RunnableProblem } from "./runnable.js";
@@ -32,31 +34,20 @@ export interface ResolutionRequest {
   readonly endpoint?: Endpoint;
 }
 
-/** An estimate over replicates: standard error of its mean, and Student's interval at the level asked for. */
-export interface PairedEstimate {
-  readonly bias: number;
-  readonly standardError: number;
-  readonly interval: readonly [number, number];
-}
-
-/** The bias that b bits make: E f(rounded to b bits) - E f. */
-export interface ResolutionCost extends PairedEstimate {
-  readonly bits: number;
-  readonly endpoint: Endpoint;
-  readonly confidence: number;
-  /** Its part that comes from points with a coordinate in an outermost cell. */
-  readonly unreachableTail: PairedEstimate & {
-    /** Share of all points with a coordinate nearer to 0 or 1 than any that b bits give. */
-    readonly probability: number;
-  };
-  readonly points: number;
-  readonly replicates: number;
-  /** Evaluations, rounded or not, whose value was not finite; the figures are then not finite either. */
-  readonly nonFinite: number;
-}
-
 /** Bits at which a ladder looks, and those of the source itself. */
 const LADDER = [8, 12, 16, 24, 32] as const;
+
+/**
+ * The cells that a source's coordinates stand for: their bits (52 at most) and which point of a cell it gives. A modulus
+ * that is no power of two counts by the bits of its largest integer; float32 by the 24 bits of its significand.
+ */
+export function cellsOf(source: Source): { readonly bits: number; readonly endpoint: Endpoint } {
+  if (!isPseudoRandom(source))
+    return { bits: Math.min(source.outputBits, COORDINATE_BITS), endpoint: "middle" };
+  const { bits, endpoint, float32 } = source.usage;
+  const given = bits?.count ?? source.outputBits;
+  return { bits: Math.min(given, float32 ? 24 : COORDINATE_BITS), endpoint };
+}
 
 /** The usual bits and `own`, ascending, each once; coordinates hold 52 at most. */
 export function bitLadder(own: number): number[] {

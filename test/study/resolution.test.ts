@@ -2,8 +2,10 @@
 import { describe, expect, it } from "vitest";
 import { normalQuantile } from "../../src/numeric/normal.js";
 import { mean } from "../../src/numeric/sums.js";
-import type { Problem } from "../../src/problem/contract.js";
-import { bitLadder, resolutionCost, type ResolutionCost } from "../../src/study/resolution.js";
+import type { Problem, SourceSpec } from "../../src/problem/contract.js";
+import type { ResolutionCost } from "../../src/record/resolution.js";
+import { parseSource } from "../../src/sources/choice.js";
+import { bitLadder, cellsOf, resolutionCost } from "../../src/study/resolution.js";
 import { prepareProblems, type RunnableProblem } from "../../src/study/runnable.js";
 import { problem } from "./fixtures.js";
 
@@ -106,5 +108,19 @@ describe("asking for it", () => {
     expect(bitLadder(31)).toEqual([8, 12, 16, 24, 31, 32]);
     expect(bitLadder(24)).toEqual([8, 12, 16, 24, 32]);
     expect(bitLadder(64)).toEqual([8, 12, 16, 24, 32, 52]);
+  });
+
+  it("knows the cells of a source: its bits, at most 52, and which point of a cell it gives", () => {
+    const cells = (spec: SourceSpec): unknown => cellsOf(parseSource(spec).source);
+    expect(cells("randu")).toEqual({ bits: 31, endpoint: "middle" });
+    expect(cells("lrand48")).toEqual({ bits: 31, endpoint: "middle" });
+    expect(cells("pcg64")).toEqual({ bits: 52, endpoint: "middle" });
+    expect(cells("sobol+owen")).toEqual({ bits: 52, endpoint: "middle" });
+    const own = { name: "own", source: "mt19937", bits: "low 9", endpoint: "left" };
+    expect(cells(own)).toEqual({ bits: 9, endpoint: "left" });
+    expect(cells({ name: "float", source: "pcg64", float32: true })).toEqual({
+      bits: 24,
+      endpoint: "middle",
+    });
   });
 });

@@ -2,22 +2,24 @@
  * `tolerand explain PROBLEM`: with `--source X`, why this source errs on this integrand; without a source, what the
  * integrand itself is like.
  */
-import { availableParallelism } from "node:os";
 import { resolve } from "node:path";
 import type { SourceSpec, StudySettings } from "../../problem/contract.js";
 import { loadPaths, type LoadedProblem } from "../../problem/load.js";
 import { runStudy } from "../../recipe.js";
 import { jsonText } from "../../record/json.js";
-import { parseSource } from "../../sources/choice.js";
+import { parseSource, type SourceChoice } from "../../sources/choice.js";
+import type { StudyRecord } from "../../record/types.js";
 import { threads } from "../../study/executor.js";
 import { startProgress } from "../../study/progress.js";
-import { prepareProblems } from "../../study/runnable.js";
+import { bitLadder, cellsOf, resolutionCost } from "../../study/resolution.js";
+import { prepareProblems, type RunnableProblem } from "../../study/runnable.js";
 import { buildSpec } from "../../study/settings.js";
 import { EXIT, type Arguments, type Io } from "../command.js";
 import { environmentOf } from "../environment.js";
 import { asInput, InputError } from "../errors.js";
+import { checkCycles, withFullCycles } from "../full-cycle.js";
 import { messages } from "../messages.js";
-import { booleanFlag, textFlag, wholeFlag } from "../read.js";
+import { booleanFlag, textFlag, threadCount, wholeFlag } from "../read.js";
 import { settingsFromFlags } from "../study-flags.js";
 
 /** Points and replicates that a bias is measured with; one that shows is measured again on 256 fresh replicates. */
@@ -54,7 +56,10 @@ async function explainSources(
   args: Arguments,
   io: Io,
 ): Promise<number> {
-  const asked = flags.sources.map((spec) => parseSource(spec).id);
+  const choices = flags.sources.map(parseSource);
+  const asked = choices.map(({ id }) => id);
+  const cycles = booleanFlag(args, "full-cycle");
+  if (cycles) checkCycles(choices);
   // what is in use is not asked about here
   const alone = { ...loaded, problem: { ...loaded.problem, inUse: null } };
   const { spec } = asInput(() =>
@@ -66,10 +71,10 @@ async function explainSources(
     }),
   );
   const problems = await prepareProblems(spec.problems);
-  const count = availableParallelism();
+  const count = threadCount(args);
   const executor = threads(problems, count);
   const started = Date.now();
-  const record = await runStudy({
+  const measured = await runStudy({
     spec,
     problems,
     executor,
@@ -80,7 +85,10 @@ async function explainSources(
     warnings: [],
     explain: asked,
   }).finally(() => executor.close());
-  if (!record.environment.complete) return EXIT.interrupted;
+  if (!measured.environment.complete) return EXIT.interrupted;
+  const rounded = withResolution(measured, problems, choices);
+  const record = cycles ? await withFullCycles(rounded, alone.problem, choices, count, io) : rounded;
+  if (record === null) return EXIT.interrupted;
 
   const explanations = record.explanations.filter(({ source }) => asked.includes(source));
   if (booleanFlag(args, "json")) io.stdout.write(`${jsonText(explanations, 2)}\n`);
@@ -96,4 +104,28 @@ async function explainSources(
     io.stderr.write(messages.next(`open ${folder}/index.html`));
   }
   return EXIT.done;
+}
+
+/** What bits cost is estimated with so many points and replicates for each number of bits: a second or two in all. */
+const RESOLUTION = { points: 2 ** 12, replicates: 16 };
+
+/** The record with what the bits of each source cost the integrand, and what other numbers of bits would. */
+function withResolution(
+  record: StudyRecord,
+  problems: readonly RunnableProblem[],
+  choices: readonly SourceChoice[],
+): StudyRecord {
+  const [problem] = problems;
+  const [described] = record.problems;
+  if (problem === undefined || described === undefined) return record;
+  const { confidence } = described.tolerance;
+  const request = { seed: record.spec.seed, confidence, ...RESOLUTION };
+  const explanations = record.explanations.map((explanation) => {
+    const choice = choices.find(({ id }) => id === explanation.source);
+    if (choice === undefined) return explanation;
+    const { bits, endpoint } = cellsOf(choice.source);
+    const costs = bitLadder(bits).map((b) => resolutionCost(problem, b, { ...request, endpoint }));
+    return { ...explanation, resolution: { own: bits, costs } };
+  });
+  return { ...record, explanations };
 }

@@ -2,7 +2,7 @@
 
 Generators: NumPy's PCG64 and MT19937, SciPy's unscrambled Sobol'. Reads lines "WORKLOAD SOURCE POINTS" on standard input,
 answers each with "ESTIMATE SECONDS"; "points SOURCE D POINTS" times points alone (PCG64, ..., sobol, sobol-scrambled,
-halton, halton-scrambled), "discrepancy METHOD D POINTS" measures Sobol' points. Imports and set-up are not timed.
+halton, halton-scrambled). Imports and set-up are not timed.
 """
 import sys
 import time
@@ -70,20 +70,11 @@ def points_alone(source, d, points):
     return float(x[-1, 0]), time.perf_counter() - start
 
 
-def discrepancy(method, d, n):
-    x = qmc.Sobol(d, scramble=False, bits=52).random(n) + 2.0**-53
-    start = time.perf_counter()
-    value = qmc.discrepancy(x, method=method)
-    return value, time.perf_counter() - start
-
-
 print(np.__version__, scipy.__version__, flush=True)
 for line in sys.stdin:
     words = line.split()
     if words[0] == "points":
         answer = points_alone(words[1], int(words[2]), int(words[3]))
-    elif words[0] == "discrepancy":
-        answer = discrepancy(words[1], int(words[2]), int(words[3]))
     else:
         answer = estimate(words[0], words[1], int(words[2]))
     print("%.17g %.9f" % answer, flush=True)

@@ -13,7 +13,6 @@ import { engineRates } from "./engine.mjs";
 import { fullCycleTable } from "./full-cycle.mjs";
 import { constructionTable, sourceTable } from "./sources.mjs";
 import { memoryTable, studyTable, threadTable } from "./study.mjs";
-import { structureTable } from "./structure.mjs";
 import { insert, median, table } from "./table.mjs";
 
 const ROUNDS = 7;
@@ -121,7 +120,6 @@ try {
     threads: () => threadTable(ROUNDS),
     memory: () => memoryTable(),
     study: () => studyTable(),
-    structure: () => structureTable(python, 3),
     "full-cycle": () => fullCycleTable(ROUNDS),
   };
   const asked = process.argv.slice(2).filter((word) => word !== "--write");

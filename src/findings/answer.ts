@@ -1,6 +1,8 @@
 /** The answer for one problem in one sentence: what reaches its tolerance, at what effort, and what never does. */
 import type { Problem } from "../problem/contract.js";
+import type { Explanation } from "../record/explanation.js";
 import type { Convergence, StudyRecord } from "../record/types.js";
+import { planesText, vectorText } from "./explanation-words.js";
 import { formatCount, formatPercent, formatSeconds, formatValue } from "./format.js";
 import { formatReach } from "./headline.js";
 import { referencesOf, toleranceOf } from "./reference.js";
@@ -46,6 +48,14 @@ function efforts(here: readonly Convergence[], record: StudyRecord): Convergence
   return other === undefined ? [best] : [best, other];
 }
 
+/** What explains a bias, in brackets; nothing where it is not explained. */
+function becauseOf(explanation: Explanation | undefined): string {
+  const alias = explanation?.explained === true ? explanation.aliases[0] : undefined;
+  return alias === undefined
+    ? ""
+    : ` (its points lie on the planes of ${vectorText(alias)}: ${planesText(alias)})`;
+}
+
 /** The sentence for one problem and output of `record`. */
 export function answerOf(problem: Problem, output: string, record: StudyRecord): string {
   const tolerance = toleranceOf(problem, referencesOf([problem], record.consensus).get(problem.id));
@@ -64,7 +74,10 @@ export function answerOf(problem: Problem, output: string, record: StudyRecord):
   for (const { source, confirmation } of confirmed.slice(0, NAMED)) {
     if (confirmation === null) continue;
     const { bias, standardError } = confirmation;
-    parts.push(`${source} is off by ${bias > 0 ? "+" : ""}${formatValue(bias, standardError)} whatever n`);
+    const why = becauseOf(here(record.explanations).find((one) => one.source === source));
+    parts.push(
+      `${source} is off by ${bias > 0 ? "+" : ""}${formatValue(bias, standardError)} whatever n${why}`,
+    );
   }
   if (confirmed.length > NAMED) parts.push(`${confirmed.length - NAMED} more sources are biased`);
   const flat = convergence.filter(

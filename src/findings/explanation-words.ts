@@ -1,5 +1,5 @@
 /** An explanation in words: the vector at fault, what it predicts, how that compares with what was measured. */
-import type { Alias, Estimated, Explanation } from "../record/explanation.js";
+import type { Alias, Estimated, Explanation, PredictedBias } from "../record/explanation.js";
 import { formatCount, formatInterval, formatPercent, formatValue } from "./format.js";
 
 const SUBSCRIPTS = "₀₁₂₃₄₅₆₇₈₉";
@@ -17,6 +17,16 @@ export function vectorText({ indices, entries }: Pick<Alias, "indices" | "entrie
       return `${sign}${size === 1 ? "" : `${formatCount(size)}\u00a0`}u${index}`;
     })
     .join("");
+}
+
+/** "2^30", "2^31 − 1", or the digits. */
+export function modulusText(digits: string): string {
+  const modulus = BigInt(digits);
+  const power = modulus.toString(2).length - 1;
+  if (power < 8) return digits;
+  if (modulus === 1n << BigInt(power)) return `2^${power}`;
+  if (modulus === (2n << BigInt(power)) - 1n) return `2^${power + 1} − 1`;
+  return digits.replace(/\B(?=(\d{3})+(?!\d))/g, ",");
 }
 
 /** "15 planes, gap 0.092". */
@@ -87,6 +97,11 @@ function unexplained({ predicted, measured, difference }: Explanation): string {
   return `Not explained in full: measured and predicted bias differ by ${formatValue(difference.value)} (${formatInterval(difference.interval)})${part}.`;
 }
 
+function tailWord({ stable, tail }: PredictedBias): string {
+  if (stable) return "stable";
+  return hidden(tail) ? "lost in noise" : "not stable";
+}
+
 /** Whether an interval holds 0. */
 function hidden(estimated: Estimated | null): boolean {
   return estimated !== null && estimated.interval[0] <= 0 && estimated.interval[1] >= 0;
@@ -112,7 +127,7 @@ export function explanationLines(explanation: Explanation): string[] {
       `predicted bias ${formatValue(value, standardError)} (${level}${formatInterval(interval)}) from ${sum}, ` +
         `estimated with ${replicates} \u00d7 ${formatCount(points)} points of ${source}`,
       `unresolved tail ${formatValue(tail.value, (tail.interval[1] - tail.interval[0]) / 4)} ` +
-        `(${level}${formatInterval(tail.interval)}) from as many pairs again: ${predicted.stable ? "stable" : "not stable"}`,
+        `(${level}${formatInterval(tail.interval)}) from as many pairs again: ${tailWord(predicted)}`,
     );
   }
   if (fullCycle !== null && fullCycle.bias !== null)

@@ -3,6 +3,7 @@ import {
   explanationHeadline,
   explanationLines,
   hazardText,
+  modulusText,
   planesText,
   vectorText,
 } from "../findings/explanation-words.js";
@@ -26,7 +27,7 @@ export function explanationText(title: string, explanations: readonly Explanatio
     lines.push(...explanationLines(explanation).map((line) => `  ${line}`));
     const { structure, aliases, predicted } = explanation;
     if (structure !== null)
-      lines.push(`  lattice of its tuples: modulus ${structure.modulus}, ${structure.what}`);
+      lines.push(`  lattice of its tuples: modulus ${modulusText(structure.modulus)}, ${structure.what}`);
     const hazard = predicted === null ? hazardText(explanation) : null;
     if (hazard !== null) lines.push(`  its structure: ${hazard}`);
     if (predicted !== null) lines.push(...textTable(COLUMNS, aliases.map(row)).map((line) => `    ${line}`));

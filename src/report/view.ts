@@ -14,6 +14,7 @@ import type {
 import { answerOf } from "../findings/answer.js";
 import { biasSentences, headlinesOf } from "../findings/headline.js";
 import { type KnownReference, referencesOf, toleranceOf } from "../findings/reference.js";
+import type { Explanation } from "../record/explanation.js";
 import type { Problem } from "../problem/contract.js";
 import { FAMILIES, type FamilyLook, type Ink } from "./look.js";
 
@@ -40,6 +41,8 @@ export interface Row {
   readonly last: Cell | null;
   readonly test: BiasTest | null;
   readonly convergence: Convergence | null;
+  /** What the structure of the source does to the integrand, or could do. */
+  readonly explanation: Explanation | null;
   /** The budget of the comparison, not of what is in use. */
   readonly budget: Budget | null;
 }
@@ -68,10 +71,20 @@ export interface Subject {
   readonly biases: readonly string[];
 }
 
+/** A row whose bias the structure of its source was asked about, with a prediction. */
+export interface ExplainedRow {
+  readonly subject: Subject;
+  readonly row: Row;
+  readonly explanation: Explanation;
+  /** Anchor is `why-` and this; the stem of its chart files too. */
+  readonly slug: string;
+}
+
 export interface View {
   readonly record: StudyRecord;
   readonly subjects: readonly Subject[];
   readonly sources: readonly SourceView[];
+  readonly explained: readonly ExplainedRow[];
 }
 
 /** Distinct anchors and file stems from names: lower-case letters, digits and hyphens, numbered where they collide. */
@@ -113,6 +126,7 @@ function subjectRows(
     all.filter((item) => item.problem === problem && item.output === output);
   const cells = here(record.cells);
   const [tests, convergence, budgets] = [here(record.tests), here(record.convergence), here(record.budgets)];
+  const explanations = here(record.explanations);
   const estimators = [...new Set(cells.map((cell) => cell.estimator))];
   const rows: Row[] = [];
   for (const view of sources) {
@@ -129,6 +143,7 @@ function subjectRows(
         last: own[own.length - 1] ?? null,
         test: tests.find(mine) ?? null,
         convergence: convergence.find(mine) ?? null,
+        explanation: explanations.find(mine) ?? null,
         budget: budgets.find((budget) => !budget.inUse && mine(budget)) ?? null,
       });
     }
@@ -171,5 +186,15 @@ export function viewRecord(record: StudyRecord): View {
       biases: biasSentences(problem, record),
     };
   });
-  return { record, subjects, sources };
+  return { record, subjects, sources, explained: explainedRows(subjects) };
+}
+
+function explainedRows(subjects: readonly Subject[]): ExplainedRow[] {
+  return subjects.flatMap((subject) =>
+    subject.rows.flatMap((row): ExplainedRow[] => {
+      const { explanation } = row;
+      if (explanation === null || explanation.predicted === null) return [];
+      return [{ subject, row, explanation, slug: `${subject.slug}-${row.view.slug}` }];
+    }),
+  );
 }

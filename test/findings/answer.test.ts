@@ -15,7 +15,7 @@ function answer(at: number, of: StudyRecord = record): string {
 describe("answerOf", () => {
   it("names the least effort, the least of another family, and every confirmed bias with its size", () => {
     expect(answer(0)).toMatch(
-      /^sobol\+owen stays inside ±0\.01 at 99 % with ≈ 120 points \(13 µs\); \S+ needs ≈ [\d,]+ points \(\S+ \S+\); randu is off by −0\.050\S* whatever n; house is off by \+0\.020\S* whatever n/,
+      /^sobol\+owen stays inside ±0\.01 at 99 % with ≈ 120 points \(13 µs\); \S+ needs ≈ [\d,]+ points \(\S+ \S+\); randu is off by −0\.050\S* whatever n \(its points lie on the planes of 9\u00a0u₁ − 6\u00a0u₂ \+ u₃: 15 planes, gap 0\.092\); house is off by \+0\.020\S* whatever n/,
     );
   });
 

@@ -57,9 +57,17 @@ describe("the page", () => {
     expect(facts.problems[1]?.title).toContain(HOSTILE);
   });
 
+  it("links a verdict that structure explains to its explanation, and names what structure could still spoil", () => {
+    const anchors = [...page.matchAll(/<div class="why" id="(why-[^"]+)"/g)].map((match) => match[1] ?? "");
+    expect(anchors.length).toBe(sampleRecord().explanations.filter(({ explained }) => explained).length);
+    // from the table of verdicts and from the ranking
+    for (const anchor of anchors) expect(page.split(`href="#${anchor}"`).length - 1).toBe(2);
+    expect(page).toContain("What known structure could still spoil");
+  });
+
   it("tells of every figure in words and has its numbers as a table", () => {
     const figures = page.match(/<figure[\s\S]*?<\/figure>/g) ?? [];
-    expect(figures.length).toBe(11);
+    expect(figures.length).toBe(16);
     for (const figure of figures) {
       expect(figure).toMatch(/<svg[^>]* role="img" aria-label="[^"]{60,}"/);
       expect(figure).toMatch(/<details>\s*<summary>The numbers<\/summary>[\s\S]*<table>/);

@@ -3,6 +3,7 @@
  * not a run. It holds what a report must cope with: every family, a deterministic source, an undecided and a confirmed
  * case, exact zeros, non-finite cells, a missing reference, what is in use, and texts that try to be markup.
  */
+import { sampleExplanation } from "./sample-explanation.js";
 import type { Family } from "../../src/sources/contract.js";
 import type { Problem } from "../../src/problem/contract.js";
 import {
@@ -342,7 +343,11 @@ export function sampleRecord(size: SampleSize = SMALL): StudyRecord {
     family: { tests: tests.filter((t) => t.kind !== "none").length, level: 0.01 },
     convergence,
     budgets,
-    explanations: [],
+    explanations: tests
+      .filter(({ source }) => source === "randu")
+      .map(({ problem, output, confirmation }) =>
+        sampleExplanation(problem, output, confirmation?.bias ?? null),
+      ),
     warnings: ["sobol: its first point lies near z = -8 in every coordinate"],
   };
 }

@@ -1,11 +1,14 @@
 /** The charts of a report in the order of reading: some for every subject, some across all of them. */
-import type { Subject, View } from "../view.js";
+import type { ExplainedRow, Subject, View } from "../view.js";
+import { aliasChart } from "./aliases.js";
 import { biasChart } from "./bias.js";
 import { biasMap } from "./bias-map.js";
 import type { Chart } from "./chart.js";
 import { costToTolerance } from "./cost-to-tolerance.js";
 import { errorAgainstN } from "./error-against-n.js";
 import { orders } from "./orders.js";
+import { planeComb } from "./plane-comb.js";
+import { predictedBias } from "./predicted-bias.js";
 
 /** Charts of one subject; null where there is nothing to draw. */
 const SUBJECT_CHARTS: readonly ((view: View, subject: Subject) => Chart | null)[] = [
@@ -13,12 +16,21 @@ const SUBJECT_CHARTS: readonly ((view: View, subject: Subject) => Chart | null)[
   biasChart,
 ];
 
-/** Charts across all subjects. */
-const ACROSS_CHARTS: readonly ((view: View) => Chart | null)[] = [biasMap, orders, costToTolerance];
+/** Charts of one bias that the structure of its source was asked about. */
+const EXPLAINED_CHARTS: readonly ((row: ExplainedRow) => Chart | null)[] = [planeComb, aliasChart];
 
-/** All charts of a record: per subject (by slug), and across. */
+/** Charts across all subjects. */
+const ACROSS_CHARTS: readonly ((view: View) => Chart | null)[] = [
+  biasMap,
+  predictedBias,
+  orders,
+  costToTolerance,
+];
+
+/** All charts of a record: per subject and per explained bias (by slug), and across. */
 export interface ChartSet {
   readonly bySubject: ReadonlyMap<string, readonly Chart[]>;
+  readonly byExplanation: ReadonlyMap<string, readonly Chart[]>;
   readonly across: readonly Chart[];
 }
 
@@ -35,10 +47,13 @@ export function chartsOf(view: View): ChartSet {
         present(SUBJECT_CHARTS.map((make) => make(view, subject))),
       ]),
     ),
+    byExplanation: new Map(
+      view.explained.map((row) => [row.slug, present(EXPLAINED_CHARTS.map((make) => make(row)))]),
+    ),
     across: present(ACROSS_CHARTS.map((make) => make(view))),
   };
 }
 
 export function everyChart(set: ChartSet): Chart[] {
-  return [...[...set.bySubject.values()].flat(), ...set.across];
+  return [...[...set.bySubject.values()].flat(), ...[...set.byExplanation.values()].flat(), ...set.across];
 }

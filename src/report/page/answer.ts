@@ -30,8 +30,11 @@ function verdictTable(view: View): Markup {
       if (row === undefined) return html`<td></td>`;
       const n = row.budget?.n ?? row.last?.n ?? 0;
       const apart = n > 1.5 * usual || n < usual / 1.5;
+      const why = view.explained.find((one) => one.row === row && one.explanation.explained);
       return html`<td>
-        ${verdictMark(row.budget?.verdict ?? "none")}${apart && html`<br /><span class="soft">at ${formatCount(n)}</span>`}
+        ${verdictMark(row.budget?.verdict ?? "none")}${
+          why !== undefined && html`<br /><a href="#why-${why.slug}">why</a>`
+        }${apart && html`<br /><span class="soft">at ${formatCount(n)}</span>`}
       </td>`;
     });
     const inUse = subject.inUse;

@@ -65,7 +65,10 @@ export async function page(view: View, charts: ChartSet): Promise<string> {
   const style = styleSheet();
   const problems: Markup[] = [];
   for (const [i, subject] of view.subjects.entries()) {
-    problems.push(await problemSection(subject, i, charts.bySubject.get(subject.slug) ?? []));
+    const explained = view.explained
+      .filter((row) => row.subject === subject)
+      .map((row) => ({ row, charts: charts.byExplanation.get(row.slug) ?? [] }));
+    problems.push(await problemSection(subject, i, charts.bySubject.get(subject.slug) ?? [], explained));
   }
   const across: Markup[] = [];
   for (const chart of charts.across) across.push(await figure(chart));

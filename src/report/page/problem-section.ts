@@ -4,8 +4,9 @@ import type { Chart } from "../charts/chart.js";
 import { jsonText } from "../../record/json.js";
 import { formatCount, formatPValue, formatValue } from "../../findings/format.js";
 import { plainNumber } from "../numbers.js";
-import type { Subject } from "../view.js";
+import type { ExplainedRow, Subject } from "../view.js";
 import { reachWords, referenceWords, toleranceWords, verdictRows } from "../verdict-row.js";
+import { explanationBlock, hazards, whyLink } from "./explanation-section.js";
 import { dataTable, figure } from "./figure.js";
 import { type Markup, html } from "./html.js";
 import { paragraphs, sourceName, tied, verdictMark } from "./parts.js";
@@ -63,19 +64,19 @@ function facts(subject: Subject): Markup {
   </dl>`;
 }
 
-function ranking(subject: Subject): Markup {
-  const rows = verdictRows(subject).map(
-    (r) =>
-      html`<tr data-s="${r.row.view.index}">
-        <td>${verdictMark(r.row.budget?.verdict ?? "none")}</td>
-        <th scope="row">${sourceName(r.row.view, r.row.label)}</th>
-        <td class="num">${r.n}</td>
-        <td class="num">${r.total}</td>
-        <td>${r.largestLine}</td>
-        <td class="num">${r.reach}</td>
-        <td class="num">${r.cost}</td>
-      </tr> `,
-  );
+function ranking(subject: Subject, explained: readonly ExplainedRow[]): Markup {
+  const rows = verdictRows(subject).map((r) => {
+    const why = whyLink(explained.find(({ row }) => row === r.row));
+    return html`<tr data-s="${r.row.view.index}">
+      <td>${verdictMark(r.row.budget?.verdict ?? "none")}</td>
+      <th scope="row">${sourceName(r.row.view, r.row.label)}</th>
+      <td class="num">${r.n}</td>
+      <td class="num">${r.total}</td>
+      <td>${r.largestLine}${why !== null && html`<br />${why}`}</td>
+      <td class="num">${r.reach}</td>
+      <td class="num">${r.cost}</td>
+    </tr> `;
+  });
   return html`<h4>Sources by cost to tolerance</h4>
     <div class="scroll wide" role="group" aria-label="Sources by cost to tolerance">
       <table>
@@ -157,9 +158,12 @@ export async function problemSection(
   subject: Subject,
   at: number,
   charts: readonly Chart[],
+  explained: readonly { readonly row: ExplainedRow; readonly charts: readonly Chart[] }[],
 ): Promise<Markup> {
   const figures: Markup[] = [];
   for (const chart of charts) figures.push(await figure(chart));
+  const reasons: Markup[] = [];
+  for (const one of explained) reasons.push(await explanationBlock(one.row, one.charts));
   const used = subject.inUseSentence;
   const intervals = subject.rows.filter((row) => (row.convergence?.reach?.interval ?? null) !== null);
   const reach = intervals.map((row) => {
@@ -174,8 +178,12 @@ export async function problemSection(
   return html`<section class="item problem" id="problem-${subject.slug}" data-section data-p="${at}">
     <h3>${subject.title}</h3>
     <p>${used !== null && html`${tied(used)} `}${tied([subject.answer, ...subject.biases].join(" "))}</p>
-    ${paragraphs(subject.problem.about)} ${facts(subject)} ${ranking(subject)} ${remarks(subject)}
-    ${budgetTable(subject)}
+    ${paragraphs(subject.problem.about)} ${facts(subject)}
+    ${ranking(
+      subject,
+      explained.map(({ row }) => row),
+    )}
+    ${remarks(subject)} ${budgetTable(subject)}
     ${
       reach.length > 0 &&
       html`<details>
@@ -183,6 +191,6 @@ export async function problemSection(
         ${dataTable({ columns: reachColumns, rows: reach })}
       </details>`
     }
-    ${figures}
+    ${hazards(subject)} ${figures} ${reasons}
   </section> `;
 }

@@ -34,6 +34,7 @@ export const messages = {
     `--out: ${folder} holds the record of another study and is not overwritten; choose another folder with --out, or overwrite it with --replace`,
   oneProblem: (path: string, found: readonly string[]) =>
     `problem: expected one problem, found ${found.length} in "${path}"; name one of them: ${found.slice(0, 6).join(", ")}`,
+  leftOut: (warnings: readonly string[]) => `--source: ${warnings.join(" ")} Name a source that has them.`,
   explainNeeds: (problem: string) =>
     `explain: expected a source to explain "${problem}" with, found none; name one with --source`,
   dimensions: (most: number, found: string) =>

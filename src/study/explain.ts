@@ -12,6 +12,7 @@ import type {
   PredictedBias,
 } from "../record/explanation.js";
 import type { SourceChoice } from "../sources/choice.js";
+import { bitsOf } from "../sources/conversion.js";
 import { aliasSetOf, type AliasSet, type SparseVector } from "../structure/alias-set.js";
 import { aliasVectors } from "../structure/alias-vectors.js";
 import { AliasEstimator, type Wave } from "./alias-estimate.js";
@@ -73,17 +74,28 @@ function structureOf({ problem, choice, n, measured, output }: ExplainRequest): 
     resolution: null,
   };
   if ("reason" in set) return { ...none, reason: set.reason };
-  const { vectors, shortest } = aliasVectors(set, dimension, MOST_VECTORS);
+  const { vectors: found, shortest } = aliasVectors(set, dimension, MOST_VECTORS);
+  const vectors = found.filter((vector) => isSeen(vector, set));
   const explanation = {
     ...none,
     structure: { kind: set.kind, modulus: set.modulus.toString(), what: set.what },
-    reason: vectors.length === 0 ? TOO_FINE : null,
+    reason: vectors.length > 0 ? null : found.length > 0 ? TOO_FEW_BITS : TOO_FINE,
     aliases: shortestAliases(vectors, shortest, set),
   };
   return { set, vectors, explanation };
 }
 
+/** A wave is seen as it is where rounding moves h.u by less than this share of a turn. */
+const LARGEST_MOVE = 0.01;
+
+function isSeen({ entries }: SparseVector, { bits, modulus }: AliasSet): boolean {
+  if (bits >= bitsOf(modulus)) return true;
+  return entries.reduce((sum, entry) => sum + Math.abs(entry), 0) * 2 ** -(bits + 1) < LARGEST_MOVE;
+}
+
 const TOO_FINE = "its lattice is too fine to matter: no dual vector is shorter than 65,536";
+
+const TOO_FEW_BITS = "its coordinates have too few bits for any of its dual vectors to be seen as a wave";
 
 type Findings = Pick<Explanation, "reason" | "predicted" | "difference" | "explained" | "aliases" | "comb">;
 

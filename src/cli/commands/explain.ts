@@ -62,7 +62,7 @@ async function explainSources(
   if (cycles) checkCycles(choices);
   // what is in use is not asked about here
   const alone = { ...loaded, problem: { ...loaded.problem, inUse: null } };
-  const { spec } = asInput(() =>
+  const { spec, warnings } = asInput(() =>
     buildSpec([alone], {
       replicates: DEFAULTS.replicates,
       ...flags,
@@ -70,6 +70,8 @@ async function explainSources(
       sizes: [wholeFlag(args, "points", 1) ?? DEFAULTS.points],
     }),
   );
+  const usable = (spec.sources[alone.problem.id] ?? []).map((one) => parseSource(one).id);
+  if (!asked.every((id) => usable.includes(id))) throw new InputError(messages.leftOut(warnings));
   const problems = await prepareProblems(spec.problems);
   const count = threadCount(args);
   const executor = threads(problems, count);
@@ -82,7 +84,7 @@ async function explainSources(
     signal: io.signal,
     stage: (title, work) => startProgress(title, work, io.stderr),
     environment: (complete) => environmentOf(io, { threads: count, started, complete }),
-    warnings: [],
+    warnings,
     explain: asked,
   }).finally(() => executor.close());
   if (!measured.environment.complete) return EXIT.interrupted;

@@ -8,8 +8,8 @@ import {
   vectorText,
 } from "../findings/explanation-words.js";
 import { formatCount, formatValue } from "../findings/format.js";
+import { resolutionTable, resolutionTitle } from "../findings/resolution-words.js";
 import type { Alias, Explanation } from "../record/explanation.js";
-import { resolutionLines } from "./resolution-text.js";
 import { plainText, textTable, type TextColumn } from "./text-table.js";
 
 const COLUMNS: readonly TextColumn[] = [
@@ -31,8 +31,14 @@ export function explanationText(title: string, explanations: readonly Explanatio
     const hazard = predicted === null ? hazardText(explanation) : null;
     if (hazard !== null) lines.push(`  its structure: ${hazard}`);
     if (predicted !== null) lines.push(...textTable(COLUMNS, aliases.map(row)).map((line) => `    ${line}`));
-    if (explanation.resolution !== null)
-      lines.push(...resolutionLines(explanation.resolution).map((line) => `  ${line}`));
+    const { resolution } = explanation;
+    if (resolution !== null) {
+      const { columns, rows } = resolutionTable(resolution);
+      lines.push(
+        `  ${resolutionTitle(resolution)}`,
+        ...textTable(columns, rows).map((line) => `    ${line}`),
+      );
+    }
     return lines.join("\n");
   });
   return `${blocks.join("\n\n")}\n`;

@@ -79,7 +79,7 @@ describe("explain --full-cycle", () => {
     expect(stdout).toMatch(
       /what bits cost: the bias of the middles of cells of width 2\^−bits, 99 % intervals \(◂ its own\)/,
     );
-    expect(stdout).toMatch(/\n {2}20 ◂/);
+    expect(stdout).toMatch(/\n {4}20 ◂/);
   });
 
   it("is refused before any work where the states are too many", () => {

@@ -57,6 +57,15 @@ describe("the page", () => {
     expect(facts.problems[1]?.title).toContain(HOSTILE);
   });
 
+  it("shows the exact average over all states beside the prediction, and what bits cost", () => {
+    expect(page).toContain("bias over all 536,870,912 states");
+    expect(page).toContain("all 536,870,912 states");
+    expect(page).toMatch(
+      /<summary>What bits cost: the bias of the middles of cells of width 2\^−bits, 99.% intervals \(◂ its own\)<\/summary>/,
+    );
+    expect(page).toMatch(/<td class="num">31 ◂<\/td><td class="num">−2\.2e-19<\/td>/);
+  });
+
   it("links a verdict that structure explains to its explanation, and names what structure could still spoil", () => {
     const anchors = [...page.matchAll(/<div class="why" id="(why-[^"]+)"/g)].map((match) => match[1] ?? "");
     expect(anchors.length).toBe(sampleRecord().explanations.filter(({ explained }) => explained).length);

@@ -1,5 +1,6 @@
 /** Explanations for the report's sample record; every figure is made up. */
 import type { Explanation } from "../../src/record/explanation.js";
+import type { ResolutionCost } from "../../src/record/resolution.js";
 
 const BINS = 48;
 
@@ -71,7 +72,7 @@ export function sampleExplanation(problem: string, output: string, bias: number 
       soundSource: "philox4x32",
       profile: Array.from({ length: BINS }, (_, bin) => 1 + bias * Math.cos((2 * Math.PI * bin) / BINS)),
     },
-    resolution: null,
+    resolution: { own: 31, costs: [8, 31].map(cost) },
     fullCycle: {
       states: 2 ** 29,
       mean: 1 + bias,
@@ -82,5 +83,23 @@ export function sampleExplanation(problem: string, output: string, bias: number 
       offending: null,
       endpoints: 0,
     },
+  };
+}
+
+function cost(bits: number): ResolutionCost {
+  const paired = (bias: number) => ({
+    bias,
+    standardError: -bias / 50,
+    interval: [1.1 * bias, 0.9 * bias] as const,
+  });
+  return {
+    bits,
+    endpoint: "middle",
+    confidence: 0.99,
+    ...paired(-(4 ** -bits)),
+    unreachableTail: { ...paired(-(8 ** -bits)), probability: 3 * 2 ** -bits },
+    points: 4096,
+    replicates: 16,
+    nonFinite: 0,
   };
 }

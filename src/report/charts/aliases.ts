@@ -20,11 +20,11 @@ interface Line {
   readonly value: number;
   readonly error: number | null;
   readonly interval: readonly [number, number];
-  readonly kind: "vector" | "predicted" | "measured";
+  readonly kind: "vector" | "predicted" | "cycle" | "measured";
 }
 
 function linesOf({ explanation }: ExplainedRow): Line[] {
-  const { aliases, predicted, measured } = explanation;
+  const { aliases, predicted, measured, fullCycle } = explanation;
   const vectors = aliases.flatMap((alias): Line[] => {
     const { contribution, standardError, copies } = alias;
     if (contribution === null || standardError === null) return [];
@@ -49,6 +49,11 @@ function linesOf({ explanation }: ExplainedRow): Line[] {
       interval: predicted.interval,
       kind: "predicted",
     });
+  }
+  if (fullCycle !== null && fullCycle.bias !== null) {
+    const { bias: value, states, referenceUncertainty: error } = fullCycle;
+    const side = `all ${formatCount(states)} states`;
+    vectors.push({ label: "full cycle", side, value, error, interval: [value, value], kind: "cycle" });
   }
   if (measured !== null) {
     const { value, standardError: error, interval, replicates } = measured;
@@ -121,6 +126,7 @@ export function aliasChart(row: ExplainedRow): Chart | null {
     },
     points("vector", { shape: "circle", size: 55, color: own }),
     points("predicted", { shape: "square", size: 75, color: own }),
+    points("cycle", { shape: "triangle-up", size: 75, color: own }),
     points("measured", { shape: "diamond", size: 95, color: PAGE.ink.light }),
     rowLabels(data, height, MARGINS.left - 16, null),
     {
@@ -136,13 +142,16 @@ export function aliasChart(row: ExplainedRow): Chart | null {
   ];
   const title = explanationHeadline(row.explanation);
   const confidence = row.explanation.predicted?.confidence ?? row.subject.confidence;
+  const cycle = lines.some(({ kind }) => kind === "cycle")
+    ? "; the triangle is the average over every state, which is exact"
+    : "";
   const says =
     "What each dual vector adds to the bias, largest first, their sum, and the bias that was measured.";
   return {
     name: `aliases-${row.slug}`,
     title,
     says,
-    caption: `A circle is what one vector and its opposite (at all its places along the coordinates) add, its bar two standard errors either way. Below the line the square is the prediction, the diamond the measurement, each with its ${formatPercent(confidence)} interval. They agree where the structure explains the bias.`,
+    caption: `A circle is what one vector and its opposite (at all its places along the coordinates) add, its bar two standard errors either way. Below the line the square is the prediction, the diamond the measurement, each with its ${formatPercent(confidence)} interval${cycle}. They agree where the structure explains the bias.`,
     alt: `${row.subject.title}, ${row.row.label}: what ${vectors} dual vectors add to the bias. ${title}`,
     notDrawn: [],
     table: {

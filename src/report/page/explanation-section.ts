@@ -7,9 +7,10 @@ import {
   planesText,
   vectorText,
 } from "../../findings/explanation-words.js";
+import { resolutionTable, resolutionTitle } from "../../findings/resolution-words.js";
 import type { Chart } from "../charts/chart.js";
 import type { ExplainedRow, Row, Subject } from "../view.js";
-import { figure } from "./figure.js";
+import { dataTable, figure } from "./figure.js";
 import { type Markup, html } from "./html.js";
 import { sourceName, tied } from "./parts.js";
 
@@ -17,7 +18,7 @@ import { sourceName, tied } from "./parts.js";
 export async function explanationBlock(row: ExplainedRow, charts: readonly Chart[]): Promise<Markup> {
   const figures: Markup[] = [];
   for (const chart of charts) figures.push(await figure(chart));
-  const { structure } = row.explanation;
+  const { structure, resolution } = row.explanation;
   return html`<div class="why" id="why-${row.slug}">
     <h4>Why ${sourceName(row.row.view, row.row.label)} errs here</h4>
     <p>${tied(explanationHeadline(row.explanation))}</p>
@@ -32,7 +33,18 @@ export async function explanationBlock(row: ExplainedRow, charts: readonly Chart
       </p>`
     }
     ${figures}
+    ${
+      resolution !== null &&
+      html`<details>
+        <summary>${tied(sentence(resolutionTitle(resolution)))}</summary>
+        ${dataTable(resolutionTable(resolution))}
+      </details>`
+    }
   </div>`;
+}
+
+function sentence(text: string): string {
+  return text.charAt(0).toUpperCase() + text.slice(1);
 }
 
 /** A link to the block, for a verdict that structure explains; null where there is none. */

@@ -1,29 +1,29 @@
-/** What output bits cost an integrand, as a terminal shows it. */
-import { formatPercent, formatValue } from "../findings/format.js";
+/** What output bits cost an integrand, in words and as a table of texts. */
 import type { ResolutionCost, ResolutionLadder } from "../record/resolution.js";
-import { textTable, type TextColumn } from "./text-table.js";
+import { formatPercent, formatValue } from "./format.js";
 
-const COLUMNS: readonly TextColumn[] = [
+const COLUMNS = [
   { title: "bits", align: "right" },
   { title: "bias", align: "right" },
   { title: "interval", align: "left" },
   { title: "in the outermost cells", align: "right" },
   { title: "out of reach", align: "right" },
-];
+] as const;
 
-/** One line for each number of bits, the source's own marked. */
-export function resolutionLines({ own, costs }: ResolutionLadder): string[] {
+/** What the table shows. */
+export function resolutionTitle({ costs }: ResolutionLadder): string {
   const [first] = costs;
-  if (first === undefined) return [];
-  const which = first.endpoint === "middle" ? "the middles" : "the left ends";
-  const level = formatPercent(first.confidence);
-  return [
-    `what bits cost: the bias of ${which} of cells of width 2^\u2212bits, ${level} intervals (◂ its own)`,
-    ...textTable(
-      COLUMNS,
-      costs.map((cost) => row(cost, own)),
-    ),
-  ];
+  const which = first?.endpoint === "left" ? "the left ends" : "the middles";
+  const level = formatPercent(first?.confidence ?? 0);
+  return `what bits cost: the bias of ${which} of cells of width 2^\u2212bits, ${level} intervals (◂ its own)`;
+}
+
+/** One row for each number of bits, the source's own marked. */
+export function resolutionTable({ own, costs }: ResolutionLadder): {
+  readonly columns: readonly { readonly title: string; readonly align: "left" | "right" }[];
+  readonly rows: readonly string[][];
+} {
+  return { columns: COLUMNS, rows: costs.map((cost) => row(cost, own)) };
 }
 
 function row(cost: ResolutionCost, own: number): string[] {

@@ -36,9 +36,12 @@ export function rankOne(n: number, z: readonly number[]): RankOne {
   return { n, z };
 }
 
-/** Whether P_alpha of this lattice takes a second or so at most. */
-export function pAlphaFeasible({ n, z }: RankOne): boolean {
-  return n * z.length <= LARGEST_WORK;
+/** Up to this dimension P_2, at most (1 + pi^2 / 3)^d, is a double with room for the splitting of products. */
+const LARGEST_DIMENSION = 470;
+
+/** In how many dimensions P_alpha of n points takes a second or so at most, and stays a double. */
+export function pAlphaDimensions(n: number): number {
+  return Math.min(LARGEST_DIMENSION, Math.floor(LARGEST_WORK / n));
 }
 
 /**

@@ -1,8 +1,15 @@
 /** What inspections say of nets, lattices, Halton's sequence and discrepancies: keys, texts, limits and bad input. */
+import { mkdtempSync, rmSync, writeFileSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
 import { describe, expect, it } from "vitest";
 import { parseSource } from "../../src/sources/choice.js";
+import { findSource } from "../../src/sources/registry.js";
 import type { InspectionRequest } from "../../src/structure/contract.js";
+import { discrepancies } from "../../src/structure/discrepancy.js";
 import { inspectionJson, inspectSource } from "../../src/structure/inspection.js";
+import { isDigitalNet, netOfSource } from "../../src/structure/net.js";
+import { pointSet } from "../../src/structure/points.js";
 
 const usual: InspectionRequest = {
   dimensions: [2, 3, 5],
@@ -117,6 +124,18 @@ describe("lattices", () => {
     expect(found.findings.latticeQuality?.latticeQuality?.[0]?.points).toBe(1024);
   });
 
+  it("in a thousand coordinates, where the dual lattice and P stop", async () => {
+    const found = await inspect("lattice", { dimensions: [470, 1000], points: 256 });
+    const [less, more] = found.findings.latticeQuality?.latticeQuality ?? [];
+    expect(Number.isFinite(less?.P2)).toBe(true);
+    expect([more?.P2, more?.zaremba]).toEqual([null, 1]);
+    expect(textOf(found)).toContain("beyond 470 coordinates");
+    expect(textOf(found)).toContain("Dual lattices are computed in up to 48 dimensions.");
+    expect(
+      JSON.stringify(found.json, (_, v: unknown) => (typeof v === "bigint" ? String(v) : v)),
+    ).not.toContain("NaN");
+  });
+
   it("says what is not computed at 2^31 points", async () => {
     const found = await inspect(
       { name: "large", lattice: { vector: [1, 1664525] } },
@@ -205,8 +224,71 @@ describe("discrepancies", () => {
     await expect(inspect(id, { discrepancy, ...request })).rejects.toThrow(message);
   });
 
+  it("of a user's own draws, from a file", async () => {
+    const folder = mkdtempSync(join(tmpdir(), "tolerand-"));
+    const draws = Float64Array.from({ length: 200 }, (_, i) => (i * 0.6180339887) % 1);
+    writeFileSync(join(folder, "draws.bin"), new Uint8Array(draws.buffer));
+    const source = { name: "golden", draws: { file: join(folder, "draws.bin"), format: "f64le" } };
+    const found = await inspect(source, { discrepancy, points: 50, dimensions: [2] });
+    const rows = Array.from({ length: 50 }, (_, i) => [draws[2 * i] ?? NaN, draws[2 * i + 1] ?? NaN]);
+    const expected = discrepancies(pointSet(rows), ["mixture"])[0]?.root ?? NaN;
+    expect(found.findings.discrepancy?.discrepancy?.byDimension[0]?.mixture.root).toBeCloseTo(expected, 12);
+    rmSync(folder, { recursive: true });
+  });
+
   it("of a program's draws only with leave", async () => {
     const source = { name: "pr", draws: { program: ["./draws"], format: "u64le" } };
     await expect(inspect(source, { discrepancy })).rejects.toThrow("--allow-programs");
   });
+});
+
+describe("order of interlaced nets", () => {
+  /** The least sum over coordinates of the places of the `order` leading digits of k, over the dual: t of that order by definition. */
+  function byTryingAll(order: number, dimension: number, digits: number): number {
+    const source = findSource(`interlaced-${order}`);
+    if (source === undefined || !isDigitalNet(source)) throw new Error("no interlaced net");
+    const { matrices } = netOfSource(source, dimension, 2 ** digits);
+    const rows = matrices.map((matrix) =>
+      Array.from({ length: order * digits }, (_, r) =>
+        Array.from({ length: digits }, (_, c) => matrix.get(r, c) << c).reduce((word, bit) => word | bit, 0),
+      ),
+    );
+    let least = order * digits + 1;
+    const visit = (j: number, sum: number, weight: number): void => {
+      if (weight >= least) return;
+      if (j === dimension) {
+        if (sum === 0 && weight > 0) least = weight;
+        return;
+      }
+      for (let k = 0; k < 2 ** (order * digits); k++) {
+        let [word, places, taken] = [sum, 0, 0];
+        for (let r = order * digits - 1; r >= 0; r--) {
+          if (((k >>> r) & 1) === 0) continue;
+          word ^= rows[j]?.[r] ?? 0;
+          if (taken++ < order) places += r + 1;
+        }
+        visit(j + 1, word, weight + places);
+      }
+    };
+    visit(0, 0, 0);
+    return order * digits - least + 1;
+  }
+
+  it.each([
+    [2, 1, 4],
+    [2, 2, 4],
+    [2, 2, 5],
+    [3, 1, 4],
+    [3, 2, 3],
+  ])(
+    "%i in %i dimensions, 2^%i points: within the bound that is given (Dick 2008)",
+    async (order, dimension, digits) => {
+      const { findings } = await inspect(`interlaced-${order}`, {
+        dimensions: [Math.max(2, dimension)],
+        points: 2 ** digits,
+      });
+      const bound = findings.net?.netInterlaced?.[0]?.higherOrderAtMost ?? NaN;
+      expect(byTryingAll(order, dimension, digits)).toBeLessThanOrEqual(bound);
+    },
+  );
 });

@@ -15,7 +15,13 @@ import {
   type DualFigures,
   type Steps,
 } from "../dual-lattice.js";
-import { hasLattice, latticeStructure, whyNoLattice, type LatticeStructure } from "../lattice-structure.js";
+import {
+  hasLattice,
+  isRankOne,
+  latticeStructure,
+  whyNoLattice,
+  type LatticeStructure,
+} from "../lattice-structure.js";
 import { worstProjections } from "../projections.js";
 import { shiftedHyperplanes } from "../shifted-hyperplanes.js";
 import type { Tuples } from "../tuples.js";
@@ -103,15 +109,20 @@ function inspectDual(choice: SourceChoice, request: InspectionRequest): DualData
     projectionSpan: request.span,
     worstProjections:
       order > 1 ? [] : worstProjections(tuples, { ...PROJECTIONS, span: request.span }).map(withGap),
-    latticeNotes: structure.notes,
+    latticeNotes: [
+      ...structure.notes,
+      ...(request.dimensionsGiven && request.dimensions.some((d) => d > LARGEST_DUAL_DIMENSION)
+        ? [`Dual lattices are computed in up to ${LARGEST_DUAL_DIMENSION} dimensions.`]
+        : []),
+    ],
   };
 }
 
-/** The dimensions asked for, as far as the source has them. */
+/** The dimensions asked for, as far as the source has them; more are for the other figures of a rank-1 lattice. */
 function dimensionsOf({ id, source }: SourceChoice, request: InspectionRequest): number[] {
   const largest = Math.min(source.largestDimension, LARGEST_DUAL_DIMENSION);
   const beyond = request.dimensions.find((dimension) => dimension > largest);
-  if (beyond !== undefined && request.dimensionsGiven) {
+  if (beyond !== undefined && request.dimensionsGiven && !isRankOne(source)) {
     throw new RangeError(
       `dimensions: expected whole numbers from 2 to ${largest} for the dual lattice of "${id}", found ${beyond}`,
     );

@@ -5,7 +5,7 @@ import type { InspectionRequest, Part, Section } from "../contract.js";
 import {
   LARGEST_LATTICE,
   pAlpha,
-  pAlphaFeasible,
+  pAlphaDimensions,
   rankOne,
   worstLatticePairs,
   zarembaIndex,
@@ -16,7 +16,7 @@ import { dimensionsFor } from "./dimensions.js";
 import { setText, vectorText } from "./text.js";
 
 interface LatticeFigures {
-  /** Null where n times the dimension is too large. */
+  /** Null where n times the dimension is too large, or P is. */
   readonly P2: number | null;
   readonly P4: number | null;
   readonly P6: number | null;
@@ -63,7 +63,8 @@ function inspectLattice(
   const reach = Math.max(dimensions.at(-1) ?? 1, 1 + Math.max(0, ...(indices ?? [])));
   const vector = source.generatingVector(n, reach).map(Number);
   const longest = rankOne(n, vector.slice(0, dimensions.at(-1)));
-  const P = pAlphaFeasible(longest) ? pAlpha(longest) : [];
+  const feasible = pAlphaDimensions(n);
+  const P = pAlpha(rankOne(n, longest.z.slice(0, feasible)));
   const indexed =
     indices === null
       ? null
@@ -83,7 +84,7 @@ function inspectLattice(
         ? null
         : {
             indices,
-            ...((pAlphaFeasible(indexed) ? pAlpha(indexed).at(-1) : undefined) ?? NONE),
+            ...((indices.length <= feasible ? pAlpha(indexed).at(-1) : undefined) ?? NONE),
             ...zarembaOf(indexed),
           },
     latticeWorstPairs: worstLatticePairs(longest, WORST).map((pair) => {
@@ -91,7 +92,7 @@ function inspectLattice(
         n,
         pair.indices.map((index) => vector[index] ?? 0),
       );
-      return { ...pair, P2: pAlphaFeasible(two) ? (pAlpha(two, true).at(-1)?.P2 ?? null) : null };
+      return { ...pair, P2: feasible >= 2 ? (pAlpha(two, true).at(-1)?.P2 ?? null) : null };
     }),
   };
 }
@@ -130,7 +131,11 @@ function showLattice(data: LatticeQualityData): Part[] {
     },
     notes: [
       "P: error for the worst periodic function with Fourier coefficients up to Π max(1, |h|)^−2, −4, −6; grows with the dimension. ρ: least Π max(1, |h|) of a dual vector (Zaremba's index); in many dimensions vectors of zeros and ones make it 1.",
-      ...(missing ? ["P is left out where points times coordinates exceed 2^25; take fewer."] : []),
+      ...(missing
+        ? [
+            "P is left out where points times coordinates exceed 2^25, and beyond 470 coordinates, where it is no longer a double.",
+          ]
+        : []),
       ...(entries.some(({ zarembaComplete }) => !zarembaComplete)
         ? ["≤: the enumeration reached its bound."]
         : []),

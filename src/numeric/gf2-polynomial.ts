@@ -63,10 +63,15 @@ export function berlekampMassey(bits: readonly (0 | 1)[]): bigint {
   return reversed(connection, length);
 }
 
+/** Whether an odd number of bits are set; halves are folded onto each other, which keeps that. */
 function parity(word: bigint): boolean {
-  let ones = 0;
-  for (const digit of word.toString(2)) if (digit === "1") ones++;
-  return ones % 2 === 1;
+  let rest = word;
+  let size = 32;
+  while (rest >> BigInt(size) > 0n) size *= 2;
+  for (; size >= 32; size /= 2) rest = BigInt.asUintN(size, rest) ^ (rest >> BigInt(size));
+  let low = Number(rest);
+  for (let by = 16; by > 0; by >>= 1) low ^= low >>> by;
+  return (low & 1) === 1;
 }
 
 /** x^length p(1/x). */

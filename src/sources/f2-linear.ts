@@ -26,6 +26,8 @@ export interface F2Linear {
   readonly least?: readonly bigint[];
   readonly step: LinearStep;
   readonly output: (state: State) => bigint;
+  /** What an output is linear in, see `BinaryLinear`; for a bijection, of which word. */
+  readonly linear: "outputs" | "state" | ((state: State) => bigint);
   /** Whether an output is made of the state before its step or after it. */
   readonly outputFrom: "before" | "after";
   readonly zeroless?: boolean;
@@ -45,6 +47,7 @@ export function f2Linear(generator: F2Linear): Recurrence {
     nonZero(state) && ranges.every((range, k) => (state[k] ?? -1n) >= range.least);
   const example = ranges.map((range, k) => range.least + BigInt(k + 1)).join(",");
   const limits = least === undefined ? "not all 0" : `at least ${least.join(", ")}`;
+  const linearWord = generator.linear === "outputs" ? output : ([first = 0n]: State): bigint => first;
   let polynomial: bigint | undefined;
   return {
     about,
@@ -63,6 +66,16 @@ export function f2Linear(generator: F2Linear): Recurrence {
         allowed: `${COUNTS[words - 1] ?? words} below 2^${wordBits}, ${limits}, like "${example}",`,
         valid: nonZero,
       }),
+    binary: {
+      stateBits: degree,
+      of: typeof generator.linear === "function" ? "bijection" : generator.linear,
+      wordBits,
+      *words(start) {
+        const word = typeof generator.linear === "function" ? generator.linear : linearWord;
+        // one step in, the state is inside the recurrence
+        for (let state = step(start); ; state = step(state)) yield word(state);
+      },
+    },
     kernel: (exports) => generator.kernel(exports),
     *integers(start) {
       for (let state = start; ;) {

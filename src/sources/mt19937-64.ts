@@ -79,16 +79,19 @@ export const mt19937x64 = pseudoRandom({
   output: { modulus: SIZE, bytes: 8, zeroless: false, integers: 1 },
   stateFromKey: (key) => pack(fromArray(key.words64(KEY_WORDS))),
   stateFromText: (text) => pack(seeded(text)),
+  binary: { stateBits: 19937, of: "outputs", wordBits: 64, words: integers },
   kernel: (exports) => exports.fillMt19937x64,
-  *integers(state) {
-    const words = state.slice(0, N);
-    for (let index = Number(state[N] ?? 0n); ; index++) {
-      const i = index % N;
-      if (i === 0) twist(words);
-      yield temper(words[i] ?? 0n);
-    }
-  },
+  integers,
 });
+
+function* integers(state: State): Generator<bigint, never> {
+  const words = state.slice(0, N);
+  for (let index = Number(state[N] ?? 0n); ; index++) {
+    const i = index % N;
+    if (i === 0) twist(words);
+    yield temper(words[i] ?? 0n);
+  }
+}
 
 /** x(i) = x(i + 156) xor (33 upper bits of x(i), 31 lower of x(i + 1)) A, all indices mod 312. */
 function twist(words: bigint[]): void {

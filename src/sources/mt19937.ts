@@ -79,16 +79,19 @@ export const mt19937 = pseudoRandom({
   output: { modulus: 1n << 32n, bytes: 4, zeroless: false, integers: 1 },
   stateFromKey: (key) => pack(fromArray(key.words32(KEY_WORDS))),
   stateFromText: (text) => pack(seeded(text)),
+  binary: { stateBits: 19937, of: "outputs", wordBits: 32, words: integers },
   kernel: (exports) => exports.fillMt19937,
-  *integers(state) {
-    const words = new Uint32Array(new BigUint64Array(state.slice(0, N / 2)).buffer);
-    for (let index = Number(state[N / 2] ?? 0n); ; index++) {
-      const i = index % N;
-      if (i === 0) twist(words);
-      yield temper(words[i] ?? 0);
-    }
-  },
+  integers,
 });
+
+function* integers(state: State): Generator<bigint, never> {
+  const words = new Uint32Array(new BigUint64Array(state.slice(0, N / 2)).buffer);
+  for (let index = Number(state[N / 2] ?? 0n); ; index++) {
+    const i = index % N;
+    if (i === 0) twist(words);
+    yield temper(words[i] ?? 0);
+  }
+}
 
 /** x(i) = x(i + 397) xor (upper bit of x(i), lower bits of x(i + 1)) A, all indices mod 624. */
 function twist(words: Uint32Array): void {

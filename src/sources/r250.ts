@@ -47,13 +47,16 @@ export const r250 = pseudoRandom({
     const form = { id: "r250", words: equalWords(1, 1n << 32n), allowed: "a seed below 2^32" };
     return fromSeed(Number(parseWords(text, form)[0] ?? 0n));
   },
+  binary: { stateBits: 32 * N, of: "outputs", wordBits: 32, registers: 32, words: integers },
   kernel: (exports) => exports.fillR250,
-  *integers(state) {
-    const words = new Uint32Array(new BigUint64Array(state.slice(0, N / 2)).buffer);
-    for (let k = Number(state[N / 2] ?? 0n); ; k = (k + 1) % N) {
-      const word = ((words[k] ?? 0) ^ (words[(k + N - LAG) % N] ?? 0)) >>> 0;
-      words[k] = word;
-      yield BigInt(word);
-    }
-  },
+  integers,
 });
+
+function* integers(state: State): Generator<bigint, never> {
+  const words = new Uint32Array(new BigUint64Array(state.slice(0, N / 2)).buffer);
+  for (let k = Number(state[N / 2] ?? 0n); ; k = (k + 1) % N) {
+    const word = ((words[k] ?? 0) ^ (words[(k + N - LAG) % N] ?? 0)) >>> 0;
+    words[k] = word;
+    yield BigInt(word);
+  }
+}

@@ -15,6 +15,22 @@ export type About = Pick<
   "id" | "title" | "citation" | "method" | "outputBits" | "period" | "knownStructure"
 >;
 
+/** A generator as a linear map over GF(2). */
+export interface BinaryLinear {
+  /** Bits of the state that the map moves. */
+  readonly stateBits: number;
+  /**
+   * `outputs`: every bit of an output is linear in the state. `bijection`: an output is a bijection of one such word. `state`:
+   * outputs mix words of the state in other ways.
+   */
+  readonly of: "outputs" | "bijection" | "state";
+  readonly wordBits: number;
+  /** Where bits of a word never meet: how many registers of their own there are, each with its share of the state. */
+  readonly registers?: number;
+  /** Linear words, one for each output: the outputs, the word that they are a bijection of, or a word of the state. */
+  words(state: State): Iterator<bigint, never>;
+}
+
 /** What a generator's file says: how its state comes about and moves on, and which kernel does it fast. */
 export interface Recurrence {
   readonly about: About;
@@ -31,6 +47,8 @@ export interface Recurrence {
   integers(state: State): Iterator<bigint, never>;
   /** The linear recurrence of one output to the next; absent where there is none (modulo a whole number). */
   readonly linear?: LinearRecurrence;
+  /** The linear map over GF(2) behind the generator; absent where there is none. */
+  readonly binary?: BinaryLinear;
   /** The state `words` kernel words later, in O(log words). */
   advance?(state: State, words: bigint): State;
   /**

@@ -20,7 +20,7 @@ function shifting(a: bigint, b: bigint, c: bigint): (state: State) => State {
 function member(
   id: string,
   knownStructure: string | null,
-  { step, output, kernel }: Pick<F2Linear, "step" | "output" | "kernel">,
+  { step, output, linear, kernel }: Pick<F2Linear, "step" | "output" | "linear" | "kernel">,
 ): F2Linear {
   const about = {
     id,
@@ -32,7 +32,7 @@ function member(
     period: (1n << 128n) - 1n,
     knownStructure,
   };
-  return { about, words: 2, wordBits: 64, step, output, outputFrom: "before", kernel };
+  return { about, words: 2, wordBits: 64, step, output, linear, outputFrom: "before", kernel };
 }
 
 export const xoroshiro128Plus = pseudoRandom(
@@ -40,6 +40,7 @@ export const xoroshiro128Plus = pseudoRandom(
     member("xoroshiro128+", "the lowest bits are linear over GF(2)", {
       step: shifting(24n, 16n, 37n),
       output: ([s0 = 0n, s1 = 0n]) => (s0 + s1) & MASK,
+      linear: "state",
       kernel: (exports) => exports.fillXoroshiro128Plus,
     }),
   ),
@@ -50,6 +51,7 @@ export const xoroshiro128PlusPlus = pseudoRandom(
     member("xoroshiro128++", null, {
       step: shifting(49n, 21n, 28n),
       output: ([s0 = 0n, s1 = 0n]) => (rotl64((s0 + s1) & MASK, 17n) + s0) & MASK,
+      linear: "state",
       kernel: (exports) => exports.fillXoroshiro128PlusPlus,
     }),
   ),
@@ -60,6 +62,7 @@ export const xoroshiro128StarStar = pseudoRandom(
     member("xoroshiro128**", null, {
       step: shifting(24n, 16n, 37n),
       output: ([s0 = 0n]) => (rotl64((s0 * 5n) & MASK, 7n) * 9n) & MASK,
+      linear: ([s0 = 0n]) => s0,
       kernel: (exports) => exports.fillXoroshiro128StarStar,
     }),
   ),

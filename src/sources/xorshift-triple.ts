@@ -20,6 +20,7 @@ export function xorshiftTriple(
       shifts.reduce((x, by) => (by > 0 ? x ^ ((x << BigInt(by)) & mask) : x ^ (x >> BigInt(-by))), word),
     ],
     output: ([x = 0n]) => x,
+    linear: "outputs",
     outputFrom: "after",
     kernel: (exports) => (bits === 32 ? exports.fillXorshiftTriple32 : exports.fillXorshiftTriple64),
   });

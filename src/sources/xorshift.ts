@@ -34,6 +34,7 @@ export const xorshift32 = pseudoRandom(
       return [b ^ ((b << 5n) & MASK32)];
     },
     output: ([x = 0n]) => x,
+    linear: "outputs",
     outputFrom: "after",
     kernel: (exports) => exports.fillXorshift32,
   }),
@@ -59,6 +60,7 @@ export const xorshift64Star = pseudoRandom(
       return [b ^ (b >> 27n)];
     },
     output: ([x = 0n]) => (x * 2685821657736338717n) & MASK64,
+    linear: ([x = 0n]) => x,
     outputFrom: "after",
     kernel: (exports) => exports.fillXorshift64Star,
   }),
@@ -82,6 +84,7 @@ export const xorshift128 = pseudoRandom(
       return [y, z, w, w ^ (w >> 19n) ^ t ^ (t >> 8n)];
     },
     output: ([, , , w = 0n]) => w,
+    linear: "outputs",
     outputFrom: "after",
     kernel: (exports) => exports.fillXorshift128,
   }),

@@ -17,7 +17,7 @@ function step([s0 = 0n, s1 = 0n, s2 = 0n, s3 = 0n]: State): State {
 function member(
   id: string,
   knownStructure: string | null,
-  { output, kernel }: Pick<F2Linear, "output" | "kernel">,
+  { output, linear, kernel }: Pick<F2Linear, "output" | "linear" | "kernel">,
 ): F2Linear {
   const about = {
     id,
@@ -29,13 +29,14 @@ function member(
     period: (1n << 256n) - 1n,
     knownStructure,
   };
-  return { about, words: 4, wordBits: 64, step, output, outputFrom: "before", kernel };
+  return { about, words: 4, wordBits: 64, step, output, linear, outputFrom: "before", kernel };
 }
 
 export const xoshiro256Plus = pseudoRandom(
   f2Linear(
     member("xoshiro256+", "the lowest bits are linear over GF(2)", {
       output: ([s0 = 0n, , , s3 = 0n]) => (s0 + s3) & MASK,
+      linear: "state",
       kernel: (exports) => exports.fillXoshiro256Plus,
     }),
   ),
@@ -45,6 +46,7 @@ export const xoshiro256PlusPlus = pseudoRandom(
   f2Linear(
     member("xoshiro256++", null, {
       output: ([s0 = 0n, , , s3 = 0n]) => (rotl64((s0 + s3) & MASK, 23n) + s0) & MASK,
+      linear: "state",
       kernel: (exports) => exports.fillXoshiro256PlusPlus,
     }),
   ),
@@ -54,6 +56,7 @@ export const xoshiro256StarStar = pseudoRandom(
   f2Linear(
     member("xoshiro256**", null, {
       output: ([, s1 = 0n]) => (rotl64((s1 * 5n) & MASK, 7n) * 9n) & MASK,
+      linear: ([, s1 = 0n]) => s1,
       kernel: (exports) => exports.fillXoshiro256StarStar,
     }),
   ),

@@ -3,6 +3,7 @@ import type { SourceChoice } from "../sources/choice.js";
 import type { InspectionRequest, Part, Section } from "./contract.js";
 import { discrepancySection } from "./sections/discrepancy.js";
 import { dualSection } from "./sections/dual.js";
+import { equidistributionSection } from "./sections/equidistribution.js";
 import { haltonSection } from "./sections/halton.js";
 import { latticeQualitySection } from "./sections/lattice-quality.js";
 import { netSection } from "./sections/net.js";
@@ -12,6 +13,7 @@ import { periodSection } from "./sections/period.js";
 const SECTIONS = {
   period: periodSection,
   dual: dualSection,
+  equidistribution: equidistributionSection,
   latticeQuality: latticeQualitySection,
   net: netSection,
   halton: haltonSection,

@@ -3,11 +3,14 @@
  * planned study would use.
  */
 import type { SourceChoice } from "../../sources/choice.js";
+import { Key } from "../../sources/key.js";
 import { periodText } from "../../sources/period-text.js";
 import { isPseudoRandom, type PseudoRandomSource } from "../../sources/pseudo-random.js";
+import type { BinaryLinear, State } from "../../sources/recurrence.js";
 import { UnfinishedFactorisation } from "../../numeric/factor.js";
 import type { InspectionRequest, Part, Section } from "../contract.js";
 import { recurrenceInUse } from "../lattice-structure.js";
+import { binaryPeriod } from "../binary-period.js";
 import { FACTOR_STEPS, periodOf, usageOf, type Reason } from "../period.js";
 import { recurrencePeriod } from "../recurrence-period.js";
 
@@ -44,6 +47,12 @@ type Facts = Omit<PeriodData, "periodUse">;
 /** Numbers above it are not factorised: the equivalent modulus of subtract-with-borrow has some 576 bits. */
 const LARGEST_FACTORISED = 1n << 130n;
 
+/** States of up to so many bits are looked at: 2^128 - 1 has only factors that are found at once. */
+const LARGEST_BINARY = 128;
+
+/** The recurrence is the same from every state. */
+const ANY_KEY = new Key("period");
+
 export const periodSection: Section<PeriodData> = {
   applies: ({ source }) => isPseudoRandom(source),
   otherwise: ({ id, source }) =>
@@ -63,6 +72,10 @@ function factsOf(source: PseudoRandomSource, state: string | null): Facts {
   const { recurrence } = source;
   const start = state === null ? null : recurrence.stateFromText(state);
   const linear = recurrenceInUse(source);
+  const { binary } = recurrence;
+  if (binary !== undefined && binary.stateBits <= LARGEST_BINARY) {
+    return binaryFacts(source, binary, recurrence.stateFromKey(ANY_KEY), state);
+  }
   if (linear === null || linear.modulus > LARGEST_FACTORISED) return published(source, state);
   const [a = 0n, ...more] = linear.multipliers;
   // a combined generator has a state of several words, the one recurrence of order 1 that is equivalent to it only one
@@ -104,6 +117,33 @@ function factsOf(source: PseudoRandomSource, state: string | null): Facts {
     const facts = published(source, state);
     return facts.period === null ? { ...facts, periodMissing: `not found: ${error.message}` } : facts;
   }
+}
+
+function binaryFacts(
+  source: PseudoRandomSource,
+  binary: BinaryLinear,
+  from: State,
+  state: string | null,
+): Facts {
+  const facts = published(source, state);
+  const { stateBits } = binary;
+  const stream = binary.words(from);
+  const outputs = Array.from({ length: 2 * stateBits }, () => stream.next().value);
+  const { period, reasons } = binaryPeriod(outputs, stateBits, FACTOR_STEPS);
+  if (period !== null) {
+    return {
+      ...facts,
+      period,
+      periodBasis: "computed",
+      periodStates: "every state but 0",
+      periodReasons: reasons,
+      periodMissing: null,
+    };
+  }
+  // a product of primitive polynomials, as combined registers have, is not primitive itself
+  if (facts.period !== null) return facts;
+  const missing = "the longest period is not reached: cycles differ from state to state";
+  return { ...facts, periodReasons: reasons, periodMissing: missing };
 }
 
 /** What the source's definition says. */

@@ -93,7 +93,9 @@ describe.each(Object.entries(sets))("discrepancies of %s, qmc.json", (name, set)
     expect((star?.root ?? NaN) / set["scipy_L2-star"]).toBeCloseTo(1, 9);
   });
 
-  it.runIf(set.star_discrepancy !== undefined)("star discrepancy", () => {
+  if (set.star_discrepancy === undefined) return;
+
+  it("star discrepancy", () => {
     expect(starDiscrepancy(points)).toBeCloseTo(Number(set.star_discrepancy), 14);
   });
 });

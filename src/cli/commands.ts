@@ -63,6 +63,7 @@ export const commands: readonly Command[] = [
       replicates: studySettings.replicates,
       "full-cycle": flag("average over every state of the source as well (at most 2^32 of them)"),
       threads,
+      "allow-programs": allowPrograms,
       seed,
       out: text("folder for a report (default: none is written)"),
       json,

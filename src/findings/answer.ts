@@ -53,7 +53,7 @@ function becauseOf(explanation: Explanation | undefined): string {
   const alias = explanation?.explained === true ? explanation.aliases[0] : undefined;
   return alias === undefined
     ? ""
-    : ` (its points lie on the planes of ${vectorText(alias)}: ${planesText(alias)})`;
+    : ` (${alias.walsh === null ? "its points lie on the planes of " : ""}${vectorText(alias)}: ${planesText(alias)})`;
 }
 
 /** The sentence for one problem and output of `record`. */

@@ -1,20 +1,30 @@
 /** An explanation in words: the vector at fault, what it predicts, how that compares with what was measured. */
-import type { Alias, Estimated, Explanation, PredictedBias } from "../record/explanation.js";
+import type {
+  Alias,
+  Estimated,
+  ExplainedStructure,
+  Explanation,
+  PredictedBias,
+} from "../record/explanation.js";
 import { formatCount, formatInterval, formatPercent, formatValue } from "./format.js";
 
 const SUBSCRIPTS = "₀₁₂₃₄₅₆₇₈₉";
 
-/** "9 u₁ − 6 u₂ + u₃"; coordinates are counted from 1. */
-export function vectorText({ indices, entries }: Pick<Alias, "indices" | "entries">): string {
+/** "9 u₁ − 6 u₂ + u₃", or "wal(5 in x₁, 3 in x₂)" for a Walsh function; coordinates are counted from 1. */
+export function vectorText({
+  indices,
+  entries,
+  walsh,
+}: Pick<Alias, "indices" | "entries" | "walsh">): string {
+  const subscript = (k: number): string =>
+    String((indices[k] ?? 0) + 1).replace(/\d/g, (digit) => SUBSCRIPTS[Number(digit)] ?? digit);
+  if (walsh !== null)
+    return `wal(${entries.map((entry, k) => `${formatCount(entry)} in x${subscript(k)}`).join(", ")})`;
   return entries
     .map((entry, k) => {
       const size = Math.abs(entry);
       const sign = k === 0 ? (entry < 0 ? "\u2212" : "") : entry < 0 ? " \u2212 " : " + ";
-      const index = String((indices[k] ?? 0) + 1).replace(
-        /\d/g,
-        (digit) => SUBSCRIPTS[Number(digit)] ?? digit,
-      );
-      return `${sign}${size === 1 ? "" : `${formatCount(size)}\u00a0`}u${index}`;
+      return `${sign}${size === 1 ? "" : `${formatCount(size)}\u00a0`}u${subscript(k)}`;
     })
     .join("");
 }
@@ -29,8 +39,9 @@ export function modulusText(digits: string): string {
   return digits.replace(/\B(?=(\d{3})+(?!\d))/g, ",");
 }
 
-/** "15 planes, gap 0.092". */
-export function planesText({ planes, gap, size }: Alias): string {
+/** "15 planes, gap 0.092"; of a Walsh function that it is constant. */
+export function planesText({ planes, gap, size, walsh }: Alias): string {
+  if (planes === null || gap === null) return `constant on all points, base ${walsh ?? 2}`;
   const share = size > 1 - 1e-9 ? "" : `, seen by ${formatPercent(Number(size.toPrecision(3)))}`;
   return `${formatCount(planes)} planes, gap ${formatValue(gap)}${share}`;
 }
@@ -44,7 +55,10 @@ export function copiesText({ copies }: Alias): string {
 export function hazardText({ aliases, structure }: Explanation): string | null {
   const [alias] = aliases;
   if (alias === undefined || structure === null) return null;
-  const exact = `all its points lie on the ${formatCount(alias.planes)} planes ${vectorText(alias)} = ${phaseText(alias)}, ${formatValue(alias.gap)} apart`;
+  const { planes, gap } = alias;
+  if (planes === null || gap === null)
+    return `the Walsh function ${vectorText(alias)} is 1 on all its points; an integrand with a part like it would be off by that part`;
+  const exact = `all its points lie on the ${formatCount(planes)} planes ${vectorText(alias)} = ${phaseText(alias)}, ${formatValue(gap)} apart`;
   return `${exact}; an integrand that varies from plane to plane would be off, whatever the number of points`;
 }
 
@@ -97,9 +111,20 @@ function unexplained({ predicted, measured, difference }: Explanation): string {
   return `Not explained in full: measured and predicted bias differ by ${formatValue(difference.value)} (${formatInterval(difference.interval)})${part}.`;
 }
 
+function counted(n: number, one: string): string {
+  return `${formatCount(n)} ${n === 1 ? one : `${one}s`}`;
+}
+
 function tailWord({ stable, tail }: PredictedBias): string {
   if (stable) return "stable";
   return hidden(tail) ? "lost in noise" : "not stable";
+}
+
+/** Which points an estimate averages over, or is made of. */
+export function structureText({ kind, modulus, what }: ExplainedStructure): string {
+  return kind === "net"
+    ? `points: ${what}`
+    : `lattice of its tuples: modulus ${modulusText(modulus)}, ${what}`;
 }
 
 /** Whether an interval holds 0. */
@@ -122,12 +147,13 @@ export function explanationLines(explanation: Explanation): string[] {
   }
   if (predicted !== null) {
     const { value, interval, standardError, pairs, source, points, replicates, tail } = predicted;
-    const sum = `${formatCount(pairs)} ${pairs === 1 ? "pair" : "pairs"} of dual vectors`;
+    const net = explanation.structure?.kind === "net";
+    const sum = net ? counted(pairs, "Walsh function") : `${counted(pairs, "pair")} of dual vectors`;
     lines.push(
       `predicted bias ${formatValue(value, standardError)} (${level}${formatInterval(interval)}) from ${sum}, ` +
         `estimated with ${replicates} \u00d7 ${formatCount(points)} points of ${source}`,
       `unresolved tail ${formatValue(tail.value, (tail.interval[1] - tail.interval[0]) / 4)} ` +
-        `(${level}${formatInterval(tail.interval)}) from as many pairs again: ${tailWord(predicted)}`,
+        `(${level}${formatInterval(tail.interval)}) from as many again: ${tailWord(predicted)}`,
     );
   }
   if (fullCycle !== null && fullCycle.bias !== null)

@@ -5,13 +5,14 @@ import { name, number, orNull, real, reals, text, whole } from "./schema-parts.j
 const estimated = { value: real, interval: z.tuple([real, real]) };
 
 const alias = z.strictObject({
+  walsh: orNull(z.int().min(2)),
   indices: z.array(whole),
   entries: z.array(z.number()),
   copies: z.int().min(1),
   size: real,
   phase: real,
-  planes: whole,
-  gap: real,
+  planes: orNull(whole),
+  gap: number,
   contribution: number,
   standardError: number,
 });
@@ -48,7 +49,7 @@ export const explanation = z
     output: name,
     structure: orNull(
       z.strictObject({
-        kind: z.enum(["full", "seed-averaged", "rank-1"]),
+        kind: z.enum(["full", "seed-averaged", "rank-1", "net"]),
         modulus: z.string().regex(/^[0-9]{1,1000}$/, "expected decimal digits"),
         what: text,
       }),

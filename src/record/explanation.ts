@@ -8,20 +8,23 @@ export interface Estimated {
   readonly interval: readonly [number, number];
 }
 
-/** The point set whose dual vectors carry a bias. */
+/** The point set whose dual vectors carry a bias (of an unrandomised lattice or net: the error of its n points). */
 export interface ExplainedStructure {
-  /** Of a congruential or recursive generator: the full modulus or the seed-averaged one; or a rank-1 lattice. */
-  readonly kind: "full" | "seed-averaged" | "rank-1";
-  /** Of the dual lattice; decimal digits. */
+  /** Of a congruential or recursive generator: the full modulus or the seed-averaged one; a rank-1 lattice; a digital net. */
+  readonly kind: "full" | "seed-averaged" | "rank-1" | "net";
+  /** Of the dual lattice, decimal digits; of a net its number of points. */
   readonly modulus: string;
   /** Which points these are, in words. */
   readonly what: string;
 }
 
 /**
- * A dual vector, with all its copies along the coordinates: h.u takes few values on the points, so they lie on few planes.
+ * A dual vector, with all its copies along the coordinates: h.u takes few values on the points, so they lie on few planes. Of a
+ * net: the index k of a Walsh function that is 1 on all points.
  */
 export interface Alias {
+  /** The base of the Walsh function; null for the plane wave of a lattice. */
+  readonly walsh: number | null;
   /** Coordinates (0-based) of the entries, for the copy that contributes most. */
   readonly indices: readonly number[];
   readonly entries: readonly number[];
@@ -30,10 +33,10 @@ export interface Alias {
   /** Size of the mean of e^(2 pi i h.u) over the points (1: all points lie on the planes), and its phase in turns. */
   readonly size: number;
   readonly phase: number;
-  /** Planes h.u = phase + whole number that meet the unit cube. */
-  readonly planes: number;
-  /** Distance of neighbouring planes, 1/|h|. */
-  readonly gap: number;
+  /** Planes h.u = phase + whole number that meet the unit cube; null for a Walsh function. */
+  readonly planes: number | null;
+  /** Distance of neighbouring planes, 1/|h|; null for a Walsh function. */
+  readonly gap: number | null;
   /** What these vectors and their opposites add to the bias, with its standard error; null where it was not estimated. */
   readonly contribution: number | null;
   readonly standardError: number | null;
@@ -43,7 +46,7 @@ export interface Alias {
 export interface PredictedBias extends Estimated {
   readonly standardError: number;
   readonly confidence: number;
-  /** Pairs of dual vectors h, -h that were summed. */
+  /** Pairs of dual vectors h, -h (of a net: Walsh functions) that were summed. */
   readonly pairs: number;
   /** The same with twice as many pairs, and what the second half adds. */
   readonly doubled: Estimated & { readonly pairs: number };

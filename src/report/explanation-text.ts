@@ -3,8 +3,8 @@ import {
   explanationHeadline,
   explanationLines,
   hazardText,
-  modulusText,
   planesText,
+  structureText,
   vectorText,
 } from "../findings/explanation-words.js";
 import { formatCount, formatValue } from "../findings/format.js";
@@ -26,8 +26,7 @@ export function explanationText(title: string, explanations: readonly Explanatio
     const lines = [`${explanation.source} on ${plainText(title)}`, `  ${explanationHeadline(explanation)}`];
     lines.push(...explanationLines(explanation).map((line) => `  ${line}`));
     const { structure, aliases, predicted } = explanation;
-    if (structure !== null)
-      lines.push(`  lattice of its tuples: modulus ${modulusText(structure.modulus)}, ${structure.what}`);
+    if (structure !== null) lines.push(`  ${structureText(structure)}`);
     const hazard = predicted === null ? hazardText(explanation) : null;
     if (hazard !== null) lines.push(`  its structure: ${hazard}`);
     if (predicted !== null) lines.push(...textTable(COLUMNS, aliases.map(row)).map((line) => `    ${line}`));

@@ -76,6 +76,8 @@ export function aliasSetOf(choice: SourceChoice, dimension: number, n: number): 
       };
     return rankOneSet(source, dimension, n);
   }
+  if (!isPseudoRandom(source) && source.family === "own")
+    return { reason: "nothing is known of the structure of its points" };
   if (!isPseudoRandom(source) || source.recurrence.linear === undefined)
     return {
       reason: "it has no lattice structure: its outputs are no linear recurrence modulo a whole number",

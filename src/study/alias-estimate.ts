@@ -6,14 +6,10 @@
  */
 import { parseSource, type SourceChoice } from "../sources/choice.js";
 import { makeKey } from "../sources/key.js";
-import type { SparseVector, Weight } from "../structure/alias-set.js";
 import { Integrator } from "./integrator.js";
 import type { RunnableProblem } from "./runnable.js";
 import { emptyHistograms, tally, Warp } from "./warp.js";
-
-export interface Wave extends Weight {
-  readonly vector: SparseVector;
-}
+import { factorOf, openWaves, type Wave } from "./waves.js";
 
 export interface AliasRequest {
   readonly seed: number;
@@ -91,41 +87,27 @@ export class AliasEstimator {
   }
 
   estimate(waves: readonly Wave[], request: AliasRequest): AliasSums {
-    const { kernels } = this.#integrator;
-    const { exports } = kernels;
-    const mark = kernels.arena.mark();
-    const table = waveTable(waves);
-    const tableAt = kernels.arena.allocate(table.byteLength);
-    const sumsAt = kernels.arena.allocate(Math.max(1, waves.length) * 8);
-    kernels.f64(tableAt, table.length).set(table);
+    const { arena } = this.#integrator.kernels;
+    const mark = arena.mark();
+    const add = openWaves(waves, this.#integrator.kernels);
     const contributions: Float64Array[] = [];
     const means: number[] = [];
     let reach = 0;
     for (let r = request.first; r < request.first + request.replicates; r++) {
-      kernels.f64(sumsAt, waves.length).fill(0);
+      const sums = new Float64Array(waves.length);
       let total = 0;
-      this.#replicate(r, request, (values, weights, count, _rows, stride) => {
+      this.#replicate(r, request, (values, weights, count, rows, stride) => {
         for (let i = 0; i < count; i++) {
           const value = values[i] ?? 0;
           reach = Math.max(reach, Math.abs(value));
           total += values[i] = value * (weights[i] ?? 1);
         }
-        exports.aliasSums(
-          this.#coordinates,
-          stride,
-          count,
-          values.byteOffset,
-          0,
-          tableAt,
-          waves.length,
-          sumsAt,
-        );
+        add(values, rows, stride, count, sums);
       });
-      const sums = kernels.f64(sumsAt, waves.length);
-      contributions.push(sums.map((sum, k) => (2 * (waves[k]?.size ?? 0) * sum) / request.points));
+      contributions.push(sums.map((sum, k) => (factorOf(waves[k] as Wave) * sum) / request.points));
       means.push(request.centre + total / request.points);
     }
-    kernels.arena.release(mark);
+    arena.release(mark);
     return { contributions, means, reach };
   }
 
@@ -176,14 +158,3 @@ type Take = (
   rows: Float64Array,
   stride: number,
 ) => void;
-
-/** Waves as the kernel reads them. */
-function waveTable(waves: readonly Wave[]): Float64Array {
-  return Float64Array.from(
-    waves.flatMap(({ vector: { indices, entries }, phase }) => [
-      phase,
-      indices.length,
-      ...indices.flatMap((index, k) => [index, entries[k] ?? 0]),
-    ]),
-  );
-}

@@ -1,6 +1,6 @@
 /** Dual vectors gathered for reading: copies along the coordinates together, the largest contribution first. */
 import type { SparseVector } from "../structure/alias-set.js";
-import type { Wave } from "./alias-estimate.js";
+import type { Wave } from "./waves.js";
 
 export interface Group {
   /** The copy that contributes most; the first one where nothing was estimated. */

@@ -6,9 +6,10 @@
  */
 import { studentFactor } from "../numeric/student.js";
 import type { Estimated, MeasuredBias, PredictedBias } from "../record/explanation.js";
-import type { AliasEstimator, AliasSums, Wave } from "./alias-estimate.js";
+import type { AliasEstimator, AliasSums } from "./alias-estimate.js";
 import { evaluateAt } from "./evaluate-at.js";
 import type { RunnableProblem } from "./runnable.js";
+import type { Wave } from "./waves.js";
 
 /** Points that K is chosen on. */
 export const PILOT = { replicates: 16, points: 4096 };

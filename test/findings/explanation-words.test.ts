@@ -14,8 +14,16 @@ describe("explanations in words", () => {
   const explained = sampleExplanation("p", "mean", -0.246);
 
   it("name a vector by its coordinates, counted from 1", () => {
-    expect(spaced(vectorText({ indices: [0, 1, 2], entries: [9, -6, 1] }))).toBe("9 u₁ − 6 u₂ + u₃");
-    expect(spaced(vectorText({ indices: [9, 10], entries: [-1, 16807] }))).toBe("−u₁₀ + 16,807 u₁₁");
+    expect(spaced(vectorText({ indices: [0, 1, 2], entries: [9, -6, 1], walsh: null }))).toBe(
+      "9 u₁ − 6 u₂ + u₃",
+    );
+    expect(spaced(vectorText({ indices: [9, 10], entries: [-1, 16807], walsh: null }))).toBe(
+      "−u₁₀ + 16,807 u₁₁",
+    );
+  });
+
+  it("name a Walsh function by its index in each coordinate", () => {
+    expect(vectorText({ indices: [0, 11], entries: [5, 2048], walsh: 2 })).toBe("wal(5 in x₁, 2,048 in x₁₂)");
   });
 
   it("say how much of the bias comes from which planes", () => {
@@ -28,7 +36,7 @@ describe("explanations in words", () => {
     expect(explanationLines(explained)).toEqual([
       "measured bias −0.2460 (standard error 0.0025, 256 replicates of 32,768 points)",
       "predicted bias −0.2435 (99 % interval −0.2499 to −0.2371) from 1 pair of dual vectors, estimated with 32 × 16,384 points of sobol+owen",
-      "unresolved tail 0.0000 (99 % interval −0.0025 to 0.0025) from as many pairs again: stable",
+      "unresolved tail 0.0000 (99 % interval −0.0025 to 0.0025) from as many again: stable",
       "bias over all 536,870,912 states −0.246 (exact average)",
       "measured less predicted −0.0025 (99 % interval −0.0123 to 0.0074): explained",
     ]);

@@ -9,6 +9,7 @@ const base = { structure: { kind: "seed-averaged", modulus: "1073741824", what: 
 /** Of the one generator with planes in the sample: explained where its bias is, known structure elsewhere. */
 export function sampleExplanation(problem: string, output: string, bias: number | null): Explanation {
   const alias = {
+    walsh: null,
     indices: [0, 1, 2],
     entries: [9, -6, 1],
     copies: 1,

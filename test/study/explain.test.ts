@@ -153,3 +153,63 @@ test("a lattice that is too fine to matter is called so", async () => {
   expect(found.predicted).toBeNull();
   expect(found.reason).toContain("too fine to matter");
 });
+
+const identity = (m: number): number[][] =>
+  Array.from({ length: m }, (_, r) => Array.from({ length: m }, (__, c) => (r === c ? 1 : 0)));
+
+test("a net without randomisation: the one error is that of the Walsh functions of its dual", async () => {
+  // two coordinates alike: wal(k, k) is 1 on all points, and the indicator of a quarter has the coefficient 1/4 at (1, 1)
+  const choice = parseSource({ name: "house", matrices: { base: 2, rows: [identity(4), identity(4)] } });
+  const quarter = problem("quarter", "(x[1] > 0.5) * (x[2] > 0.5)", { dimension: 2 });
+  const runnable = await prepared(quarter);
+  const found = explain({
+    ...request,
+    n: 16,
+    problem: runnable,
+    choice,
+    centre: 0.25,
+    measured: exactly(0.25, 16),
+  });
+  expect(found.structure).toMatchObject({ kind: "net", modulus: "16" });
+  expect(found.aliases[0]).toMatchObject({
+    indices: [0, 1],
+    entries: [1, 1],
+    walsh: 2,
+    planes: null,
+    gap: null,
+  });
+  expect(found.predicted?.value).toBeCloseTo(0.25, 3);
+  expect(found.explained).toBe(true);
+  expect(found.comb).toBeNull();
+});
+
+test("a net in base 3", async () => {
+  const choice = parseSource({ name: "house", matrices: { base: 3, rows: [identity(3), identity(3)] } });
+  const ninth = problem("ninth", "(x[1] < 1 / 3) * (x[2] < 1 / 3)", { dimension: 2 });
+  const runnable = await prepared(ninth);
+  // all points are (x, x): 1/3 of them in the square, in place of 1/9
+  const exact = 1 / 3 - 1 / 9;
+  const found = explain({
+    ...request,
+    n: 27,
+    problem: runnable,
+    choice,
+    centre: 1 / 9,
+    measured: exactly(exact, 27),
+  });
+  expect(found.predicted?.value).toBeCloseTo(exact, 3);
+  expect(found.explained).toBe(true);
+});
+
+test("points of a net that are no power of its base", async () => {
+  const runnable = await prepared(problem("flat", "x[1]"));
+  const found = explain({
+    ...request,
+    n: 100,
+    problem: runnable,
+    choice: parseSource("sobol"),
+    centre: 0.5,
+    measured: null,
+  });
+  expect(found.reason).toBe("its first 100 points are no net; take a power of 2 (--points 128)");
+});

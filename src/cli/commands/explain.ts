@@ -12,6 +12,7 @@ import type { StudyRecord } from "../../record/types.js";
 import { threads } from "../../study/executor.js";
 import { startProgress } from "../../study/progress.js";
 import { bitLadder, cellsOf, resolutionCost } from "../../study/resolution.js";
+import { tryPrograms } from "../../study/programs.js";
 import { prepareProblems, type RunnableProblem } from "../../study/runnable.js";
 import { buildSpec } from "../../study/settings.js";
 import { EXIT, type Arguments, type Io } from "../command.js";
@@ -73,8 +74,10 @@ async function explainSources(
   const usable = (spec.sources[alone.problem.id] ?? []).map((one) => parseSource(one).id);
   if (!asked.every((id) => usable.includes(id))) throw new InputError(messages.leftOut(warnings));
   const problems = await prepareProblems(spec.problems);
+  const allowPrograms = booleanFlag(args, "allow-programs");
+  const programNotes = asInput(() => tryPrograms(spec, allowPrograms));
   const count = threadCount(args);
-  const executor = threads(problems, count);
+  const executor = threads(problems, count, { allowPrograms });
   const started = Date.now();
   const measured = await runStudy({
     spec,
@@ -84,7 +87,7 @@ async function explainSources(
     signal: io.signal,
     stage: (title, work) => startProgress(title, work, io.stderr),
     environment: (complete) => environmentOf(io, { threads: count, started, complete }),
-    warnings,
+    warnings: [...warnings, ...programNotes],
     explain: asked,
   }).finally(() => executor.close());
   if (!measured.environment.complete) return EXIT.interrupted;

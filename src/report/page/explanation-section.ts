@@ -3,8 +3,8 @@ import {
   explanationHeadline,
   explanationLines,
   hazardText,
-  modulusText,
   planesText,
+  structureText,
   vectorText,
 } from "../../findings/explanation-words.js";
 import { resolutionTable, resolutionTitle } from "../../findings/resolution-words.js";
@@ -13,6 +13,10 @@ import type { ExplainedRow, Row, Subject } from "../view.js";
 import { dataTable, figure } from "./figure.js";
 import { type Markup, html } from "./html.js";
 import { sourceName, tied } from "./parts.js";
+
+function capital(text: string): string {
+  return `${text.charAt(0).toUpperCase()}${text.slice(1)}`;
+}
 
 /** The block of one explained bias. */
 export async function explanationBlock(row: ExplainedRow, charts: readonly Chart[]): Promise<Markup> {
@@ -28,8 +32,11 @@ export async function explanationBlock(row: ExplainedRow, charts: readonly Chart
     ${
       structure !== null &&
       html`<p class="aside">
-        Lattice of the tuples: modulus ${modulusText(structure.modulus)}, ${structure.what}. An estimate of
-        any number of points, averaged over random starts, is the average over all of these points.
+        ${capital(structureText(structure))}.${
+          structure.kind !== "net" &&
+          structure.kind !== "rank-1" &&
+          " An estimate of any number of points, averaged over random starts, is the average over all of these points."
+        }
       </p>`
     }
     ${figures}

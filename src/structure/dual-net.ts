@@ -71,9 +71,10 @@ export function dualVectors(net: Net, request: DualRequest): DualVectors {
         inserted++;
         lengths[lengths.length - 1] = [j, d];
         if (finished && d === remaining && lost > 0) {
-          const found = solutions(net, lengths);
-          left -= found.length;
-          level.push(...found);
+          const found = solutions(net, lengths, left);
+          left -= found?.length ?? left + 1;
+          finished = found !== null;
+          for (const vector of found ?? []) level.push(vector);
         } else if (finished && d < remaining && parts > 1 && j + 1 < size) {
           finished = visit(j + 1, remaining - d, parts - 1, lost);
         }
@@ -104,11 +105,12 @@ function comesFirst(a: readonly number[], b: readonly number[]): number {
   return a.length - b.length;
 }
 
-/** The dual vectors with exactly these numbers of digits: coordinate and digits of each. */
+/** The dual vectors with exactly these numbers of digits, coordinate and digits of each; null where `most` may not do. */
 function solutions(
   { base, digits, matrices }: Net,
   lengths: readonly (readonly [number, number])[],
-): DualVector[] {
+  most: number,
+): DualVector[] | null {
   // a row of a matrix, then which rows it is made of
   const stack: number[][] = [];
   const kernel: number[][] = [];
@@ -135,6 +137,7 @@ function solutions(
       else kernel.push(row.slice(digits));
     }
   }
+  if (base ** kernel.length > most) return null;
   const found: DualVector[] = [];
   for (let index = 1; index < base ** kernel.length; index++) {
     const combined = new Array<number>(total).fill(0);

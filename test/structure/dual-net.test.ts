@@ -1,9 +1,10 @@
 /** Dual vectors against the definition: the Walsh functions that are 1 on all points, found by trying every one. */
+import { Matrix } from "ml-matrix";
 import { describe, expect, it } from "vitest";
 import { findSource } from "../../src/sources/registry.js";
 import { parseSource } from "../../src/sources/choice.js";
 import { dualVectors } from "../../src/structure/dual-net.js";
-import { isDigitalNet, netOfSource, type Net } from "../../src/structure/net.js";
+import { isDigitalNet, netOf, netOfSource, type Net } from "../../src/structure/net.js";
 import { firstPoints } from "../../src/structure/points.js";
 import { tValue } from "../../src/structure/t-value.js";
 import { walshPhases } from "../../src/structure/walsh.js";
@@ -93,6 +94,12 @@ describe("limits of the search", () => {
     expect(cut.end).toBe("steps");
     const whole = dualVectors(net, { enough: Infinity, weight: cut.completeTo });
     expect(cut.vectors).toEqual(whole.vectors);
+  });
+  it("ends where there are too many vectors, as of matrices of zeros", () => {
+    const zeros = netOf({ base: 127, order: "natural", matrices: [Matrix.zeros(4, 4), Matrix.zeros(4, 4)] });
+    const { vectors, completeTo, end } = dualVectors(zeros, { enough: 1e6 });
+    // 126 in each coordinate of one digit, 126 * 127 of two, and 126^2 in both
+    expect([vectors.length, completeTo, end]).toEqual([2 * 126 + 2 * 126 * 127 + 126 ** 2, 2, "steps"]);
   });
 });
 

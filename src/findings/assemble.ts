@@ -64,7 +64,7 @@ export function confirmedTests(
 
 export function assembleRecord(assembly: Assembly): StudyRecord {
   const { spec, environment, problems, sources, rawCells, consensus, confirmations } = assembly;
-  const context = makeContext(problems, sources, consensus);
+  const context = makeContext(problems, sources, consensus, assembly.explanations);
   const cells = toCells(rawCells, context);
   const series = seriesOf(cells);
   const screened = findCandidates(series, context, spec.falseAlarms);

@@ -5,6 +5,7 @@ import { mean } from "../numeric/sums.js";
 import { normalUpperQuantile } from "../numeric/normal.js";
 import type { Problem } from "../problem/contract.js";
 import { digestOf } from "../record/json.js";
+import type { Explanation } from "../record/explanation.js";
 import type { Cell, RawCell, RecordSource } from "../record/types.js";
 import { logRmse } from "./leave-one-out.js";
 import type { KnownReference } from "./reference.js";
@@ -15,6 +16,8 @@ export interface Context {
   readonly problems: ReadonlyMap<string, Problem>;
   readonly sources: ReadonlyMap<string, RecordSource>;
   readonly references: ReadonlyMap<string, KnownReference>;
+  /** What the structure of sources does to integrands, by the key of a series; empty while tests are still being made. */
+  readonly explanations: ReadonlyMap<string, Explanation>;
 }
 
 /** Sample kurtosis of the errors above which a cell is called heavy-tailed (3 for normal errors). */

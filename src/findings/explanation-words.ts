@@ -58,7 +58,8 @@ export function hazardText({ aliases, structure }: Explanation): string | null {
   const { planes, gap } = alias;
   if (planes === null || gap === null)
     return `the Walsh function ${vectorText(alias)} is 1 on all its points; an integrand with a part like it would be off by that part`;
-  const exact = `all its points lie on the ${formatCount(planes)} planes ${vectorText(alias)} = ${phaseText(alias)}, ${formatValue(gap)} apart`;
+  const lie = alias.size > 1 - 1e-9 ? "all its points lie on" : "its points favour or avoid";
+  const exact = `${lie} the ${formatCount(planes)} planes ${vectorText(alias)} = ${phaseText(alias)}, ${formatValue(gap)} apart`;
   return `${exact}; an integrand that varies from plane to plane would be off, whatever the number of points`;
 }
 

@@ -25,14 +25,19 @@ export interface ExplanationsRequest {
   readonly done: () => void;
 }
 
-/** Predictions that a study computes at most; what is beyond them is said to be left out. */
-export const MOST_PREDICTIONS = 40;
+/** Predictions that a study computes at most; the reason of what is beyond them says so. */
+const MOST_PREDICTIONS = 40;
+
+const NOT_CONFIRMED = "no bias was confirmed";
+const LEFT_OUT = `left out, since a study predicts ${MOST_PREDICTIONS} biases at most (tolerand explain does it)`;
 
 /** A pair that may have something to explain: its crude estimates at the largest n. */
 export interface Pair {
   readonly cell: Cell;
   readonly test: BiasTest | null;
   readonly choice: SourceChoice;
+  /** Why there is no prediction; null where there is to be one. */
+  readonly reason: string | null;
 }
 
 /** The pairs of a study that get a prediction, and those of known structure that do not. */
@@ -59,8 +64,9 @@ export function pairsToExplain(request: Pick<ExplanationsRequest, "spec" | "cell
     if (choice === undefined || cell.estimator !== "crude" || !last) continue;
     const test = tests.find(same) ?? null;
     const wanted = pairs === "confirmed" ? test?.confirmed === true : pairs.includes(cell.source);
-    if (wanted && predicted.length < MOST_PREDICTIONS) predicted.push({ cell, test, choice });
-    else if (choice.source.knownStructure !== null) known.push({ cell, test, choice });
+    if (wanted && predicted.length < MOST_PREDICTIONS) predicted.push({ cell, test, choice, reason: null });
+    else if (choice.source.knownStructure !== null)
+      known.push({ cell, test, choice, reason: wanted ? LEFT_OUT : NOT_CONFIRMED });
   }
   return { predicted, known };
 }
@@ -79,7 +85,7 @@ export async function explainStudy(request: ExplanationsRequest): Promise<Explan
   }
   for (const pair of known) {
     if (request.signal.aborted) return [];
-    const explanation = structureOnly(explainRequest(pair, request), "no bias was confirmed");
+    const explanation = structureOnly(explainRequest(pair, request), pair.reason ?? NOT_CONFIRMED);
     if (explanation !== null) found.set(pair, explanation);
     await setImmediate();
   }

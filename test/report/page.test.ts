@@ -69,8 +69,8 @@ describe("the page", () => {
   it("links a verdict that structure explains to its explanation, and names what structure could still spoil", () => {
     const anchors = [...page.matchAll(/<div class="why" id="(why-[^"]+)"/g)].map((match) => match[1] ?? "");
     expect(anchors.length).toBe(sampleRecord().explanations.filter(({ explained }) => explained).length);
-    // from the table of verdicts and from the ranking
-    for (const anchor of anchors) expect(page.split(`href="#${anchor}"`).length - 1).toBe(2);
+    // from the table of verdicts, from the ranking, and from the section of the source
+    for (const anchor of anchors) expect(page.split(`href="#${anchor}"`).length - 1).toBe(3);
     expect(page).toContain("What known structure could still spoil");
   });
 

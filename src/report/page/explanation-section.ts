@@ -3,11 +3,10 @@ import {
   explanationHeadline,
   explanationLines,
   hazardText,
-  planesText,
   structureText,
-  vectorText,
 } from "../../findings/explanation-words.js";
 import { resolutionTable, resolutionTitle } from "../../findings/resolution-words.js";
+import { formatCount } from "../../findings/format.js";
 import type { Chart } from "../charts/chart.js";
 import type { ExplainedRow, Row, Subject } from "../view.js";
 import { dataTable, figure } from "./figure.js";
@@ -58,7 +57,8 @@ function sentence(text: string): string {
 export function whyLink(row: ExplainedRow | undefined): Markup | null {
   const alias = row?.explanation.aliases[0];
   if (row === undefined || alias === undefined || !row.explanation.explained) return null;
-  return html`<a href="#why-${row.slug}">${vectorText(alias)}: ${planesText(alias)}</a>`;
+  const words = alias.planes === null ? "why" : `why: ${formatCount(alias.planes)} planes`;
+  return html`<a href="#why-${row.slug}">${words.replaceAll(" ", "\u00a0")}</a>`;
 }
 
 /** What the structure of sources without a confirmed bias could still spoil; null where there is none. */

@@ -5,6 +5,7 @@ import type { Verdict } from "../../record/types.js";
 import { listed } from "../charts/chart.js";
 import type { Row, SourceView, Subject, View } from "../view.js";
 import { reachWords, totalWords } from "../verdict-row.js";
+import { whyLink } from "./explanation-section.js";
 import { type Markup, html } from "./html.js";
 import { verdictMark } from "./parts.js";
 
@@ -83,13 +84,16 @@ export function sourceSection(view: View, source: SourceView): Markup {
   const rows = met.map(({ subject, row }) => {
     const tested = row.cells.find((cell) => cell.n === row.test?.n) ?? row.last;
     const bias = orDash(tested?.bias, (value) => signed(value, tested?.biasStandardError ?? null));
+    const why = whyLink(view.explained.find((one) => one.row === row));
     const detectable = orDash(row.test?.detectableBias, formatValue);
     return html`<tr data-p="${view.subjects.indexOf(subject)}">
       <td>${verdictMark(row.budget?.verdict ?? "none")}</td>
       <th scope="row"><a href="#problem-${subject.slug}">${subject.title}</a></th>
       <td class="num">${formatCount(row.budget?.n ?? row.last?.n ?? 0)}</td>
       <td class="num">${totalWords(row.budget)}</td>
-      <td class="num">${bias}${row.test?.confirmed === true && " ◆ confirmed"}</td>
+      <td class="num">
+        ${bias}${row.test?.confirmed === true && " ◆ confirmed"}${why !== null && html`<br />${why}`}
+      </td>
       <td class="num">${detectable}</td>
       <td class="num">${reachWords(row.convergence)}</td>
     </tr> `;

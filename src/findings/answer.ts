@@ -3,8 +3,7 @@ import type { Problem } from "../problem/contract.js";
 import type { Explanation } from "../record/explanation.js";
 import type { Convergence, StudyRecord } from "../record/types.js";
 import { planesText, vectorText } from "./explanation-words.js";
-import { formatCount, formatPercent, formatSeconds, formatValue } from "./format.js";
-import { formatReach } from "./headline.js";
+import { formatCount, formatPercent, formatReach, formatSeconds, formatValue } from "./format.js";
 import { referencesOf, toleranceOf } from "./reference.js";
 import { seriesKey } from "./series.js";
 
@@ -35,20 +34,29 @@ export function byEffort(all: readonly Convergence[]): Convergence[] {
   return reaching.sort(compared);
 }
 
+/**
+ * Those that may be recommended, by effort: a source of known structure, or with a fault that this study confirmed, is no
+ * advice, however cheap it is here; unless there is no other.
+ */
+export function recommended(all: readonly Convergence[], record: StudyRecord): Convergence[] {
+  const faults = new Set(
+    [...record.tests, ...record.spreadTests].filter((test) => test.confirmed).map((test) => seriesKey(test)),
+  );
+  const structured = new Set(record.sources.filter((s) => s.knownStructure !== null).map((s) => s.id));
+  const ordered = byEffort(all);
+  const sound = ordered.filter((one) => !structured.has(one.source) && !faults.has(seriesKey(one)));
+  return sound.length > 0 ? sound : ordered;
+}
+
 /** The least effort, and the least of another family than the best, which is what a reader compares it with. */
 function efforts(here: readonly Convergence[], record: StudyRecord): Convergence[] {
-  const sourceOf = (one: Convergence) => record.sources.find((source) => source.id === one.source);
-  const family = (one: Convergence) => sourceOf(one)?.family;
-  // A source of known structure is no advice, however cheap it is here.
-  const all = byEffort(here);
-  const sound = all.filter((one) => (sourceOf(one)?.knownStructure ?? null) === null);
-  const [best, ...others] = sound.length > 0 ? sound : all;
+  const family = (one: Convergence) => record.sources.find((source) => source.id === one.source)?.family;
+  const [best, ...others] = recommended(here, record);
   if (best === undefined) return [];
   const other = others.find((one) => family(one) !== family(best)) ?? others[0];
   return other === undefined ? [best] : [best, other];
 }
 
-/** What explains a bias, in brackets; nothing where it is not explained. */
 function becauseOf(explanation: Explanation | undefined): string {
   const alias = explanation?.explained === true ? explanation.aliases[0] : undefined;
   return alias === undefined

@@ -11,14 +11,16 @@ import {
   type Environment,
   type RawCell,
   type RecordSource,
+  type SpreadTest,
   type StudyRecord,
   type StudySpec,
 } from "../record/types.js";
-import { confirmCandidates, findCandidates, type Confirmation } from "./bias.js";
+import type { Confirmation } from "./bias.js";
 import { budgetOf } from "./budget.js";
 import { toCells, type Context } from "./cells.js";
 import { makeContext } from "./context.js";
 import { convergenceOf } from "./convergence.js";
+import { confirmFamily, screenFamily, type Family } from "./family.js";
 import { seriesKey, seriesOf, type Series } from "./series.js";
 import { warningsOf } from "./warnings.js";
 
@@ -40,11 +42,12 @@ export interface Assembly extends Measured {
   readonly warnings: readonly string[];
 }
 
-/** Stage 1 alone: the tests whose biases are to be confirmed on fresh keys, at the test's n with R = 256. */
-export function candidatesOf(measured: Measured): BiasTest[] {
+/** Stage 1 alone: the tests to be repeated on fresh keys, at the test's n with R = 256. */
+export function candidatesOf(measured: Measured): (BiasTest | SpreadTest)[] {
   const context = makeContext(measured.problems, measured.sources, measured.consensus);
   const series = seriesOf(toCells(measured.rawCells, context, false));
-  return findCandidates(series, context, measured.spec.falseAlarms).filter((test) => test.candidate);
+  const { tests, spreadTests } = screenFamily(series, context, measured.spec.falseAlarms);
+  return [...tests, ...spreadTests].filter((test) => test.candidate);
 }
 
 /** Stage 2: cells (without the one costly interval) and completed tests, which tell what there is to explain. */
@@ -54,12 +57,18 @@ export function confirmedTests(
 ): { readonly cells: readonly Cell[]; readonly tests: readonly BiasTest[] } {
   const context = makeContext(measured.problems, measured.sources, measured.consensus);
   const cells = toCells(measured.rawCells, context, false);
+  return { cells, tests: familyOf(cells, measured, confirmations, context).tests };
+}
+
+function familyOf(
+  cells: readonly Cell[],
+  { spec }: Measured,
+  confirmations: readonly Confirmation[],
+  context: Context,
+): Family {
   const series = seriesOf(cells);
-  const screened = findCandidates(series, context, measured.spec.falseAlarms);
-  return {
-    cells,
-    tests: confirmCandidates(screened, confirmations, series, context, measured.spec.falseAlarms),
-  };
+  const screened = screenFamily(series, context, spec.falseAlarms);
+  return confirmFamily(screened, confirmations, series, context, spec.falseAlarms);
 }
 
 export function assembleRecord(assembly: Assembly): StudyRecord {
@@ -67,8 +76,7 @@ export function assembleRecord(assembly: Assembly): StudyRecord {
   const context = makeContext(problems, sources, consensus, assembly.explanations);
   const cells = toCells(rawCells, context);
   const series = seriesOf(cells);
-  const screened = findCandidates(series, context, spec.falseAlarms);
-  const tests = confirmCandidates(screened, confirmations, series, context, spec.falseAlarms);
+  const { tests, spreadTests, size } = familyOf(cells, assembly, confirmations, context);
   const testOf = new Map(tests.map((test) => [seriesKey(test), test]));
   const budgets = series.flatMap((one) => {
     const budget = budgetOf(one, testOf.get(seriesKey(one)), context);
@@ -85,7 +93,8 @@ export function assembleRecord(assembly: Assembly): StudyRecord {
     consensus,
     cells,
     tests,
-    family: { tests: tests.filter((test) => test.kind !== "none").length, level: spec.falseAlarms },
+    spreadTests,
+    family: { tests: size, level: spec.falseAlarms },
     convergence: series.map((one) => convergenceOf(one, testOf.get(seriesKey(one)), context)),
     budgets: [...budgets, ...inUseBudgets(problems, series, testOf, context)],
     explanations: assembly.explanations,

@@ -1,9 +1,10 @@
 /**
- * Bias tests, two stages. Every problem x source x estimator x output is tested once, at its largest n.
+ * Bias tests, two stages. Every problem x source x estimator x output is tested once, at its largest n. They are one
+ * family with the tests of spread (family.ts), which takes the same two stages.
  *
  * Stage 1, the screen, on the study's own replicates: Holm (1979) over the whole family at level sqrt(falseAlarms).
- * What it rejects is a candidate. Stage 2, the confirmation, on fresh keys with R = 256: Holm over the candidates at level
- * falseAlarms, and the bias must have the sign that it had at stage 1.
+ * What it rejects is a candidate. Stage 2, the confirmation, on fresh keys with R = 256: Holm over the candidates at the
+ * share of level falseAlarms that the tests of bias have in the family, and the bias must have the sign of stage 1.
  *
  * Why this split. Given stage 1, the confirmation data are independent of the choice of candidates, so stage 2 alone
  * holds the rate of studies with any falsely confirmed bias at falseAlarms, however wrong the p-values of stage 1 may
@@ -33,21 +34,31 @@ import { namesOf, seriesKey, type Series, type SeriesName } from "./series.js";
 /** Replicates of a confirmation. */
 export const CONFIRMATION_REPLICATES = 256;
 
-/** Estimates on fresh keys for one candidate, at the n of its test. */
+/** Estimates on fresh keys for one candidate, at the n of its test, and their variances within replicates. */
 export interface Confirmation extends SeriesName {
   readonly n: number;
   readonly estimates: readonly number[];
+  readonly withinVariances?: readonly (number | null)[];
 }
 
 export function screeningLevel(falseAlarms: number): number {
   return Math.sqrt(falseAlarms);
 }
 
-/** Stage 1: one test per series; `candidate` marks those that need a confirmation. */
-export function findCandidates(series: readonly Series[], context: Context, falseAlarms: number): BiasTest[] {
-  const outcomes = series.map((one) => screen(one, series, context));
-  const family = outcomes.filter((outcome) => outcome.kind !== "none").length;
-  const adjusted = adjust(outcomes, family);
+/** The outcome of stage 1 for each series, before it is held against the others. */
+export function screenBiases(series: readonly Series[], context: Context): Outcome[] {
+  return series.map((one) => screen(one, series, context));
+}
+
+/** Stage 1: one row per series; `adjusted` are the p-values of `outcomes` in a family of `family` tests. */
+export function biasRows(
+  series: readonly Series[],
+  outcomes: readonly Outcome[],
+  adjusted: readonly (number | null)[],
+  family: number,
+  context: Context,
+  falseAlarms: number,
+): BiasTest[] {
   const level = screeningLevel(falseAlarms);
   return series.map((one, i) => {
     const outcome = outcomes[i] ?? untested("not tested");
@@ -67,13 +78,13 @@ export function findCandidates(series: readonly Series[], context: Context, fals
   });
 }
 
-/** Stage 2: completes the candidates' rows; a candidate without fresh estimates stays unconfirmed. */
+/** Stage 2 at `level`: completes the candidates' rows; a candidate without fresh estimates stays unconfirmed. */
 export function confirmCandidates(
   tests: readonly BiasTest[],
   confirmations: readonly Confirmation[],
   series: readonly Series[],
   context: Context,
-  falseAlarms: number,
+  level: number,
 ): BiasTest[] {
   const fresh = new Map(confirmations.map((one) => [seriesKey(one), one]));
   const origins = new Map(series.map((one) => [seriesKey(one), one]));
@@ -88,7 +99,10 @@ export function confirmCandidates(
       return untested("not confirmed: there are no fresh replicates");
     return examine({ ...subject, estimates: again.estimates, n: again.n }, true);
   });
-  const adjusted = adjust(outcomes, shared ? tested.length : candidates.length);
+  const adjusted = adjustTogether(
+    outcomes.map((outcome) => outcome.pValue),
+    shared ? tested.length : candidates.length,
+  );
   return tests.map((test) => {
     const at = candidates.indexOf(test);
     const outcome = outcomes[at];
@@ -107,17 +121,17 @@ export function confirmCandidates(
         pValue: outcome.pValue,
       },
       reason: outcome.reason ?? test.reason,
-      confirmed: sameSign && (adjusted[at] ?? 1) <= falseAlarms,
+      confirmed: sameSign && (adjusted[at] ?? 1) <= level,
     };
   });
 }
 
-/** Holm over the outcomes that have a p-value, in a family of `family` tests. */
-function adjust(outcomes: readonly Outcome[], family: number): (number | null)[] {
-  const known = outcomes.flatMap((outcome) => (outcome.pValue === null ? [] : [outcome.pValue]));
+/** Holm over the p-values that there are, in a family of `family` tests. */
+export function adjustTogether(pValues: readonly (number | null)[], family: number): (number | null)[] {
+  const known = pValues.filter((value) => value !== null);
   const values = holm(known, Math.max(family, known.length));
   let next = 0;
-  return outcomes.map((outcome) => (outcome.pValue === null ? null : (values[next++] ?? null)));
+  return pValues.map((value) => (value === null ? null : (values[next++] ?? null)));
 }
 
 function subjectOf(one: Series, series: readonly Series[], context: Context): Subject | null {

@@ -12,7 +12,7 @@ import { normalUpperQuantile } from "../numeric/normal.js";
 import { studentFactor } from "../numeric/student.js";
 import type { Problem } from "../problem/contract.js";
 import type { BiasTest, Budget, BudgetLine, Verdict } from "../record/types.js";
-import type { Context } from "./cells.js";
+import { isRounding, type Context } from "./cells.js";
 import { formatCount, formatPercent, formatValue } from "./format.js";
 import { toleranceOf, type KnownReference } from "./reference.js";
 import { namesOf, type Series } from "./series.js";
@@ -81,9 +81,13 @@ function obstacleOf(
   return null;
 }
 
-/** s at n; 0 where all replicates agree exactly at the largest n, which is what s was there. */
+/** s at n; what it was at the largest n where the replicates agree to rounding there. */
 function samplingAt(series: Series, spread: Spread | null, n: number): Estimated | null {
-  if (series.last.replicateDeviation === 0 && n >= series.last.n) return { value: 0, interval: [0, 0] };
+  const { last } = series;
+  if (isRounding(last) && n >= last.n) {
+    const value = last.replicateDeviation ?? 0;
+    return { value, interval: [0, value] };
+  }
   return spread?.at(n) ?? null;
 }
 

@@ -12,6 +12,7 @@ import { jackknife } from "../numeric/resampling.js";
 import { studentFactor } from "../numeric/student.js";
 import { normalUpperQuantile } from "../numeric/normal.js";
 import type { BiasTest, Convergence } from "../record/types.js";
+import { COUNTLESS } from "./format.js";
 import { EXTRAPOLATION } from "./budget.js";
 import { isRounding, type Context } from "./cells.js";
 import { toleranceOf } from "./reference.js";
@@ -50,7 +51,7 @@ export function convergenceOf(series: Series, test: BiasTest | undefined, contex
     floorLower,
     reach,
     never,
-    cost: reach === null || seconds === null ? null : reach.n * seconds,
+    cost: reach === null || reach.n > COUNTLESS || seconds === null ? null : reach.n * seconds,
   };
 }
 
@@ -99,13 +100,11 @@ function reachOf(
   const tolerance = toleranceIn(series, context);
   const problem = context.problems.get(series.problem);
   if (tolerance === null || problem === undefined) return null;
-  if (isRounding(series.last)) {
-    // One and the same wrong value whatever n: no number of points is known to help.
-    if (Math.abs(series.last.bias ?? 0) > tolerance) return null;
-    const n = firstExact(series);
-    if (spread === null) return { n, interval: [n, n], extrapolated: false };
-  }
-  if (spread === null) return null;
+  // One and the same wrong value whatever n: no number of points is known to help.
+  if (isRounding(series.last) && Math.abs(series.last.bias ?? 0) > tolerance) return null;
+  const exact = isRounding(series.last) ? firstExact(series) : Infinity;
+  const certain = { n: exact, interval: [exact, exact] as const, extrapolated: false };
+  if (spread === null) return Number.isFinite(exact) ? certain : null;
   const { confidence } = problem.tolerance;
   const structure = structureLine(series, test, context, confidence);
   const uncertainty = context.references.get(series.problem)?.uncertainty ?? 0;
@@ -118,6 +117,7 @@ function reachOf(
   const factor = studentFactor(confidence, series.last.replicates - 1);
   const room = Math.max(0, tolerance - bias) / factor;
   const found = spread.reach(Math.sqrt(Math.max(0, room ** 2 - Math.hypot(...declared("random")) ** 2)));
+  if (Number.isFinite(exact) && !((found?.value ?? Infinity) < exact)) return certain;
   if (found === null) return null;
   // An n that is not known within a factor of a thousand is not known.
   if (found.interval === null || found.interval[1] > UNKNOWN * found.interval[0]) return null;

@@ -25,7 +25,12 @@ function plain(value: number, digits: number): string {
 }
 
 function exponential(value: number, digits: number): string {
-  return minus(value.toExponential(digits - 1).replace("e+", "e"));
+  return signs(value.toExponential(digits - 1));
+}
+
+/** The exponent of a number's text with a true minus sign or none. */
+function signs(text: string): string {
+  return minus(text).replace("e+", "e").replace("e-", "e\u2212");
 }
 
 /** Fixed places after the point, thousands apart before it. */
@@ -39,6 +44,31 @@ function fixed(value: number, places: number): string {
 function minus(text: string): string {
   if (!text.startsWith("-")) return text;
   return /[1-9]/.test(text) ? text.replace("-", "\u2212") : text.slice(1);
+}
+
+/** A given number (a tolerance, a constant) as it is, up to `digits` significant digits and no idle zeros. */
+export function plainNumber(value: number, digits = 10): string {
+  if (!Number.isFinite(value)) return formatValue(value);
+  const [, whole = "", rest = ""] = /^-?(\d+)(.*)$/.exec(String(Number(value.toPrecision(digits)))) ?? [];
+  const sign = value < 0 ? "\u2212" : "";
+  return sign + whole.replace(/\B(?=(\d{3})+$)/g, ",") + signs(rest);
+}
+
+/** A value to the digits of its uncertainty, its sign always shown. */
+export function signed(value: number, uncertainty: number | null): string {
+  const text = formatValue(value, uncertainty);
+  return value > 0 && /[1-9]/.test(text) ? `+${text}` : text;
+}
+
+/** A value to the digits that its interval supports (a 95 % interval is about four standard errors wide). */
+export function withInterval(value: number, interval: readonly [number, number] | null): string {
+  if (value === 0) return "0";
+  return formatValue(value, interval === null ? null : (interval[1] - interval[0]) / 4);
+}
+
+/** A known value in words, or a dash. */
+export function orDash(value: number | null | undefined, words: (value: number) => string): string {
+  return typeof value === "number" ? words(value) : "\u2013";
 }
 
 /** An interval with the digits that its own width supports. */
@@ -57,6 +87,22 @@ export function formatCount(count: number, about = false): string {
   }
   // Two digits: a fitted number of points supports no more.
   return fixed(Number(count.toPrecision(2)), 0);
+}
+
+/** Numbers of points above this are not told apart: no machine gets there. */
+export const COUNTLESS = 1e15;
+
+/**
+ * The n to tolerance in words: fitted, so "≈" and two digits; exact where even the smallest size measured keeps the
+ * tolerance (its interval is then that one size).
+ */
+export function formatReach(reach: {
+  readonly n: number;
+  readonly interval: readonly [number, number] | null;
+}): string {
+  if (reach.n > COUNTLESS) return "more than 10^15";
+  if (reach.interval !== null && reach.interval[0] === reach.interval[1]) return formatCount(reach.n);
+  return `\u2248 ${formatCount(reach.n, true)}`;
 }
 
 const SCALES = [
@@ -83,7 +129,7 @@ export function formatPercent(share: number): string {
   return `${Number((share * 100).toPrecision(10))} %`;
 }
 
-/** A p-value: two digits, "< 1e-12" below that. */
+/** A p-value: two digits, "< 1e−12" below that. */
 export function formatPValue(p: number): string {
-  return p < 1e-12 ? "< 1e-12" : plain(p, 2);
+  return p < 1e-12 ? "< 1e\u221212" : plain(p, 2);
 }

@@ -2,10 +2,18 @@
  * The verdicts in words, and the exit code that follows from them. Shared by the command line, the summary and the report.
  */
 import type { Problem } from "../problem/contract.js";
-import type { BiasTest, Budget, Convergence, StudyRecord, Verdict } from "../record/types.js";
+import type { BiasTest, Budget, StudyRecord, Verdict } from "../record/types.js";
 import { referencesOf, toleranceOf } from "./reference.js";
-import { formatCount, formatPercent, formatSeconds, formatValue } from "./format.js";
-import { seriesKey } from "./series.js";
+import { recommended } from "./answer.js";
+import {
+  formatCount,
+  formatInterval,
+  formatPercent,
+  formatReach,
+  formatSeconds,
+  formatValue,
+} from "./format.js";
+import { seriesKey, type SeriesName } from "./series.js";
 
 /** A verdict's mark; the word always stands beside it. */
 export const VERDICT_MARKS: Readonly<Record<Verdict, string>> = {
@@ -33,7 +41,11 @@ export function headlinesOf(record: StudyRecord): Headline[] {
     problem: problem.id,
     title: problem.title,
     task: taskOf(problem, record),
-    sentences: [...verdictSentences(problem, record), ...biasSentences(problem, record)],
+    sentences: [
+      ...verdictSentences(problem, record),
+      ...biasSentences(problem, record),
+      ...spreadSentences(problem, record),
+    ],
     inUse: inUseHeadline(problem, record),
   }));
 }
@@ -94,7 +106,7 @@ function whatHelps(budget: Budget, record: StudyRecord): string {
 }
 
 /** A source's id; its estimator and output only where there are several of them. */
-function nameOf(one: Budget | BiasTest, among: readonly (Budget | BiasTest)[]): string {
+function nameOf(one: SeriesName, among: readonly SeriesName[]): string {
   const estimators = new Set(among.map((other) => other.estimator));
   const outputs = new Set(among.map((other) => other.output));
   const extra = [estimators.size > 1 ? one.estimator : "", outputs.size > 1 ? one.output : ""].filter(
@@ -107,24 +119,14 @@ function list(names: readonly string[]): string {
   return names.length < 2 ? names.join("") : `${names.slice(0, -1).join(", ")} and ${names.at(-1) ?? ""}`;
 }
 
+/** The least effort among sources that may be recommended, as in the answer. */
 function cheapestReach(problem: Problem, record: StudyRecord): string | null {
   const reached = record.convergence.filter((one) => one.problem === problem.id && one.reach !== null);
-  const cost = (one: Convergence) => one.cost ?? Infinity;
-  const points = (one: Convergence) => one.reach?.n ?? Infinity;
-  const best = [...reached].sort((a, b) => cost(a) - cost(b) || points(a) - points(b))[0];
+  const best = recommended(reached, record)[0];
   if (best === undefined || best.reach === null || reached.length < 2) return null;
   const time = best.cost === null ? "" : `, ${formatSeconds(best.cost)}`;
   const far = best.reach.extrapolated ? ", extrapolated" : "";
   return `The least effort for it: ${best.source} with ${formatReach(best.reach)} points${time}${far}.`;
-}
-
-/**
- * The n to tolerance in words: fitted, so "≈" and two digits; exact where even the smallest size measured keeps the
- * tolerance (its interval is then that one size).
- */
-export function formatReach(reach: NonNullable<Convergence["reach"]>): string {
-  if (reach.interval !== null && reach.interval[0] === reach.interval[1]) return formatCount(reach.n);
-  return `\u2248 ${formatCount(reach.n, true)}`;
 }
 
 /** What the tests of one problem found: each confirmed bias, then what they could have found elsewhere. */
@@ -152,6 +154,21 @@ export function biasSentences(problem: Problem, record: StudyRecord): string[] {
     sentences.push(`No bias found in ${names}; a bias of ${range} would have been found with 80 % power.`);
   }
   return sentences;
+}
+
+/** What the tests of spread found: each confirmed fault. */
+export function spreadSentences(problem: Problem, record: StudyRecord): string[] {
+  const tests = record.spreadTests.filter((test) => test.problem === problem.id);
+  return tests.flatMap((test) => {
+    const { confirmation: found } = test;
+    if (!test.confirmed || found === null) return [];
+    const width = found.interval === null ? null : (found.interval[1] - found.interval[0]) / 4;
+    const interval = found.interval === null ? "" : ` (95 % interval ${formatInterval(found.interval)})`;
+    return [
+      `${nameOf(test, tests)} spreads ${formatValue(found.ratio, width)} times what independent points would` +
+        `${interval}, confirmed on ${found.replicates} fresh replicates: its points are not independent.`,
+    ];
+  });
 }
 
 function inUseHeadline(problem: Problem, record: StudyRecord): Headline["inUse"] {
@@ -188,7 +205,7 @@ function remedyOf(budget: Budget, record: StudyRecord): string {
   const choices: string[] = [];
   const times = (own?.reach?.n ?? NaN) / budget.n;
   if (times > 1) choices.push(`${formatCount(Math.max(2, Math.ceil(times)), true)} times the points`);
-  const others = record.convergence
+  const others = recommended(record.convergence, record)
     .filter(
       (one) => one.problem === budget.problem && one.source !== budget.source && one.output === budget.output,
     )

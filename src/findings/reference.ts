@@ -18,7 +18,9 @@ export function referencesOf(
   const known = new Map<string, KnownReference>();
   for (const { id, reference } of problems) {
     if (reference !== null) {
-      const { value, uncertainty, basis } = reference;
+      const { value, uncertainty } = reference;
+      // It stands inside other sentences, without its full stop.
+      const basis = reference.basis.trim().replace(/\.$/, "");
       known.set(id, { value, uncertainty, basis, consensus: false });
       continue;
     }

@@ -7,7 +7,7 @@
 import { fitLine } from "../numeric/least-squares.js";
 import { jackknife } from "../numeric/resampling.js";
 import { combine, logDeviation, logRmse, type LeaveOneOut } from "./leave-one-out.js";
-import { ROUNDING } from "./cells.js";
+import { ROUNDING, isRounding } from "./cells.js";
 import type { Series } from "./series.js";
 
 export interface Estimated {
@@ -29,9 +29,9 @@ export interface Spread {
   readonly fixedOrder: boolean;
 }
 
-/** Cells with an error bar. */
+/** Cells with an error bar that is more than rounding. */
 function usableCells(series: Series) {
-  return series.cells.filter((cell) => cell.replicateDeviation !== null && cell.replicateDeviation > 0);
+  return series.cells.filter((cell) => cell.replicateDeviation !== null && !isRounding(cell));
 }
 
 /**

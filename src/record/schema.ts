@@ -128,6 +128,27 @@ const test = z.strictObject({
   reason: orNull(text),
 });
 
+const spreadTest = z.strictObject({
+  ...settings,
+  n: z.int().min(1),
+  ratio: number,
+  pValue: number,
+  pValueAdjusted: number,
+  candidate: z.boolean(),
+  confirmation: orNull(
+    z.strictObject({
+      replicates: whole,
+      estimates: reals,
+      withinVariances: z.array(orNull(real)),
+      ratio: real,
+      interval,
+      pValue: real,
+    }),
+  ),
+  confirmed: z.boolean(),
+  reason: orNull(text),
+});
+
 const convergence = z.strictObject({
   ...settings,
   order: number,
@@ -188,6 +209,7 @@ const recordSchema = z
     consensus: z.array(consensus),
     cells: z.array(cell).describe("One per problem, source, estimator, output and number of points."),
     tests: z.array(test),
+    spreadTests: z.array(spreadTest).default([]),
     family: z.strictObject({ tests: whole, level: z.number() }),
     convergence: z.array(convergence),
     budgets: z.array(budget),

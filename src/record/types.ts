@@ -150,6 +150,33 @@ export interface BiasTest {
   readonly reason: string | null;
 }
 
+/** The test of a pseudo-random source's spread at its largest n: do its replicates differ as independent points would? */
+export interface SpreadTest {
+  readonly problem: string;
+  readonly source: string;
+  readonly estimator: string;
+  readonly output: string;
+  readonly n: number;
+  /** n s^2 / w, w the mean variance of f within the replicates: 1 for independent points. */
+  readonly ratio: number | null;
+  readonly pValue: number | null;
+  readonly pValueAdjusted: number | null;
+  readonly candidate: boolean;
+  /** Fresh keys, R = 256; null where no confirmation was needed. */
+  readonly confirmation: {
+    readonly replicates: number;
+    readonly estimates: readonly number[];
+    readonly withinVariances: readonly (number | null)[];
+    readonly ratio: number;
+    /** 95 %, jackknife of the logarithm. */
+    readonly interval: readonly [number, number] | null;
+    readonly pValue: number;
+  } | null;
+  readonly confirmed: boolean;
+  /** Why no test was made, in words; null otherwise. */
+  readonly reason: string | null;
+}
+
 /** Convergence of one problem x source x estimator x output over n. */
 export interface Convergence {
   readonly problem: string;
@@ -241,7 +268,8 @@ export interface StudyRecord {
   readonly consensus: readonly Consensus[];
   readonly cells: readonly Cell[];
   readonly tests: readonly BiasTest[];
-  /** Size of the family of tests and its level. */
+  readonly spreadTests: readonly SpreadTest[];
+  /** Size of the family of all these tests and its level. */
   readonly family: { readonly tests: number; readonly level: number };
   readonly convergence: readonly Convergence[];
   readonly budgets: readonly Budget[];

@@ -49,7 +49,7 @@ export function summary(view: View, title: string): string {
     "## Provenance",
     "",
     `- Command: ${code(plainText(environment.command))}`,
-    `- Seed ${spec.seed}; ${formatCount(family.tests)} tests of bias in one family at level ${family.level}`,
+    `- Seed ${spec.seed}; ${formatCount(family.tests)} tests of bias and spread in one family at level ${family.level}`,
     `- Specification SHA-256 ${specDigest}`,
     `- Estimates SHA-256 ${digest}`,
     `- ${escapeMarkdown(`tolerand ${environment.program}, Node ${environment.node}, ${environment.platform}`)}`,

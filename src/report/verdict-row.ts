@@ -1,9 +1,17 @@
 /** The verdicts of a subject in words: the same cells for the terminal, the summary and the page. */
 import { byEffort } from "../findings/answer.js";
-import { formatCount, formatPercent, formatSeconds, formatValue } from "../findings/format.js";
-import { VERDICT_MARKS, formatReach, referenceText } from "../findings/headline.js";
+import {
+  formatCount,
+  formatReach,
+  formatPercent,
+  formatSeconds,
+  formatValue,
+  orDash,
+  plainNumber,
+  withInterval,
+} from "../findings/format.js";
+import { VERDICT_MARKS, referenceText } from "../findings/headline.js";
 import type { Budget, Convergence } from "../record/types.js";
-import { orDash, plainNumber, withInterval } from "./numbers.js";
 import type { Row, Subject } from "./view.js";
 
 export interface VerdictRow {

@@ -12,7 +12,7 @@ import type {
   StudyRecord,
 } from "../record/types.js";
 import { answerOf } from "../findings/answer.js";
-import { biasSentences, headlinesOf } from "../findings/headline.js";
+import { biasSentences, headlinesOf, spreadSentences } from "../findings/headline.js";
 import { type KnownReference, referencesOf, toleranceOf } from "../findings/reference.js";
 import type { Explanation } from "../record/explanation.js";
 import type { Problem } from "../problem/contract.js";
@@ -67,7 +67,7 @@ export interface Subject {
   readonly inUseSentence: string | null;
   /** The answer in one sentence. */
   readonly answer: string;
-  /** What the tests of bias found, in sentences. */
+  /** What the tests of bias and of spread found, in sentences. */
   readonly biases: readonly string[];
 }
 
@@ -183,7 +183,7 @@ export function viewRecord(record: StudyRecord): View {
       inUse: budgets.find((budget) => budget.inUse) ?? null,
       inUseSentence: headlines.find((one) => one.problem === problem.id)?.inUse?.sentence ?? null,
       answer: answerOf(problem, output, record),
-      biases: biasSentences(problem, record),
+      biases: [...biasSentences(problem, record), ...spreadSentences(problem, record)],
     };
   });
   return { record, subjects, sources, explained: explainedRows(subjects) };

@@ -253,7 +253,7 @@ describe("what cannot be judged", () => {
     const sources = [makeSource("philox4x32", { period: "2147483646" })];
     const cells = makeSeries({ replicates: 64 });
     expect(assembleRecord(makeAssembly(cells, { sources })).warnings[0]).toMatch(
-      /64 replicates among 2,147,483,646 states: 9\.4e-7 pairs with the same points/,
+      /64 replicates among 2,147,483,646 states: 9\.4e\u22127 pairs with the same points/,
     );
   });
 });

@@ -20,7 +20,7 @@ describe("values with an uncertainty", () => {
     [0.00001, 0.02, "0.000"],
     [-0.00001, 0.02, "0.000"],
     [0, 0.5, "0.00"],
-    [0.0000123456, 0.0000001, "1.235e-5"],
+    [0.0000123456, 0.0000001, "1.235e−5"],
     [12, 1000, "0"],
     [999.96, 1.2, "1,000.0"],
   ])("%d with %d", (value, uncertainty, text) => {
@@ -36,8 +36,8 @@ describe("values without one have two digits", () => {
     [123.4, "120"],
     [98765, "99,000"],
     [0.99999, "1.0"],
-    [1.7376e-6, "1.7e-6"],
-    [-1.7376e-6, "−1.7e-6"],
+    [1.7376e-6, "1.7e−6"],
+    [-1.7376e-6, "−1.7e−6"],
     [2.1e12, "2.1e12"],
     [NaN, "NaN"],
     [Infinity, "Infinity"],
@@ -69,5 +69,5 @@ it("durations have the unit that suits them", () => {
 
 it("shares and p-values", () => {
   expect([0.99, 0.999, 0.95].map(formatPercent)).toEqual(["99 %", "99.9 %", "95 %"]);
-  expect([0.0312, 1.5e-7, 1e-30].map(formatPValue)).toEqual(["0.031", "1.5e-7", "< 1e-12"]);
+  expect([0.0312, 1.5e-7, 1e-30].map(formatPValue)).toEqual(["0.031", "1.5e−7", "< 1e−12"]);
 });

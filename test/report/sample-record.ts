@@ -340,6 +340,7 @@ export function sampleRecord(size: SampleSize = SMALL): StudyRecord {
     ),
     cells,
     tests,
+    spreadTests: [],
     family: { tests: tests.filter((t) => t.kind !== "none").length, level: 0.01 },
     convergence,
     budgets,

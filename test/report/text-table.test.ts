@@ -1,7 +1,7 @@
 /** Tables of text: columns, alignment, colour only when asked, no control characters from users' texts. */
 import { describe, expect, it } from "vitest";
 import { textTable, verdictTables } from "../../src/report/index.js";
-import { plainNumber, signed, withInterval } from "../../src/report/numbers.js";
+import { plainNumber, signed, withInterval } from "../../src/findings/format.js";
 import type { StudyRecord } from "../../src/record/types.js";
 import { sampleRecord } from "./sample-record.js";
 
@@ -67,7 +67,7 @@ describe("numbers", () => {
   it("keep what was given and what intervals support", () => {
     expect(plainNumber(0.01)).toBe("0.01");
     expect(plainNumber(-1234567.5)).toBe("−1,234,567.5");
-    expect(plainNumber(1e-7)).toBe("1e-7");
+    expect(plainNumber(1e-7)).toBe("1e−7");
     expect(plainNumber(NaN)).toBe("NaN");
     expect(signed(0.0203, 0.0004)).toBe("+0.02030");
     expect(signed(-0.05, 0.0004)).toBe("−0.05000");

@@ -1,5 +1,6 @@
 /** Studies with one source that is biased by a stated number of detectable units among three sound ones. */
-import { findCandidates, CONFIRMATION_REPLICATES } from "../../src/findings/bias.js";
+import { CONFIRMATION_REPLICATES } from "../../src/findings/bias.js";
+import { screenFamily } from "../../src/findings/family.js";
 import { assembleRecord, candidatesOf } from "../../src/findings/assemble.js";
 import { toCells } from "../../src/findings/cells.js";
 import { makeContext } from "../../src/findings/context.js";
@@ -49,5 +50,7 @@ function unitOf(falseAlarms: number): number {
   const cells = SOURCES.map((source) => makeCell({ source, estimates }));
   const sources = SOURCES.map((id) => makeSource(id));
   const context = makeContext([makeProblem("p")], sources, []);
-  return findCandidates(seriesOf(toCells(cells, context)), context, falseAlarms)[0]?.detectableBias ?? NaN;
+  return (
+    screenFamily(seriesOf(toCells(cells, context)), context, falseAlarms).tests[0]?.detectableBias ?? NaN
+  );
 }

@@ -3,9 +3,8 @@
  * was measured. Bars are two standard errors either way, for the sums the interval at the stated confidence.
  */
 import { explanationHeadline, planesText, vectorText } from "../../findings/explanation-words.js";
-import { formatCount, formatPercent, formatValue } from "../../findings/format.js";
+import { formatCount, formatPercent, formatValue, signed } from "../../findings/format.js";
 import { PAGE } from "../look.js";
-import { signed } from "../numbers.js";
 import type { ExplainedRow } from "../view.js";
 import { type Chart, type Datum, type Margins, type Spec, Marks, framed } from "./chart.js";
 import { pixelY, rowLabels, rulings } from "./rows-frame.js";

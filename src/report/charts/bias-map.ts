@@ -2,8 +2,7 @@
  * The bias map: problem x source, each cell the bias at the largest n in standard errors. Confirmed biases carry a
  * diamond, so colour is never the only sign.
  */
-import { formatCount, formatPercent, formatValue } from "../../findings/format.js";
-import { signed } from "../numbers.js";
+import { formatCount, formatPercent, formatValue, signed } from "../../findings/format.js";
 import { PAGE, TINTS } from "../look.js";
 import type { Row, Subject, View } from "../view.js";
 import {

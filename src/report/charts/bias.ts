@@ -3,8 +3,14 @@
  * the smallest bias that the test could have found and the tolerance. The axis is linear within about the tolerance and
  * logarithmic beyond (sign(x) log(1 + |x|/c), c the tolerance) once a bias exceeds three tolerances.
  */
-import { formatCount, formatPValue, formatValue } from "../../findings/format.js";
-import { plainNumber, signed, orDash } from "../numbers.js";
+import {
+  formatCount,
+  formatPValue,
+  formatValue,
+  orDash,
+  plainNumber,
+  signed,
+} from "../../findings/format.js";
 import { PAGE } from "../look.js";
 import { toleranceWords } from "../verdict-row.js";
 import { biasWord } from "../../findings/headline.js";

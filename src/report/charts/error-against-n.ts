@@ -2,8 +2,7 @@
  * Error against n, log-log: one line per source, its interval at each n, the tolerance as a line, and two reference
  * slopes (-1/2, what independent points give; -1). Lines join measured points only.
  */
-import { formatCount, formatValue } from "../../findings/format.js";
-import { plainNumber } from "../numbers.js";
+import { formatCount, formatValue, plainNumber } from "../../findings/format.js";
 import { PAGE } from "../look.js";
 import { toleranceWords } from "../verdict-row.js";
 import type { Row, Subject, View } from "../view.js";

@@ -1,7 +1,6 @@
 /** Errors against n as a chart needs them: which can stand on a log axis, what they say, and their numbers. */
-import { formatCount, formatInterval, formatValue } from "../../findings/format.js";
+import { formatCount, formatInterval, formatValue, orDash, withInterval } from "../../findings/format.js";
 import type { Cell } from "../../record/types.js";
-import { orDash, withInterval } from "../numbers.js";
 import type { Row, Subject } from "../view.js";
 import { type ChartTable, counted, listed } from "./chart.js";
 

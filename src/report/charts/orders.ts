@@ -1,6 +1,5 @@
 /** Orders of convergence with their intervals: a row per source, in it a mark per problem. */
-import { formatValue } from "../../findings/format.js";
-import { signed } from "../numbers.js";
+import { formatValue, signed } from "../../findings/format.js";
 import { FAMILY_ORDER, PAGE } from "../look.js";
 import type { Row, Subject, View } from "../view.js";
 import {

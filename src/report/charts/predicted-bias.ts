@@ -1,8 +1,7 @@
 /** Predicted against measured bias, each with its interval, over all pairs of problem and source that have a prediction. */
-import { formatPercent, formatValue } from "../../findings/format.js";
+import { formatPercent, formatValue, signed } from "../../findings/format.js";
 import type { Estimated } from "../../record/explanation.js";
 import { PAGE } from "../look.js";
-import { signed } from "../numbers.js";
 import type { ExplainedRow, View } from "../view.js";
 import {
   type Chart,

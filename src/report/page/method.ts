@@ -27,6 +27,12 @@ function statistics(view: View): Markup {
       have found with 80 % power.
     </p>
     <p>
+      <strong>Spread</strong>: the replicates of a pseudo-random source should differ as those of independent
+      points would. Their variance is held against the variance within the replicates, as in an analysis of
+      variance (Fisher's F), in the same family and by the same two stages; a confirmed ratio other than 1 is
+      a fault of structure that no average over seeds shows.
+    </p>
+    <p>
       <strong>RMSE</strong> is the root mean square error over replicates. Its interval is a jackknife of its
       logarithm (Tukey 1958; Miller 1974), at 95 %. <strong>Order</strong> is the weighted least-squares slope
       of log RMSE on log n, its interval a jackknife over replicates. The <strong>floor</strong> is the level

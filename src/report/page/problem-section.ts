@@ -2,8 +2,7 @@
 import type { Input } from "../../problem/contract.js";
 import type { Chart } from "../charts/chart.js";
 import { jsonText } from "../../record/json.js";
-import { formatCount, formatPValue, formatValue } from "../../findings/format.js";
-import { plainNumber } from "../numbers.js";
+import { formatCount, formatPValue, formatValue, plainNumber } from "../../findings/format.js";
 import type { ExplainedRow, Subject } from "../view.js";
 import { reachWords, referenceWords, toleranceWords, verdictRows } from "../verdict-row.js";
 import { explanationBlock, hazards, whyLink } from "./explanation-section.js";

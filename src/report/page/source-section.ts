@@ -1,6 +1,5 @@
 /** The section of one source: what it is, what is known of it, and where it fails in this study. */
-import { formatValue, formatCount } from "../../findings/format.js";
-import { signed, orDash } from "../numbers.js";
+import { formatCount, formatValue, orDash, signed } from "../../findings/format.js";
 import type { Verdict } from "../../record/types.js";
 import { listed } from "../charts/chart.js";
 import type { Row, SourceView, Subject, View } from "../view.js";

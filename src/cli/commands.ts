@@ -86,6 +86,7 @@ export const commands: readonly Command[] = [
       ),
       seed: text("seed of the points for --discrepancy (a whole number)"),
       "allow-programs": allowPrograms,
+      out: text("folder for a report (default: none is written)"),
       json,
     },
     load: () => import("./commands/inspect.js"),

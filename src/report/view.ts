@@ -104,10 +104,11 @@ export function slugs(names: readonly string[]): string[] {
   });
 }
 
-function viewSources(record: StudyRecord): SourceView[] {
-  const anchors = slugs(record.sources.map((source) => source.id));
+/** Sources with their looks and anchors, in order. */
+export function viewSources(sources: readonly RecordSource[]): SourceView[] {
+  const anchors = slugs(sources.map((source) => source.id));
   const seen = new Map<string, number>();
-  return record.sources.map((source, index) => {
+  return sources.map((source, index) => {
     const family = FAMILIES[source.family];
     const rank = seen.get(source.family) ?? 0;
     seen.set(source.family, rank + 1);
@@ -153,7 +154,7 @@ function subjectRows(
 
 /** Finds in `record` what a report shows. */
 export function viewRecord(record: StudyRecord): View {
-  const sources = viewSources(record);
+  const sources = viewSources(record.sources);
   const references = referencesOf(record.problems, record.consensus);
   const headlines = headlinesOf(record);
   const pairs = record.problems.flatMap((problem) => {

@@ -6,7 +6,10 @@ import { mkdir, readdir, rename, rm, writeFile } from "node:fs/promises";
 import { dirname, join } from "node:path";
 import { jsonText } from "../record/json.js";
 import type { StudyRecord } from "../record/types.js";
-import { chartsOf, everyChart } from "./charts/index.js";
+import { chartsOf, everyChart, inspectionCharts } from "./charts/index.js";
+import { inspectionPage } from "./page/inspection-page.js";
+import { inspectionJson } from "../structure/inspection.js";
+import { viewInspections, type Inspected } from "./inspection-view.js";
 import { page, reportTitle } from "./page/page.js";
 import { drawForFile } from "./render.js";
 import { summary } from "./summary.js";
@@ -65,6 +68,45 @@ export async function reportTexts(
   return texts;
 }
 
+/** Writes all texts, and removes charts and images of an earlier report that are not among them. */
+async function writeTexts(folder: string, texts: ReadonlyMap<string, string>): Promise<void> {
+  await mkdir(folder, { recursive: true });
+  for (const [name, text] of texts) {
+    await mkdir(dirname(join(folder, name)), { recursive: true });
+    await writeWhole(join(folder, name), text);
+  }
+  const below = (part: string): Set<string> =>
+    new Set([...texts.keys()].filter((name) => dirname(name) === part).map((name) => name.slice(7)));
+  await clear(join(folder, "charts"), ".vl.json", below("charts"));
+  await clear(join(folder, "images"), ".svg", below("images"));
+}
+
+/** The text of every file of an inspection's report; `command` repeats it. */
+export async function inspectionTexts(
+  inspected: readonly Inspected[],
+  command: string,
+): Promise<Map<string, string>> {
+  const items = viewInspections(inspected);
+  const charts = inspectionCharts(items);
+  const texts = new Map<string, string>();
+  const json = inspected.map(({ inspection }) => inspectionJson(inspection));
+  texts.set("inspection.json", `${jsonText(json, 1)}\n`);
+  for (const chart of [...charts.across, ...[...charts.bySource.values()].flat()]) {
+    texts.set(`charts/${chart.name}.vl.json`, `${jsonText(chart.spec, 1)}\n`);
+  }
+  texts.set("index.html", await inspectionPage(items, charts, command));
+  return texts;
+}
+
+/** Writes the report of an inspection; rejects with the system's error where the folder cannot be written. */
+export async function writeInspection(
+  inspected: readonly Inspected[],
+  folder: string,
+  command: string,
+): Promise<void> {
+  await writeTexts(folder, await inspectionTexts(inspected, command));
+}
+
 /**
  * Writes the report of `record` to `folder`, which is made if need be; files of an earlier report are replaced, other
  * files are left alone. Rejects with the system's error where the folder cannot be written.
@@ -77,13 +119,7 @@ export async function writeReport(
   const texts = await reportTexts(record, options);
   const names = [...texts.keys()];
   const below = (part: string): string[] => names.filter((name) => dirname(name) === part);
-  await mkdir(folder, { recursive: true });
-  for (const [name, text] of texts) {
-    await mkdir(dirname(join(folder, name)), { recursive: true });
-    await writeWhole(join(folder, name), text);
-  }
-  await clear(join(folder, "charts"), ".vl.json", new Set(below("charts").map((name) => name.slice(7))));
-  await clear(join(folder, "images"), ".svg", new Set(below("images").map((name) => name.slice(7))));
+  await writeTexts(folder, texts);
   const at = (name: string): string => join(folder, name);
   return {
     folder,

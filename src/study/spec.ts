@@ -123,27 +123,26 @@ export function confirmationTasks(
 /** The sources of a study as the record describes them, each once. */
 export function recordSources(spec: StudySpec): RecordSource[] {
   const byId = new Map(rows(spec).map(({ choice }) => [choice.id, choice]));
-  return [...byId.values()].map((choice) => {
-    const { source, randomisations, deterministic, id } = choice;
-    const { title, citation, family, method, outputBits, period, largestDimension, nesting, knownStructure } =
-      source;
-    const described = {
-      title,
-      citation,
-      family,
-      method,
-      outputBits,
-      largestDimension,
-      nesting,
-      knownStructure,
-    };
-    return {
-      ...described,
-      id,
-      period: period === null ? null : period.toString(),
-      deterministic,
-      randomisations,
-      ...(source.repeatable === false ? { repeatable: source.repeatable } : {}),
-    };
-  });
+  return [...byId.values()].map(recordSource);
+}
+
+/** A source as a record describes it. */
+export function recordSource({ source, randomisations, deterministic, id }: SourceChoice): RecordSource {
+  const { title, citation, family, method, outputBits, period, largestDimension, nesting, knownStructure } =
+    source;
+  return {
+    title,
+    citation,
+    family,
+    method,
+    outputBits,
+    largestDimension,
+    nesting,
+    knownStructure,
+    id,
+    period: period === null ? null : period.toString(),
+    deterministic,
+    randomisations,
+    ...(source.repeatable === false ? { repeatable: source.repeatable } : {}),
+  };
 }

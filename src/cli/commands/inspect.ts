@@ -1,14 +1,19 @@
 /** `tolerand inspect SOURCE...`: the structure of sources, without running an integrand. */
+import { resolve } from "node:path";
 import { jsonText } from "../../record/json.js";
 import { plainText, textTable } from "../../report/text-table.js";
 import { parseSource, type SourceChoice } from "../../sources/choice.js";
 import type { InspectionRequest, Part } from "../../structure/contract.js";
 import { inspectionJson, inspectSource, type Inspection } from "../../structure/inspection.js";
+import { isDigitalNet, netOfSource } from "../../structure/net.js";
+import { pairTValues } from "../../structure/t-value.js";
+import { sliceOf, worstVector } from "../../structure/slice.js";
+import { recordSource } from "../../study/spec.js";
 import { EXIT, type Arguments, type Io } from "../command.js";
 import { InputError, asInput } from "../errors.js";
 import { inspectionRequest } from "../inspect-flags.js";
 import { messages } from "../messages.js";
-import { booleanFlag, textFlags } from "../read.js";
+import { booleanFlag, textFlag, textFlags } from "../read.js";
 import { sourceFromText } from "../study-flags.js";
 
 export async function run(args: Arguments, io: Io): Promise<number> {
@@ -20,7 +25,29 @@ export async function run(args: Arguments, io: Io): Promise<number> {
   for (const choice of choices) inspections.push(await inspect(choice, request));
   if (booleanFlag(args, "json")) io.stdout.write(`${jsonText(inspections.map(inspectionJson), 2)}\n`);
   else io.stdout.write(inspections.map(words).join("\n\n"));
+  const out = textFlag(args, "out");
+  if (out !== null) await writePage(inspections, resolve(io.cwd, out), io);
   return EXIT.done;
+}
+
+/** The report, with pictures of points along the planes of each worst dimension. */
+async function writePage(inspections: readonly Inspection[], folder: string, io: Io): Promise<void> {
+  const { writeInspection } = await import("../../report/index.js");
+  const inspected = inspections.map((inspection) => {
+    const { choice, findings } = inspection;
+    const vector = worstVector(inspection);
+    const slice = vector === null ? null : sliceOf(choice, vector, findings.dual?.latticePoints ?? null);
+    return { source: recordSource(choice), inspection, slice, pairs: pairsOf(inspection) };
+  });
+  await writeInspection(inspected, folder, io.commandLine);
+  io.stderr.write(messages.next(`open ${folder}/index.html`));
+}
+
+/** t of every pair of a net's coordinates, which the tables only sum up. */
+function pairsOf({ choice: { source }, findings: { net } }: Inspection): Uint8Array | null {
+  const pairs = net?.netPairs ?? null;
+  if (pairs === null || !isDigitalNet(source)) return null;
+  return pairTValues(netOfSource(source, pairs.dimension, pairs.base ** pairs.digits)).values;
 }
 
 async function inspect(choice: SourceChoice, request: InspectionRequest): Promise<Inspection> {

@@ -174,7 +174,7 @@ export function powersOfTen(low: number, high: number, limit = 9): number[] {
 }
 
 /** The looks of the families that occur, in words: `Triangles and solid lines: pseudo-random.` */
-export function familyKey(view: View, lines: boolean): string {
+export function familyKey(view: Pick<View, "sources">, lines: boolean): string {
   const present = FAMILY_ORDER.filter((family) => view.sources.some((s) => s.source.family === family));
   const parts = present.map((family) => {
     const look = FAMILIES[family];

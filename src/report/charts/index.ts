@@ -1,4 +1,6 @@
 /** The charts of a report in the order of reading: some for every subject, some across all of them. */
+import type { InspectedView } from "../inspection-view.js";
+import type { InspectionCharts } from "../page/inspection-page.js";
 import type { ExplainedRow, Subject, View } from "../view.js";
 import { aliasChart } from "./aliases.js";
 import { biasChart } from "./bias.js";
@@ -6,9 +8,13 @@ import { biasMap } from "./bias-map.js";
 import type { Chart } from "./chart.js";
 import { costToTolerance } from "./cost-to-tolerance.js";
 import { errorAgainstN } from "./error-against-n.js";
+import { figureByDimension } from "./figure-by-dimension.js";
+import { lowBits } from "./low-bits.js";
 import { orders } from "./orders.js";
+import { pairGrid } from "./pair-grid.js";
 import { planeComb } from "./plane-comb.js";
 import { predictedBias } from "./predicted-bias.js";
+import { slice } from "./slice.js";
 
 /** Charts of one subject; null where there is nothing to draw. */
 const SUBJECT_CHARTS: readonly ((view: View, subject: Subject) => Chart | null)[] = [
@@ -56,4 +62,24 @@ export function chartsOf(view: View): ChartSet {
 
 export function everyChart(set: ChartSet): Chart[] {
   return [...[...set.bySubject.values()].flat(), ...[...set.byExplanation.values()].flat(), ...set.across];
+}
+
+const INSPECTION_CHARTS: readonly ((items: readonly InspectedView[]) => Chart | null)[] = [
+  figureByDimension,
+  lowBits,
+];
+
+/** Charts of an inspection: over all sources, and of each source by its anchor. */
+export function inspectionCharts(items: readonly InspectedView[]): InspectionCharts {
+  return {
+    across: present(INSPECTION_CHARTS.map((make) => make(items))),
+    bySource: new Map(items.map((item) => [item.view.slug, present([slice(item), gridOf(item)])])),
+  };
+}
+
+function gridOf({ view, inspection, pairs }: InspectedView): Chart | null {
+  const net = inspection.findings.net?.netPairs ?? null;
+  if (net === null || pairs === null) return null;
+  const { base, digits, dimension } = net;
+  return pairGrid({ slug: view.slug, source: inspection.choice.id, base, digits, dimension, values: pairs });
 }

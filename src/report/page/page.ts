@@ -1,8 +1,4 @@
-/**
- * The page: one file, whole without a network and without JavaScript. Its policy allows its own style sheet and script,
- * named by their hashes, and nothing else: no address is loaded, no text is evaluated.
- */
-import { createHash } from "node:crypto";
+/** The page of a study: its contents, its sections, and what the script needs. */
 import { type ChartSet } from "../charts/index.js";
 import { formatCount } from "../../findings/format.js";
 import type { View } from "../view.js";
@@ -13,21 +9,7 @@ import { methodSection } from "./method.js";
 import { problemSection } from "./problem-section.js";
 import { PAGE_SCRIPT } from "./script.js";
 import { sourceSection } from "./source-section.js";
-import { styleSheet } from "./style.js";
-
-function hashed(text: string): string {
-  return `'sha256-${createHash("sha256").update(text).digest("base64")}'`;
-}
-
-function policy(style: string): string {
-  return [
-    "default-src 'none'",
-    `style-src ${hashed(style)}`,
-    `script-src ${hashed(PAGE_SCRIPT)}`,
-    "base-uri 'none'",
-    "form-action 'none'",
-  ].join("; ");
-}
+import { shell } from "./shell.js";
 
 function contents(view: View, across: boolean): Markup {
   return html`<nav aria-label="Contents">
@@ -62,7 +44,6 @@ export function reportTitle(view: View): string {
 
 /** The text of index.html. */
 export async function page(view: View, charts: ChartSet): Promise<string> {
-  const style = styleSheet();
   const problems: Markup[] = [];
   for (const [i, subject] of view.subjects.entries()) {
     const explained = view.explained
@@ -77,57 +58,41 @@ export async function page(view: View, charts: ChartSet): Promise<string> {
     problems: view.subjects.map((s) => ({ id: s.problem.id, title: s.title })),
   };
   const title = reportTitle(view);
-  const whole = html`<!doctype html>
-    <html lang="en">
-      <head>
-        <meta charset="utf-8" />
-        <meta http-equiv="Content-Security-Policy" content="${policy(style)}" />
-        <meta name="viewport" content="width=device-width, initial-scale=1" />
-        <meta name="color-scheme" content="light dark" />
-        <meta name="referrer" content="no-referrer" />
-        <title>${title}</title>
-        ${raw(`<style>${style}</style>`)}
-      </head>
-      <body>
-        <div class="sheet">
-          ${contents(view, across.length > 0)}
-          <main>
-            <header>
-              <h1>${title}</h1>
-              <p class="soft">
-                ${formatCount(view.sources.length)} sources of points,
-                ${formatCount(view.record.cells.length)} measurements, seed ${view.record.spec.seed}.
-                <a href="#provenance">How to repeat it</a>.
-              </p>
-            </header>
-            ${answerSection(view)}
-            <section id="problems" data-section>
-              <h2>Problem by problem</h2>
-              ${problems}
-            </section>
-            <section id="sources" data-section>
-              <h2>Source by source</h2>
-              ${view.sources.map((source) => sourceSection(view, source))}
-            </section>
-            ${
-              across.length > 0 &&
-              html`<section id="across" data-section>
-                <h2>Across all problems</h2>
-                ${across}
-              </section>`
-            }
-            ${methodSection(view)}
-          </main>
-        </div>
-        <p id="following" role="status" hidden>
-          Following <strong id="following-name"></strong> through all figures.
-          <a id="following-about" href="#sources">About this source</a>
-          <button id="stop" type="button">Stop (Esc)</button>
+  return shell({
+    title,
+    contents: contents(view, across.length > 0),
+    main: html`<header>
+        <h1>${title}</h1>
+        <p class="soft">
+          ${formatCount(view.sources.length)} sources of points, ${formatCount(view.record.cells.length)}
+          measurements, seed ${view.record.spec.seed}.
+          <a href="#provenance">How to repeat it</a>.
         </p>
-        <div id="tip" role="tooltip" hidden></div>
-        ${raw(`<script type="application/json" id="facts">${embeddedJson(facts)}</script>`)}
-        ${raw(`<script>${PAGE_SCRIPT}</script>`)}
-      </body>
-    </html> `;
-  return whole.text;
+      </header>
+      ${answerSection(view)}
+      <section id="problems" data-section>
+        <h2>Problem by problem</h2>
+        ${problems}
+      </section>
+      <section id="sources" data-section>
+        <h2>Source by source</h2>
+        ${view.sources.map((source) => sourceSection(view, source))}
+      </section>
+      ${
+        across.length > 0 &&
+        html`<section id="across" data-section>
+          <h2>Across all problems</h2>
+          ${across}
+        </section>`
+      }
+      ${methodSection(view)}`,
+    after: html`<p id="following" role="status" hidden>
+        Following <strong id="following-name"></strong> through all figures.
+        <a id="following-about" href="#sources">About this source</a>
+        <button id="stop" type="button">Stop (Esc)</button>
+      </p>
+      <div id="tip" role="tooltip" hidden></div>
+      ${raw(`<script type="application/json" id="facts">${embeddedJson(facts)}</script>`)}`,
+    script: PAGE_SCRIPT,
+  });
 }

@@ -162,6 +162,13 @@ export const commands: readonly Command[] = [
     load: () => import("./commands/functions.js"),
   },
   {
+    name: "distributions",
+    positional: "",
+    summary: "list the distributions of inputs and their parameters",
+    options: { json },
+    load: () => import("./commands/distributions.js"),
+  },
+  {
     name: "estimators",
     positional: "",
     summary: "list the estimators",

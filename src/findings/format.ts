@@ -133,3 +133,14 @@ export function formatPercent(share: number): string {
 export function formatPValue(p: number): string {
   return p < 1e-12 ? "< 1e\u221212" : plain(p, 2);
 }
+
+/** The parameters of a distribution that a problem file gives, in brackets after its name; nothing where there are none. */
+export function formatParameters(
+  parameters: Readonly<Record<string, number | readonly number[]>> | undefined,
+): string {
+  const words = Object.entries(parameters ?? {}).map(([name, value]) => {
+    const text = typeof value === "number" ? String(value) : `${value.length} numbers`;
+    return `${name} ${text}`;
+  });
+  return words.length === 0 ? "" : ` (${words.join(", ")})`;
+}

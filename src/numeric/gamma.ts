@@ -1,5 +1,5 @@
 /**
- * The two pieces that let the density of a gamma, beta or binomial law with large parameters be written without
+ * Logarithm of the gamma function, and the two pieces that let the density of a gamma, beta or binomial law with large parameters be written without
  * cancellation: Stirling's error, by Stirling's series (Abramowitz & Stegun 1964, 6.1.41; DLMF 5.11.1), and the deviance
  * part (Loader, "Fast and accurate computation of binomial probabilities", 2000). Absolute error below 4e-15.
  */
@@ -38,4 +38,11 @@ export function deviancePart(x: number, m: number): number {
     if (next === total) return total;
     total = next;
   }
+}
+
+const HALF_LOG_TWO_PI = 0.9189385332046727;
+
+/** ln Gamma(x) for x > 0, to about 1e-14 of the larger of 1 and the result: Stirling's formula with its error above. */
+export function logGamma(x: number): number {
+  return stirlingError(x) + (x - 0.5) * Math.log(x) - x + HALF_LOG_TWO_PI;
 }

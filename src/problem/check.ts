@@ -8,6 +8,7 @@ import type { FormulaScope } from "../formula/contract.js";
 import { FUNCTIONS, NAMED_NUMBERS, RESERVED_WORDS, compileFormula } from "../formula/index.js";
 import type { Declared, Input, InUse, Problem, Reference, Tolerance } from "./contract.js";
 import { DEFAULT_CONFIDENCE, LIMITS } from "./defaults.js";
+import { readParameters } from "./parameters.js";
 import type { YamlDocument } from "./document.js";
 import { ProblemError, show } from "./errors.js";
 import { Findings } from "./findings.js";
@@ -72,13 +73,16 @@ async function checkInputs(
 ): Promise<Input[]> {
   const inputs: Input[] = [];
   let first = 0;
-  for (const [name, { distribution, length: raw }] of Object.entries(file)) {
+  for (const [name, { distribution, length: raw, ...given }] of Object.entries(file)) {
+    const parameters = await readParameters(distribution, given, ["inputs", name], numbers, findings);
     let length: number | null = null;
     if (raw !== undefined) {
       length = await numbers.read(raw, ["inputs", name, "length"], wholeFrom(1, LIMITS.dimension));
       if (length === null) continue;
     }
-    inputs.push({ name, distribution, length, first });
+    if (parameters === null) continue;
+    const own = Object.keys(parameters).length > 0 ? { parameters } : {};
+    inputs.push({ name, distribution, ...own, length, first });
     first += length ?? 1;
   }
   if (first > LIMITS.dimension) {

@@ -2,6 +2,7 @@
 import type { CompiledFormula, FormulaScope } from "../formula/contract.js";
 import { compileFormula } from "../formula/index.js";
 import type { Problem, Transform } from "./contract.js";
+import { lawOf } from "./distributions/registry.js";
 
 export interface CompiledProblem {
   readonly formula: CompiledFormula;
@@ -14,18 +15,21 @@ export function scopeOf({ inputs, constants }: Problem): FormulaScope {
   return { inputs: inputs.map(({ name, length, first }) => ({ name, length, first })), constants };
 }
 
-/** The passes that turn uniform coordinates into inputs, in order; neighbouring ones of one kind are one pass. */
+/** The passes that turn uniform coordinates into inputs: normals first, neighbouring ones in one pass, then the others. */
 export function transformsOf(problem: Problem): Transform[] {
-  const transforms: Transform[] = [];
-  for (const { distribution, first, length } of problem.inputs) {
-    if (distribution === "uniform") continue;
+  const normals: Transform[] = [];
+  const others: Transform[] = [];
+  for (const { distribution, parameters, first, length } of problem.inputs) {
     const rows = length ?? 1;
-    const before = transforms.at(-1);
-    if (before?.kind === distribution && before.first + before.rows === first) {
-      transforms[transforms.length - 1] = { ...before, rows: before.rows + rows };
-    } else transforms.push({ kind: distribution, first, rows });
+    for (const pass of lawOf(distribution, parameters).passes()) {
+      const before = normals.at(-1);
+      if (pass.kind !== "normal") others.push({ ...pass, first, rows });
+      else if (before !== undefined && before.first + before.rows === first) {
+        normals[normals.length - 1] = { ...before, rows: before.rows + rows };
+      } else normals.push({ ...pass, first, rows });
+    }
   }
-  return transforms;
+  return [...normals, ...others];
 }
 
 /** Compiles a problem. Throws FormulaError where the integrand is refused, which a problem from a file never is. */

@@ -1,9 +1,14 @@
 /** A problem as the program holds it after parsing and checking: plain data, JSON-serialisable, no functions. */
 
+import type { DistributionId } from "./distributions/registry.js";
+import type { ParameterValues, Pass } from "./distributions/contract.js";
+
 /** Inputs take their coordinates in order; a scalar has length null and takes one coordinate. */
 export interface Input {
   readonly name: string;
-  readonly distribution: "uniform" | "normal";
+  readonly distribution: DistributionId;
+  /** Parameters that the file gives; absent where all have their defaults. */
+  readonly parameters?: ParameterValues;
   readonly length: number | null;
   /** Index of its first coordinate, 0-based. */
   readonly first: number;
@@ -84,9 +89,8 @@ export interface Problem {
 }
 
 /** A change of uniform coordinates into inputs, done block by block before the integrand. */
-export interface Transform {
-  readonly kind: "normal";
+export type Transform = Pass & {
   /** First coordinate, 0-based, and how many follow it. */
   readonly first: number;
   readonly rows: number;
-}
+};

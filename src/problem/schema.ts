@@ -5,6 +5,7 @@
  * that clashes) is checked in check.ts.
  */
 import { z } from "zod";
+import { distributionIds, parameterNames } from "./distributions/registry.js";
 import { DEFAULT_CONFIDENCE, DEFAULT_SETTINGS, DEFAULT_SIZES_TEXT, LIMITS } from "./defaults.js";
 
 /** Names of inputs and constants: as a formula writes them. */
@@ -31,17 +32,36 @@ const constant = z.union(
   { error: "a number, a formula, a vector such as [1, 2, 3] or a matrix such as [[1, 2], [3, 4]]" },
 );
 
-const input = z.strictObject(
-  {
-    distribution: z
-      .enum(["uniform", "normal"], { error: '"uniform" (on 0 to 1) or "normal" (mean 0, variance 1)' })
-      .describe("`uniform` on (0, 1), or standard `normal`."),
-    length: number("a whole number of coordinates, 1 or more")
-      .optional()
-      .describe("Coordinates of a vector; without it the input is a single number."),
-  },
-  { error: "a mapping such as { distribution: normal, length: 64 }" },
-);
+/** Which distribution takes which parameter is checked in check.ts, where unknown keys are found too. */
+const input = z
+  .object(
+    {
+      distribution: z
+        .enum(distributionIds, {
+          error: "a distribution such as uniform or normal (`tolerand distributions` lists them)",
+        })
+        .describe("Law of every coordinate; `tolerand distributions` lists them with their parameters."),
+      length: number("a whole number of coordinates, 1 or more")
+        .optional()
+        .describe("Coordinates of a vector; without it the input is a single number."),
+    },
+    { error: "a mapping such as { distribution: normal, length: 64 }" },
+  )
+  .catchall(
+    z.union([z.number(), z.string().min(1), z.array(z.union([z.number(), z.string().min(1)])).min(1)], {
+      error: "a number, a formula, or a list of them",
+    }),
+  );
+
+/** The parameters of all distributions, as the published schema lists them beside an input's own keys. */
+function parameterProperties(): Record<string, z.core.JSONSchema.JSONSchema> {
+  const properties: Record<string, z.core.JSONSchema.JSONSchema> = {};
+  for (const [key, ids] of parameterNames()) {
+    const anyOf: z.core.JSONSchema.JSONSchema[] = [{ type: "number" }, { type: "string", minLength: 1 }];
+    properties[key] = { anyOf, description: `Parameter of ${ids.join(", ")}.` };
+  }
+  return properties;
+}
 
 const reference = z.strictObject(
   {
@@ -216,7 +236,16 @@ export type StudyFile = z.infer<typeof study>;
 
 /** The JSON Schema (draft 2020-12) of a problem file, as published by `tolerand schema`. */
 export function problemJsonSchema(): Record<string, unknown> {
-  return { ...z.toJSONSchema(problemSchema, { io: "input" }) };
+  return {
+    ...z.toJSONSchema(problemSchema, {
+      io: "input",
+      override: ({ zodSchema, jsonSchema }) => {
+        if (zodSchema !== (input as unknown)) return;
+        jsonSchema.properties = { ...jsonSchema.properties, ...parameterProperties() };
+        jsonSchema.additionalProperties = false;
+      },
+    }),
+  };
 }
 
 /** The JSON Schema (draft 2020-12) of `suite.yaml`. */

@@ -20,7 +20,8 @@ const problem = z.strictObject({
   inputs: z.array(
     z.strictObject({
       name,
-      distribution: z.enum(["uniform", "normal"]),
+      distribution: text,
+      parameters: z.record(name, z.union([number, z.array(number)])).optional(),
       length: orNull(z.int().min(1)),
       first: whole,
     }),

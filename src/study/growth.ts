@@ -27,10 +27,15 @@ const [FARTHER, BEYOND] = [1.2, 2];
 
 /** The first coordinate (0-based) towards whose edge |f - centre| grows beyond `reach`, its largest value inside; or null. */
 export function unboundedAlong(problem: RunnableProblem, centre: number, reach: number): number | null {
-  const integrator = new Integrator({ ...problem, transforms: [] });
+  const integrator = new Integrator({
+    ...problem,
+    transforms: problem.transforms.filter(({ kind }) => kind !== "normal"),
+  });
   const { dimension, blockPoints } = problem.formula;
   const normal = new Set(
-    problem.transforms.flatMap(({ first, rows }) => Array.from({ length: rows }, (_, k) => first + k)),
+    problem.transforms
+      .filter(({ kind }) => kind === "normal")
+      .flatMap(({ first, rows }) => Array.from({ length: rows }, (_, k) => first + k)),
   );
   const coordinates = integrator.kernels.arena.allocate(blockPoints * dimension * 8);
   const size = (j: number, value: number, base: number): number => {

@@ -7,6 +7,7 @@ import { instantiateKernels, type Kernels } from "../kernels/instance.js";
 import { LEAF_POINTS, MomentsTree, type TreeNode } from "../estimators/tree.js";
 import { momentsWidth, type Moments } from "../estimators/moments.js";
 import type { PointStream } from "../sources/contract.js";
+import { TransformPasses } from "./transform-passes.js";
 import type { RunnableProblem } from "./runnable.js";
 
 /** The first non-finite value met, and what the integrand was given there. */
@@ -44,7 +45,7 @@ export class Integrator {
   readonly #tree: MomentsTree;
   readonly #pool: number;
   readonly #scratch: number;
-  readonly #transformScratch: number;
+  readonly #passes: TransformPasses;
 
   constructor(problem: RunnableProblem) {
     const { formula } = problem;
@@ -61,7 +62,7 @@ export class Integrator {
     this.#tree = new MomentsTree(this.kernels, channels);
     this.#pool = arena.allocate(pool.byteLength);
     this.#scratch = arena.allocate(scratchBytes);
-    this.#transformScratch = arena.allocate(this.kernels.exports.normalBlockScratch());
+    this.#passes = new TransformPasses(this.kernels, problem.transforms, this.#x, blockPoints);
     this.kernels.f64(this.#pool, pool.length).set(pool);
     this.kernels.f64(this.#x, blockPoints * dimension).fill(0.5);
   }
@@ -104,7 +105,7 @@ export class Integrator {
     stream.fill(coordinates, blockPoints, count);
     const size = blockPoints * dimension;
     this.kernels.f64(this.#x, size).set(this.kernels.f64(coordinates, size));
-    this.#transform(count);
+    this.#passes.run(count);
     this.#evaluate(this.#x, this.#values, count, this.#pool, this.#scratch);
     return this.#values;
   }
@@ -113,18 +114,9 @@ export class Integrator {
   #evaluateBlock(stream: PointStream, count: number): number {
     const { blockPoints, channels } = this.#problem.formula;
     stream.fill(this.#x, blockPoints, count);
-    this.#transform(count);
+    this.#passes.run(count);
     this.#evaluate(this.#x, this.#values, count, this.#pool, this.#scratch);
     return this.kernels.exports.leafMoments(this.#values, blockPoints, channels, count, this.#rows);
-  }
-
-  /** Uniform coordinates of the block become inputs, in place. */
-  #transform(count: number): void {
-    const { blockPoints } = this.#problem.formula;
-    for (const { first, rows } of this.#problem.transforms) {
-      const at = this.#x + first * blockPoints * 8;
-      this.kernels.exports.normalBlock(at, blockPoints, rows, count, this.#transformScratch);
-    }
   }
 
   /** Pushes the whole leaves of the block from leaf `pushed` on that end at point `end` or before; gives the next leaf. */

@@ -8,6 +8,7 @@ import { parseYaml } from "../../src/problem/document.js";
 import { loadPaths } from "../../src/problem/load.js";
 import { problemTemplate } from "../../src/problem/template.js";
 import { instantiateKernels } from "../../src/kernels/instance.js";
+import { TransformPasses } from "../../src/study/transform-passes.js";
 import { Engine } from "./engine.js";
 import { fileWith, problemIn, refusal } from "./text.js";
 
@@ -27,12 +28,9 @@ test("normal inputs that are neighbours are one pass", async () => {
 function inputsAt(problem: Problem, coordinates: readonly number[]): number[] {
   const kernels = instantiateKernels();
   const row = kernels.arena.allocate(problem.dimension * 8 * 8);
-  const scratch = kernels.arena.allocate(kernels.exports.normalBlockScratch());
   const block = kernels.f64(row, problem.dimension * 8);
   coordinates.forEach((value, j) => block.fill(value, j * 8, j * 8 + 8));
-  for (const { first, rows } of transformsOf(problem)) {
-    kernels.exports.normalBlock(row + first * 64, 8, rows, 1, scratch);
-  }
+  new TransformPasses(kernels, transformsOf(problem), row, 8).run(1);
   return coordinates.map((_, j) => kernels.f64(row, problem.dimension * 8)[j * 8] ?? NaN);
 }
 

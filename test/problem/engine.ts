@@ -4,6 +4,7 @@ import type { Kernels } from "../../src/kernels/instance.js";
 import type { CompiledProblem } from "../../src/problem/compile.js";
 import { makeKey } from "../../src/sources/key.js";
 import { findSource } from "../../src/sources/registry.js";
+import { TransformPasses } from "../../src/study/transform-passes.js";
 
 type Integrand = (x: number, result: number, count: number, pool: number, scratch: number) => void;
 
@@ -11,7 +12,8 @@ export class Engine {
   readonly kernels: Kernels;
   readonly #problem: CompiledProblem;
   readonly #integrand: Integrand;
-  readonly #addresses: { x: number; result: number; pool: number; scratch: number; normal: number };
+  readonly #passes: TransformPasses;
+  readonly #addresses: { x: number; result: number; pool: number; scratch: number };
 
   constructor(problem: CompiledProblem) {
     const { moduleBytes, exportName, dimension, blockPoints, pool, scratchBytes } = problem.formula;
@@ -24,18 +26,15 @@ export class Engine {
       result: arena.allocate(blockPoints * 8),
       pool: arena.allocate(pool.byteLength),
       scratch: arena.allocate(scratchBytes),
-      normal: arena.allocate(exports.normalBlockScratch()),
     };
     this.kernels.f64(this.#addresses.pool, pool.length).set(pool);
+    this.#passes = new TransformPasses(this.kernels, problem.transforms, this.#addresses.x, blockPoints);
   }
 
   /** Values of the integrand at the points that stand in the block as uniform coordinates. */
   #values(count: number): Float64Array {
-    const { blockPoints } = this.#problem.formula;
-    const { x, result, pool, scratch, normal } = this.#addresses;
-    for (const { first, rows } of this.#problem.transforms) {
-      this.kernels.exports.normalBlock(x + first * blockPoints * 8, blockPoints, rows, count, normal);
-    }
+    const { x, result, pool, scratch } = this.#addresses;
+    this.#passes.run(count);
     this.#integrand(x, result, count, pool, scratch);
     return this.kernels.f64(result, count);
   }

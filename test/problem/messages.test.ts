@@ -12,7 +12,7 @@ describe("form", () => {
 
   test("an unknown key further down says where", async () => {
     expect(await refusal(fileWith({ inputs: "{ x: { distribution: uniform, lenght: 3 } }" }))).toEqual([
-      'case.yaml:1:39: unknown key "lenght" in inputs.x; did you mean "length"? known keys here: distribution, length',
+      'case.yaml:1:39: unknown key "lenght" in inputs.x; did you mean "length"? known keys here: distribution, length, from, to',
     ]);
     expect(await refusal(fileWith({ study: "{ replicats: 3 }" }))).toEqual([
       'case.yaml:4:10: unknown key "replicats" in study; did you mean "replicates"? known keys here: sources, sizes, ' +
@@ -43,7 +43,7 @@ describe("form", () => {
     [
       "inputs",
       "{ x: { distribution: normall } }",
-      '1:30: inputs.x.distribution: expected "uniform" (on 0 to 1) or "normal" (mean 0, variance 1), found "normall"',
+      '1:30: inputs.x.distribution: expected a distribution such as uniform or normal (`tolerand distributions` lists them), found "normall"',
     ],
     [
       "inputs",
@@ -238,7 +238,7 @@ describe("meaning", () => {
 
   test("all findings of a file come together, from the top down", async () => {
     const text = fileWith({
-      inputs: "{ x: { distribution: gamma } }",
+      inputs: "{ x: { distribution: gama } }",
       tolerance: "{ absolute: -1, confidence: 2 }",
       study: "{ replicates: 0 }",
     });

@@ -50,6 +50,8 @@ test("the published schema refuses what the program refuses", () => {
   expect(validate({ ...good, tolerence: 1 })).toBe(false);
   expect(validate({ ...good, integrand: 5 })).toBe(false);
   expect(validate({ ...good, inputs: { x: { distribution: "normall" } } })).toBe(false);
+  expect(validate({ ...good, inputs: { x: { distribution: "weibull", shape: 2 } } })).toBe(true);
+  expect(validate({ ...good, inputs: { x: { distribution: "weibull", shap: 2 } } })).toBe(false);
   expect(validate({ ...good, inputs: { "2x": { distribution: "normal" } } })).toBe(false);
   expect(validate({ integrand: "x", tolerance: {} })).toBe(false);
 });

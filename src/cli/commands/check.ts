@@ -1,9 +1,10 @@
 /** `tolerand check PATH…`: what the program understands of a problem file, before anything is run. */
-import { formatValue } from "../../findings/format.js";
+import { formatParameters, formatValue } from "../../findings/format.js";
 import { describeFormula, type FormulaDescription } from "../../formula/index.js";
 import type { Problem } from "../../problem/contract.js";
 import { loadPaths, type LoadedProblem } from "../../problem/load.js";
 import { scopeOf } from "../../problem/compile.js";
+import { lawOf } from "../../problem/distributions/registry.js";
 import type { ResolvedSettings } from "../../problem/settings.js";
 import { jsonText } from "../../record/json.js";
 import { buildSpec, settingsOf } from "../../study/settings.js";
@@ -69,13 +70,19 @@ function words(checked: Checked, resolved: boolean): string {
   const { problem, file, formula, settings, at } = checked;
   const shapes = [...formula.names.map(({ name, shape }) => `${name} ${shape}`), `value ${formula.result}`];
   const inputs = problem.inputs.map(
-    ({ name, distribution, length }) => `${name} ${distribution}${length === null ? "" : ` × ${length}`}`,
+    ({ name, distribution, parameters, length }) =>
+      `${name} ${distribution}${formatParameters(parameters)}${length === null ? "" : ` × ${length}`}`,
   );
+  const moments = problem.inputs.map(({ name, distribution, parameters }) => {
+    const { mean, variance } = lawOf(distribution, parameters);
+    return `${name} mean ${momentWords(mean)}, variance ${momentWords(variance)}`;
+  });
   const { reference, tolerance, inUse } = problem;
   const relative = tolerance.relative === null ? "" : `${tolerance.relative} of ${tolerance.to}`;
   const lines = [
     `${problem.title} (${problem.id}, ${file})`,
     `  inputs      ${inputs.join(", ")}; dimension ${problem.dimension}`,
+    `  moments     ${moments.slice(0, 12).join("; ")}${moments.length > 12 ? "; …" : ""}`,
     `  constants   ${Object.keys(problem.constants).join(", ") || "none"}`,
     `  formula     ${shapes.join(", ")}`,
     reference === null
@@ -96,6 +103,11 @@ function words(checked: Checked, resolved: boolean): string {
   if (at !== null)
     lines.push(`  value       ${at.value} at ${shortList(at.coordinates)}, inputs ${shortList(at.inputs)}`);
   return `${lines.join("\n")}\n`;
+}
+
+function momentWords(value: number): string {
+  if (Number.isNaN(value)) return "none";
+  return value === Infinity ? "infinite" : formatValue(value);
 }
 
 function shortList(values: readonly number[]): string {

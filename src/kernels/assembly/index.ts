@@ -4,6 +4,7 @@ export * from "./generators/index";
 export * from "./sequences/index";
 export * from "./sums/index";
 export * from "./discrepancy/index";
+export * from "./distributions/index";
 
 /** First byte of memory that no static table uses; the host's arena begins here. */
 export function heapBase(): usize {

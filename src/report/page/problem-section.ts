@@ -2,7 +2,13 @@
 import type { Input } from "../../problem/contract.js";
 import type { Chart } from "../charts/chart.js";
 import { jsonText } from "../../record/json.js";
-import { formatCount, formatPValue, formatValue, plainNumber } from "../../findings/format.js";
+import {
+  formatCount,
+  formatParameters,
+  formatPValue,
+  formatValue,
+  plainNumber,
+} from "../../findings/format.js";
 import type { ExplainedRow, Subject } from "../view.js";
 import { reachWords, referenceWords, toleranceWords, verdictRows } from "../verdict-row.js";
 import { explanationBlock, hazards, whyLink } from "./explanation-section.js";
@@ -11,7 +17,7 @@ import { type Markup, html } from "./html.js";
 import { paragraphs, sourceName, tied, verdictMark } from "./parts.js";
 
 function inputWords(input: Input): string {
-  return `${input.name}: ${input.length === null ? "" : `${formatCount(input.length)} `}${input.distribution}`;
+  return `${input.name}: ${input.length === null ? "" : `${formatCount(input.length)} `}${input.distribution}${formatParameters(input.parameters)}`;
 }
 
 /** Constants longer than this are cut; the record holds them whole. */

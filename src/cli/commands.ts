@@ -105,6 +105,21 @@ export const commands: readonly Command[] = [
     load: () => import("./commands/probe.js"),
   },
   {
+    name: "plan",
+    positional: "<paths..>",
+    summary: "points and cost that bring each source inside the tolerance, from a small pilot or a record",
+    options: {
+      ...studySettings,
+      "seconds-per-point": text("seconds of one evaluation in your own program"),
+      randomisations: text("independent randomisations that the estimate is the mean of (default: 1)"),
+      time: text("a time budget in seconds: the smallest error that it buys"),
+      threads,
+      "allow-programs": allowPrograms,
+      json,
+    },
+    load: () => import("./commands/plan.js"),
+  },
+  {
     name: "check",
     positional: "<paths..>",
     summary: "validate problem files and print what the program understood",

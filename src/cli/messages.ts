@@ -22,6 +22,9 @@ export const messages = {
     `internal error: ${message}\nThis is a fault of the program, not of your input. Run again with TOLERAND_TRACE=1 to see where it happened.`,
   wholeNumber: (flag: string, least: number, found: string) =>
     `--${flag}: expected a whole number of at least ${least}, found "${found}"`,
+  positive: (flag: string, found: string) => `--${flag}: expected a number above 0, found "${found}"`,
+  oneRecord: (found: number) =>
+    `paths: expected one record, or problems without records, found ${found} paths; plan them one at a time`,
   interrupted: (folder: string, command: string) =>
     `Interrupted. What is done stands in ${folder}.\nNext: ${command}${command.includes(" --resume") ? "" : " --resume"}\n`,
   cycleInterrupted: (file: string, command: string) =>

@@ -56,3 +56,12 @@ export function textOrFile(text: string, flag: string, io: Io): string {
     throw new InputError(`--${flag}: cannot read "${text.slice(1)}"; give an existing file behind @`);
   }
 }
+
+/** A number above 0; null where the flag was not given. */
+export function positiveFlag(args: Arguments, name: string): number | null {
+  const text = textFlag(args, name);
+  if (text === null) return null;
+  const value = text.trim() === "" ? NaN : Number(text);
+  if (!(value > 0 && Number.isFinite(value))) throw new InputError(messages.positive(name, text));
+  return value;
+}

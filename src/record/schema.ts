@@ -183,6 +183,7 @@ const recordSchema = z
     schema: z.literal(RECORD_SCHEMA),
     spec: z
       .strictObject({
+        purpose: z.literal("pilot").optional(),
         problems: z.array(problem),
         sources: z.record(text, z.array(sourceSpec)),
         sizes: z.record(text, z.array(whole)),

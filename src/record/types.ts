@@ -11,6 +11,8 @@ export const RECORD_SCHEMA = "tolerand/record/1";
 
 /** What was asked, resolved: the canonical text of this, hashed, names the study. */
 export interface StudySpec {
+  /** Present for the pilot of a plan, whose points have keys of their own; absent for a study. */
+  readonly purpose?: "pilot";
   readonly problems: readonly Problem[];
   /** For each problem id: the sources, as canonical ids or the user's own descriptions. */
   readonly sources: Readonly<Record<string, readonly SourceSpec[]>>;

@@ -25,7 +25,11 @@ export function validSizes(choice: SourceChoice, sizes: readonly number[]): numb
 function sizesFor(spec: StudySpec, problem: Problem, choice: SourceChoice): number[] {
   const sizes = spec.sizes[problem.id] ?? [];
   const { inUse } = problem;
-  const own = inUse !== null && choice.id === parseSource(inUse.source).id && inUse.points <= LARGEST_IN_USE;
+  const own =
+    spec.purpose === undefined &&
+    inUse !== null &&
+    choice.id === parseSource(inUse.source).id &&
+    inUse.points <= LARGEST_IN_USE;
   return validSizes(choice, own ? [...sizes, inUse.points] : sizes);
 }
 
@@ -63,7 +67,13 @@ export function studyTasks(spec: StudySpec): Task[] {
   return rows(spec).flatMap((row) => {
     const replicates = row.choice.deterministic ? 1 : (spec.replicates[row.problem.id] ?? 1);
     const sizes = sizesFor(spec, row.problem, row.choice);
-    return planTasks({ ...request(spec, row), purpose: "study", replicates, sizes, before: 0 });
+    return planTasks({
+      ...request(spec, row),
+      purpose: spec.purpose ?? "study",
+      replicates,
+      sizes,
+      before: 0,
+    });
   });
 }
 

@@ -1,0 +1,94 @@
+/** `tolerand plan PATH…`: from a pilot on keys of its own (or from a record) to points, cost and a recommendation. */
+import { relative, resolve } from "node:path";
+import { planOf, type PlanOptions } from "../../findings/plan.js";
+import { loadPaths, type LoadedProblems } from "../../problem/load.js";
+import { parseSizes } from "../../problem/sizes.js";
+import { runStudy } from "../../recipe.js";
+import { jsonText } from "../../record/json.js";
+import type { StudyRecord } from "../../record/types.js";
+import { planText } from "../../report/plan-text.js";
+import { parseSource } from "../../sources/choice.js";
+import { threads } from "../../study/executor.js";
+import { startProgress } from "../../study/progress.js";
+import { tryPrograms } from "../../study/programs.js";
+import { prepareProblems } from "../../study/runnable.js";
+import { buildSpec } from "../../study/settings.js";
+import { EXIT, type Arguments, type Io } from "../command.js";
+import { environmentOf } from "../environment.js";
+import { asInput, InputError } from "../errors.js";
+import { messages } from "../messages.js";
+import { booleanFlag, positiveFlag, textFlags, threadCount, wholeFlag } from "../read.js";
+import { isRecord, readRecord } from "../read-record.js";
+import { settingsFromFlags } from "../study-flags.js";
+
+/** Sizes of a pilot: enough doublings for a slope, a sixteenth of the largest size of a default study. */
+const PILOT_SIZES = "2^8..2^14";
+
+export async function run(args: Arguments, io: Io): Promise<number> {
+  const randomisations = wholeFlag(args, "randomisations", 1) ?? 1;
+  const secondsPerPoint = positiveFlag(args, "seconds-per-point");
+  const seconds = positiveFlag(args, "time");
+  const paths = textFlags(args, "paths");
+  const given = await recordOf(paths, io);
+  const loaded = given === null ? await loadPaths(paths, parseSource) : { name: "", problems: [] };
+  const record = given ?? (await pilot(loaded, args, io));
+  if (!record.environment.complete) return EXIT.interrupted;
+
+  const specs = new Map(
+    Object.values(record.spec.sources).flatMap((list) => list.map((spec) => [parseSource(spec).id, spec])),
+  );
+  const options: PlanOptions = {
+    randomisations,
+    secondsPerPoint,
+    seconds,
+    nearestSize: (source, n) => parseSource(specs.get(source) ?? source).source.nearestSize(n),
+  };
+  const plans = planOf(record, options);
+  const from = given === null ? "pilot" : "record";
+  if (booleanFlag(args, "json")) io.stdout.write(`${jsonText({ from, plans }, 2)}\n`);
+  else io.stdout.write(planText(plans));
+  for (const warning of record.warnings) io.stderr.write(`note: ${warning}\n`);
+  const [first] = plans.flatMap(({ recommended }) => recommended ?? []);
+  if (first?.point) {
+    const { source, randomisations: m, point, replicates } = first;
+    const file = loaded.problems.find(({ problem }) => problem.id === first.problem)?.document.file;
+    const path = file === undefined ? first.problem : relative(io.cwd, resolve(io.cwd, file));
+    io.stderr.write(
+      messages.next(
+        `tolerand study ${path} --sources ${source} --sizes ${point.n / m} --replicates ${replicates}`,
+      ),
+    );
+  }
+  return EXIT.done;
+}
+
+/** The record that a plan is made from without a run; null where the paths name problems. */
+async function recordOf(paths: readonly string[], io: Io): Promise<StudyRecord | null> {
+  const flags = await Promise.all(paths.map((path) => isRecord(path, io)));
+  if (!flags.includes(true)) return null;
+  if (paths.length > 1) throw new InputError(messages.oneRecord(paths.length));
+  return (await readRecord(paths[0] ?? "", io)).record;
+}
+
+/** A small study of every problem and source with keys of its own. */
+async function pilot(loaded: LoadedProblems, args: Arguments, io: Io): Promise<StudyRecord> {
+  const flags = settingsFromFlags(args, io);
+  const built = asInput(() => buildSpec(loaded.problems, { sizes: parseSizes(PILOT_SIZES), ...flags }));
+  const spec = { ...built.spec, purpose: "pilot" as const };
+  const problems = await prepareProblems(spec.problems);
+  const allowPrograms = booleanFlag(args, "allow-programs");
+  const notes = asInput(() => tryPrograms(spec, allowPrograms));
+  const count = threadCount(args);
+  const executor = threads(problems, count, { allowPrograms });
+  const started = Date.now();
+  return runStudy({
+    spec,
+    problems,
+    executor,
+    journal: { done: new Map(), add: () => undefined },
+    signal: io.signal,
+    stage: (title, work) => startProgress(title === "study" ? "pilot" : title, work, io.stderr),
+    environment: (complete) => environmentOf(io, { threads: count, started, complete }),
+    warnings: [...built.warnings, ...notes],
+  }).finally(() => executor.close());
+}

@@ -11,6 +11,7 @@ import { fileURLToPath } from "node:url";
 import { sobol } from "../dist/sources/sobol.js";
 import { engineRates } from "./engine.mjs";
 import { fullCycleTable } from "./full-cycle.mjs";
+import { shortestVectorTable } from "./shortest-vectors.mjs";
 import { constructionTable, sourceTable } from "./sources.mjs";
 import { memoryTable, studyTable, threadTable } from "./study.mjs";
 import { insert, median, table } from "./table.mjs";
@@ -121,6 +122,7 @@ try {
     memory: () => memoryTable(),
     study: () => studyTable(),
     "full-cycle": () => fullCycleTable(ROUNDS),
+    "shortest-vectors": () => shortestVectorTable(ROUNDS),
   };
   const asked = process.argv.slice(2).filter((word) => word !== "--write");
   const unknown = asked.find((name) => !Object.hasOwn(all, name));

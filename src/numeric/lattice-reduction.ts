@@ -12,6 +12,13 @@ export type Row = readonly bigint[];
 /** Lovász's condition with delta = 99/100. */
 const [DELTA, DELTA_UNIT] = [99n, 100n];
 
+/**
+ * From this dimension on rows are inserted deeply too (C. P. Schnorr and M. Euchner, "Lattice basis reduction", Mathematical
+ * Programming 66 (1994) 181-199): enumeration in 45 dimensions then takes a fraction of the steps.
+ */
+const DEEP_FROM = 24;
+const DEEP_DELTA = 0.99;
+
 export class ReducedBasis {
   readonly #rows: bigint[][] = [];
   /** #determinants[i] is the Gram determinant of the first i rows. */
@@ -33,6 +40,7 @@ export class ReducedBasis {
     this.#rows.push([...row]);
     this.#orthogonalise(this.#rows.length - 1);
     this.#reduce(this.#rows.length - 1);
+    if (this.size >= DEEP_FROM) this.#insertDeeply();
   }
 
   /** Squared length of b*_i and the coefficients mu_ij, as doubles within 2 ulp, row after row. */
@@ -94,6 +102,28 @@ export class ReducedBasis {
         k = Math.max(1, k - 1);
       }
     }
+  }
+
+  /** Moves each row to the first place at which it is shorter than what stands there, orthogonal to the rows before it. */
+  #insertDeeply(): void {
+    for (let k = 1; k < this.size;) {
+      for (let l = k - 1; l >= 0; l--) this.#shorten(k, l);
+      const place = this.#placeOf(k);
+      for (let j = k; j > place; j--) this.#swap(j);
+      k = place === k ? k + 1 : Math.max(1, place);
+    }
+  }
+
+  /** In doubles: which place is taken decides how good the basis is, never whether it is one. */
+  #placeOf(k: number): number {
+    const row = this.#rows[k] ?? [];
+    let rest = Number(dot(row, row));
+    for (let i = 0; i < k; i++) {
+      const length = ratio(this.#d(i + 1), this.#d(i));
+      if (rest < DEEP_DELTA * length) return i;
+      rest -= ratio(this.#l(k, i), this.#d(i + 1)) ** 2 * length;
+    }
+    return k;
   }
 
   #lovasz(k: number): boolean {

@@ -45,20 +45,22 @@ export function aliasVectors(set: AliasSet, dimension: number, wanted: number): 
       const h = sparse(indices, v);
       const first = set.stationary ? (h.indices[0] ?? 0) : 0;
       const at = { indices: h.indices.map((index) => index - first), entries: h.entries };
-      found.set(`${at.indices.join()}:${at.entries.join()}`, at);
+      found.set(keyOf(at), at);
     }
     for (const row of basis.rows) {
       const h = sparse(indices, row.map(Number));
       if (shortest === null || squaredLength(h) < squaredLength(shortest)) shortest = h;
     }
   }
-  for (const h of [...found.values()]) {
+  const nearest = inOrder([...found.values()]).slice(0, wanted);
+  const all = new Map(nearest.map((h) => [keyOf(h), h]));
+  for (const h of nearest) {
     for (let k = 2; k <= MULTIPLES; k++) {
-      const entries = h.entries.map((entry) => k * entry);
-      found.set(`${h.indices.join()}:${entries.join()}`, { indices: h.indices, entries });
+      const multiple = { indices: h.indices, entries: h.entries.map((entry) => k * entry) };
+      all.set(keyOf(multiple), multiple);
     }
   }
-  const shapes = inOrder([...found.values()]);
+  const shapes = inOrder([...all.values()]);
   for (const h of shapes) if (shortest === null || squaredLength(h) < squaredLength(shortest)) shortest = h;
   const vectors: SparseVector[] = [];
   for (const h of shapes) {
@@ -66,6 +68,10 @@ export function aliasVectors(set: AliasSet, dimension: number, wanted: number): 
     vectors.push(...(set.stationary ? moved(h, dimension) : [h]));
   }
   return { vectors: vectors.slice(0, wanted), shortest };
+}
+
+function keyOf({ indices, entries }: SparseVector): string {
+  return `${indices.join()}:${entries.join()}`;
 }
 
 /** The vectors up to the first length at which there are `enough`. */

@@ -29,6 +29,9 @@ export interface KnownStructure {
 /** Vectors that are looked at, at most. */
 const MOST_VECTORS = 512;
 
+/** Walsh functions, which cost more to evaluate. */
+const MOST_FUNCTIONS = 256;
+
 /** The structure of `choice` in `dimension` coordinates, its first n points where n matters. */
 export function knownStructure(
   choice: SourceChoice,
@@ -83,7 +86,9 @@ function netStructure(source: DigitalNet, dimension: number, n: number): KnownSt
     };
   }
   const net = netOfSource(source, dimension, n);
-  const waves = walshVectors(net).map((vector): Wave => ({ vector, size: 1, phase: 0, walsh: base }));
+  const waves = walshVectors(net)
+    .slice(0, MOST_FUNCTIONS)
+    .map((vector): Wave => ({ vector, size: 1, phase: 0, walsh: base }));
   return {
     structure: {
       kind: "net",

@@ -20,9 +20,9 @@ const REPLICATES = 32;
 /** Points of a replicate, from the first to the last attempt. */
 const POINTS = [2 ** 12, 2 ** 14, 2 ** 16, 2 ** 18];
 
-/** Work of the last attempt at most: points times (coordinates and waves, weighted by what they cost); some 2 s. */
+/** Work in all at most, about: points times (coordinates and waves, weighted by what they cost); some 2 s. */
 const MOST_WORK = 2e9;
-const WORK = { coordinate: 10, wave: 6 };
+const WORK = { coordinate: 10, wave: 6, walsh: 30 };
 
 /** The prediction's standard error that is aimed at: this share of the measured bias, or the measurement's own. */
 const WANTED_SHARE = 0.01;
@@ -59,11 +59,13 @@ export function predictBias(
   const { seed, centre } = request;
   estimator.learn({ seed, first: FIRST.learning, points: LEARNING_POINTS, centre });
   const pilot = estimator.estimate(waves, { seed, first: FIRST.choosing, ...PILOT, centre });
+  let left = MOST_WORK;
   for (let pairs = choosePairs(pilot, waves.length); ; pairs *= 2) {
     const chosen = waves.slice(0, 2 * pairs);
-    const final = estimateToGoal(estimator, chosen, pairs, request);
+    const final = estimateToGoal(estimator, chosen, pairs, request, left);
+    left -= final.work;
     const predicted = predictedOf(final, pairs, states, { ...request, source: estimator.source.id });
-    if (predicted.stable || !shows(predicted.tail) || 4 * pairs > waves.length)
+    if (predicted.stable || !shows(predicted.tail) || 4 * pairs > waves.length || left <= 0)
       return { predicted, waves: chosen, contributions: final.sums.contributions };
   }
 }
@@ -112,27 +114,32 @@ function choosePairs(sums: AliasSums, available: number): number {
 interface Final {
   readonly sums: AliasSums;
   readonly points: number;
+  /** Of all attempts. */
+  readonly work: number;
 }
 
-/** As many points as the goal takes, within the work allowed. */
+/** As many points as the goal takes, within the work allowed; the fewest in any case. */
 function estimateToGoal(
   estimator: AliasEstimator,
   waves: readonly Wave[],
   pairs: number,
   { seed, centre, measured, problem }: PredictionRequest,
+  allowed: number,
 ): Final {
-  const unit = problem.formula.dimension * WORK.coordinate + waves.length * WORK.wave;
+  const perWave = (waves[0]?.walsh ?? null) === null ? WORK.wave : WORK.walsh;
+  const perPoint = problem.formula.dimension * WORK.coordinate + waves.length * perWave;
   const [first = 0, ...more] = POINTS;
-  const at = (points: number): Final => {
+  const at = (points: number, before: number): Final => {
     const sample = { seed, first: FIRST.final, replicates: REPLICATES, points, centre };
-    return { sums: estimator.estimate(waves, sample), points };
+    const work = before + points * REPLICATES * perPoint;
+    return { sums: estimator.estimate(waves, sample), points, work };
   };
-  let final = at(first);
+  let final = at(first, 0);
   for (const points of more) {
     const { mean, error } = spreadOf(firstOf(final.sums, pairs));
     const goal = Math.max(WANTED_SHARE * Math.abs(measured?.value ?? mean), measured?.standardError ?? 0);
-    if (error <= goal || points * REPLICATES * unit > MOST_WORK) break;
-    final = at(points);
+    if (error <= goal || final.work + points * REPLICATES * perPoint > allowed) break;
+    final = at(points, final.work);
   }
   return final;
 }

@@ -1,11 +1,25 @@
 /** The parameters of an input's distribution: which there are, their numbers, and what they must be together. */
 import type { Path } from "./document.js";
-import type { ParameterValues } from "./distributions/contract.js";
-import { distributionOf } from "./distributions/registry.js";
+import type { Parameter, ParameterValues } from "./distributions/contract.js";
+import { distributionOf, lawOf } from "./distributions/registry.js";
 import type { DistributionId } from "./distributions/registry.js";
 import { show } from "./errors.js";
 import type { Findings } from "./findings.js";
 import type { NumberReader, Raw } from "./numbers.js";
+
+async function readList(
+  raw: readonly Raw[],
+  path: Path,
+  parameter: Parameter,
+  numbers: NumberReader,
+): Promise<number[] | null> {
+  const list: number[] = [];
+  for (const [i, item] of raw.entries()) {
+    const value = await numbers.read(item, [...path, i], parameter);
+    if (value !== null) list.push(value);
+  }
+  return list.length === raw.length ? list : null;
+}
 
 /** The parameters that `given` (the keys of an input beside its own) sets, or null after a finding. */
 export async function readParameters(
@@ -16,7 +30,7 @@ export async function readParameters(
   findings: Findings,
 ): Promise<ParameterValues | null> {
   const distribution = distributionOf(id);
-  const values: Record<string, number> = {};
+  const values: Record<string, number | readonly number[]> = {};
   const known = ["distribution", "length", ...Object.keys(distribution.parameters)];
   let whole = true;
   for (const [key, raw] of Object.entries(given)) {
@@ -24,6 +38,12 @@ export async function readParameters(
     if (parameter === undefined) {
       findings.unknownKey([...path, key], known);
       whole = false;
+    } else if (parameter.list) {
+      const list = typeof raw === "object" ? await readList(raw, [...path, key], parameter, numbers) : null;
+      if (list !== null) values[key] = list;
+      else whole = false;
+      if (typeof raw !== "object")
+        findings.add([...path, key], `expected a list of numbers, found ${show(raw)}`);
     } else if (typeof raw === "object") {
       findings.add([...path, key], `expected ${parameter.what}, found ${show(raw)}`);
       whole = false;
@@ -37,7 +57,7 @@ export async function readParameters(
     if (parameter.default !== undefined || Object.hasOwn(given, key)) continue;
     findings.addKey(
       path,
-      `${path.join(".")}: ${key} is missing; ${id} needs it: expected ${parameter.what}, or a formula`,
+      `${path.join(".")}: ${key} is missing; ${id} needs it: expected ${parameter.list ? "a list, each " : ""}${parameter.what}, or a formula`,
     );
     whole = false;
   }
@@ -47,6 +67,13 @@ export async function readParameters(
     distribution.check?.({ ...(Object.fromEntries(defaults) as ParameterValues), ...values }) ?? null;
   if (wrong !== null) {
     findings.add(path, wrong);
+    return null;
+  }
+  try {
+    lawOf(id, values).passes();
+  } catch (error) {
+    if (!(error instanceof RangeError)) throw error;
+    findings.add(path, `${error.message}; take other parameters`);
     return null;
   }
   return values;

@@ -8,6 +8,8 @@ export interface Parameter {
   readonly holds: (x: number) => boolean;
   /** Absent where the problem file has to give it. */
   readonly default?: number;
+  /** True where it is a list, each number of which is in the range. */
+  readonly list?: true;
 }
 
 /** Parameters by name; those of a list (values, probabilities) are vectors. */

@@ -29,6 +29,11 @@ export function positive(about: string, standard?: number): Parameter {
   return { about, what: "a number from 1e-100 to 1e100", holds, ...optional(standard) };
 }
 
+export function whole(about: string, least: number, most: number): Parameter {
+  const holds = (x: number): boolean => Number.isInteger(x) && x >= least && x <= most;
+  return { about, what: `a whole number from ${least} to ${most}`, holds };
+}
+
 /** A positive number between two bounds that the tables (or the elementary functions) serve. */
 export function between(about: string, least: number, most: number, standard?: number): Parameter {
   const holds = (x: number): boolean => x >= least && x <= most;
@@ -47,6 +52,13 @@ export function numberAt(values: ParameterValues, name: string): number {
   if (typeof value !== "number")
     throw new TypeError(`parameter ${name}: expected a number, found ${typeof value}`);
   return value;
+}
+
+/** The numbers of a list parameter that has been checked. */
+export function listAt(values: ParameterValues, name: string): readonly number[] {
+  const value = values[name];
+  if (!Array.isArray(value)) throw new TypeError(`parameter ${name}: expected a list, found ${typeof value}`);
+  return value as readonly number[];
 }
 
 export function closed(form: number, location: number, scale: number, shape = 0): Pass {

@@ -1,5 +1,18 @@
 /** The distributions that an input may have. Help, schema, listings, docs and the shared tests come from this table. */
 import { nearest } from "../../numeric/nearest.js";
+import { beta } from "./beta.js";
+import { gamma } from "./gamma.js";
+import { chiSquared } from "./chi-squared.js";
+import { student } from "./student.js";
+import { f } from "./f.js";
+import { inverseGaussian } from "./inverse-gaussian.js";
+import { truncatedNormal } from "./truncated-normal.js";
+import { bernoulli } from "./bernoulli.js";
+import { binomial } from "./binomial.js";
+import { poisson } from "./poisson.js";
+import { negativeBinomial } from "./negative-binomial.js";
+import { geometric } from "./geometric.js";
+import { table } from "./table.js";
 import { cauchy } from "./cauchy.js";
 import type { Distribution, Law, ParameterValues } from "./contract.js";
 import { exponential } from "./exponential.js";
@@ -25,6 +38,19 @@ export const DISTRIBUTIONS = {
   cauchy,
   gumbel,
   triangular,
+  beta,
+  gamma,
+  "chi-squared": chiSquared,
+  student,
+  f,
+  "inverse-gaussian": inverseGaussian,
+  "truncated-normal": truncatedNormal,
+  bernoulli,
+  binomial,
+  poisson,
+  "negative-binomial": negativeBinomial,
+  geometric,
+  table,
 } as const satisfies Readonly<Record<string, Distribution>>;
 
 export type DistributionId = keyof typeof DISTRIBUTIONS;

@@ -185,6 +185,19 @@ for name, parameters in CASES:
             values.append(None)
     rows.append({"distribution": name, "parameters": parameters, "values": values})
     print(name, parameters, sum(v is not None for v in values), flush=True)
-data = {"source": "mpmath 1.3.0 at 50 digits, make/quantiles.py", "levels": LEVELS, "rows": rows}
+STEPS = {
+    "binomial": ([{"trials": 1, "probability": 0.3}, {"trials": 40, "probability": 0.3}, {"trials": 100000, "probability": 0.001}],
+                 lambda trials, probability: stats.binom(trials, probability)),
+    "poisson": ([{"mean": 0.01}, {"mean": 6.5}, {"mean": 1e6}], lambda mean: stats.poisson(mean)),
+    "negative-binomial": ([{"successes": 2.5, "probability": 0.4}, {"successes": 100, "probability": 0.01}],
+                          lambda successes, probability: stats.nbinom(successes, probability)),
+    "geometric": ([{"probability": 0.25}, {"probability": 0.001}], lambda probability: stats.geom(probability, loc=-1)),
+}
+for name, (cases, law) in STEPS.items():
+    for parameters in cases:
+        # SciPy's own levels near 1 are rounded: those above 1 - 1e-9 are left out
+        values = [str(int(law(**parameters).ppf(u))) if u < 1 - 1e-8 else None for u in LEVELS]
+        rows.append({"distribution": name, "parameters": parameters, "values": values})
+data = {"source": "mpmath 1.3.0 at 50 digits, discrete laws SciPy 1.17.1; make/quantiles.py", "levels": LEVELS, "rows": rows}
 with open(os.path.join(os.path.dirname(__file__), "..", "data", "quantiles.json"), "w") as out:
     json.dump(data, out, indent=1)

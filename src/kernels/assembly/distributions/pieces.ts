@@ -10,7 +10,7 @@ import { add, div, mul, splat, sub } from "../vector";
 import { vec_exp } from "../math/exp";
 
 // Places in the header, in doubles; the header has 24.
-const FORM = 0; // 0: base + sign * exp(p), 1: 1 / (1 + exp(-p)), 2: (u - 1/2) exp(p), 3: base + sign * p
+const FORM = 0; // 0: base + sign * exp(p), 1: 1 / (1 + exp(-p)), 2: (u - 1/2) exp(p)
 const LOCATION = 1;
 const SCALE = 2;
 const BITS = 3; // k
@@ -19,6 +19,9 @@ const AT_ONE = 5;
 // For each side: base, sign, least t, index of the first piece, number of doubles before the first coefficient.
 const LEFT = 6;
 const RIGHT = 11;
+
+/** The double before 1/2: the last piece ends there. */
+const BELOW_HALF: f64 = 0.49999999999999994;
 
 @inline
 function header(table: usize, k: i32): f64 {
@@ -50,7 +53,7 @@ function sideOf(u: f64, table: usize): usize {
 
 @inline
 function inside(u: f64): f64 {
-  return u > 0 && u < 1 ? min(u, 1 - u) : 0.25;
+  return u > 0 && u < 1 ? min(min(u, 1 - u), BELOW_HALF) : 0.25;
 }
 
 @inline
@@ -80,7 +83,7 @@ export function piecesBlock(pointer: usize, stride: i32, rows: i32, count: i32, 
       if (form == 1) x = div(splat(1), add(splat(1), vec_exp(f64x2.neg(p))));
       else if (form == 2) x = mul(sub(f64x2(u0, u1), splat(0.5)), vec_exp(p));
       else {
-        if (form == 0) p = vec_exp(p);
+        p = vec_exp(p);
         let base = f64x2(load<f64>(side0), load<f64>(side1));
         x = add(base, mul(f64x2(load<f64>(side0, 8), load<f64>(side1, 8)), p));
       }

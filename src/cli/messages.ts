@@ -23,6 +23,8 @@ export const messages = {
   wholeNumber: (flag: string, least: number, found: string) =>
     `--${flag}: expected a whole number of at least ${least}, found "${found}"`,
   positive: (flag: string, found: string) => `--${flag}: expected a number above 0, found "${found}"`,
+  noWeights:
+    "--total: a weighted sum needs weights; give a folder whose suite.yaml has total: { weights: { PROBLEM: 1 }, tolerance: { absolute: 1 } }",
   oneRecord: (found: number) =>
     `paths: expected one record, or problems without records, found ${found} paths; plan them one at a time`,
   interrupted: (folder: string, command: string) =>

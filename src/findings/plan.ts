@@ -124,7 +124,7 @@ function pointRank({ point }: SourcePlan): number {
   return point?.n ?? 0;
 }
 
-function userSeconds(problem: Problem, options: PlanOptions): number | null {
+export function userSeconds(problem: Problem, options: PlanOptions): number | null {
   return options.secondsPerPoint ?? problem.inUse?.secondsPerPoint ?? null;
 }
 
@@ -201,7 +201,7 @@ function planSeries(
 }
 
 /** Why a source is not recommended; null where it is held to be sound. */
-function unsoundness(source: RecordSource | undefined, test: BiasTest | undefined): string | null {
+export function unsoundness(source: RecordSource | undefined, test: BiasTest | undefined): string | null {
   if (source === undefined) return "not described in the record";
   if (test?.confirmed === true) return "biased on this problem, confirmed on fresh replicates";
   if (source.knownStructure !== null) return `known structure: ${source.knownStructure}`;

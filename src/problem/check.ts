@@ -6,7 +6,7 @@ import { z } from "zod";
 import { FormulaError } from "../formula/contract.js";
 import type { FormulaScope } from "../formula/contract.js";
 import { FUNCTIONS, NAMED_NUMBERS, RESERVED_WORDS, compileFormula } from "../formula/index.js";
-import type { Declared, Input, InUse, Problem, Reference, Tolerance } from "./contract.js";
+import type { Declared, Input, InUse, Problem, Reference, SuiteTotal, Tolerance } from "./contract.js";
 import { DEFAULT_CONFIDENCE, LIMITS } from "./defaults.js";
 import { readParameters } from "./parameters.js";
 import type { YamlDocument } from "./document.js";
@@ -257,14 +257,34 @@ export async function checkProblem(
   };
 }
 
+const WEIGHT: Range = { what: "a number other than 0", holds: (x) => x !== 0 };
+
+async function checkTotal(
+  file: NonNullable<SuiteFile["total"]>,
+  numbers: NumberReader,
+): Promise<SuiteTotal | null> {
+  const weights: Record<string, number> = {};
+  for (const [problem, raw] of Object.entries(file.weights)) {
+    const weight = await numbers.read(raw, ["total", "weights", problem], WEIGHT);
+    if (weight !== null) weights[problem] = weight;
+  }
+  const path = ["total", "tolerance"];
+  const tolerance = await numbers.read(file.tolerance.absolute, [...path, "absolute"], POSITIVE);
+  const asked = file.tolerance.confidence ?? DEFAULT_CONFIDENCE;
+  const confidence = await numbers.read(asked, [...path, "confidence"], CONFIDENCE);
+  return tolerance === null || confidence === null ? null : { weights, tolerance, confidence };
+}
+
 /** The settings in a `suite.yaml`. Throws ProblemError with every finding. */
 export async function checkSuite(
   document: YamlDocument,
   check: SourceCheck = anySource,
-): Promise<Omit<SuiteFile, "study"> & { study: Problem["study"] }> {
+): Promise<Omit<SuiteFile, "study" | "total"> & { study: Problem["study"]; total: SuiteTotal | null }> {
   const findings = new Findings(document);
-  const { study, ...rest } = parts(suiteSchema, findings);
-  const settings = await checkStudy(study ?? {}, new NumberReader(findings), check, findings);
+  const { study, total, ...rest } = parts(suiteSchema, findings);
+  const numbers = new NumberReader(findings);
+  const settings = await checkStudy(study ?? {}, numbers, check, findings);
+  const sum = total === undefined ? null : await checkTotal(total, numbers);
   if (findings.issues.length > 0) throw new ProblemError(findings.inOrder());
-  return { ...rest, study: settings };
+  return { ...rest, study: settings, total: sum };
 }

@@ -47,6 +47,16 @@ export interface InUse {
   readonly secondsPerPoint: number | null;
 }
 
+/** A weighted sum of the problems of a suite, with one tolerance on it. */
+export interface SuiteTotal {
+  /** By problem id; finite, not 0. */
+  readonly weights: Readonly<Record<string, number>>;
+  /** Absolute, > 0. */
+  readonly tolerance: number;
+  /** In (0.5, 1). */
+  readonly confidence: number;
+}
+
 /** A contribution to the error that the user declares: a bound of a bias, or a standard deviation. */
 export interface Declared {
   readonly line: string;

@@ -4,7 +4,7 @@ import { basename, dirname, extname, join, resolve } from "node:path";
 import { nearest } from "../numeric/nearest.js";
 import { SUITE_FILE, shippedFolder, shippedProblemFile, shippedSuites } from "./catalogue.js";
 import { checkProblem, checkSuite } from "./check.js";
-import type { Problem, StudySettings } from "./contract.js";
+import type { Problem, StudySettings, SuiteTotal } from "./contract.js";
 import { parseYaml, readText } from "./document.js";
 import { placeDraws } from "./draws-folder.js";
 import type { YamlDocument } from "./document.js";
@@ -24,6 +24,8 @@ export interface Suite {
   readonly title: string;
   readonly about: string;
   readonly study: StudySettings;
+  /** The weighted sum with a tolerance of its own; null where the suite states none. */
+  readonly total: SuiteTotal | null;
   /** Shipped problems taken in, as suite/problem. */
   readonly problems: readonly string[];
 }
@@ -55,7 +57,7 @@ async function readSuite(folder: string, check?: SourceCheck): Promise<Suite | n
   const file = join(folder, SUITE_FILE);
   if ((await kindOf(file)) === null) return null;
   const document = parseYaml(file, await readText(file));
-  const { title, about, study, problems = [] } = await checkSuite(document, check);
+  const { title, about, study, total, problems = [] } = await checkSuite(document, check);
   const issues: ProblemIssue[] = [];
   for (const [i, entry] of problems.entries()) {
     if ((await shippedProblemFile(entry)) !== null) continue;
@@ -69,7 +71,7 @@ async function readSuite(folder: string, check?: SourceCheck): Promise<Suite | n
   if (issues.length > 0) throw new ProblemError(issues);
   const name = basename(resolve(folder));
   const placed = placeDraws(study, document, folder);
-  return { name, folder, title: title ?? name, about: about?.trim() ?? "", study: placed, problems };
+  return { name, folder, title: title ?? name, about: about?.trim() ?? "", study: placed, total, problems };
 }
 
 async function readProblem(file: string, suite: Suite | null, check?: SourceCheck): Promise<LoadedProblem> {
@@ -113,7 +115,15 @@ export async function loadSuite(
 ): Promise<{ suite: Suite; problems: LoadedProblem[] }> {
   const found = await readSuite(folder, check);
   const name = basename(resolve(folder));
-  const suite: Suite = found ?? { name, folder, title: name, about: "", study: {}, problems: [] };
+  const suite: Suite = found ?? {
+    name,
+    folder,
+    title: name,
+    about: "",
+    study: {},
+    total: null,
+    problems: [],
+  };
   const idOf = (file: string): string => basename(file, extname(file));
   const files = (await readdir(folder)).filter(isProblemFile);
   files.sort((a, b) => (idOf(a) < idOf(b) ? -1 : 1));
@@ -138,8 +148,22 @@ export async function loadSuite(
       issues.push(...error.issues);
     }
   }
+  if (issues.length === 0) issues.push(...strayWeights(suite, problems));
   if (issues.length > 0) throw new ProblemError(issues);
   return { suite, problems };
+}
+
+/** Weights of problems that the suite does not have. */
+function strayWeights({ total, folder }: Suite, problems: readonly LoadedProblem[]): ProblemIssue[] {
+  const ids = problems.map(({ problem }) => problem.id);
+  return Object.keys(total?.weights ?? {})
+    .filter((id) => !ids.includes(id))
+    .map((id) => {
+      const guess = nearest(id, ids);
+      const hint = guess === null ? "" : `; did you mean "${guess}"?`;
+      const message = `total weights: expected problems of the suite, found "${id}"${hint}`;
+      return { file: join(folder, SUITE_FILE), line: null, column: null, message };
+    });
 }
 
 async function loadOne(

@@ -208,6 +208,33 @@ export const problemSchema = z
   })
   .describe("A problem for tolerand: an integrand, its inputs, its exact value if known, and a tolerance.");
 
+const total = z.strictObject(
+  {
+    weights: z
+      .record(z.string(), number("a weight other than 0"), {
+        error: "a mapping from problems of the suite to weights such as { season-guarantee: 40 }",
+      })
+      .refine((weights) => Object.keys(weights).length > 0, { error: "at least one problem with a weight" })
+      .describe("How often each problem counts in the sum; problems without a weight are not in it."),
+    tolerance: z
+      .strictObject(
+        {
+          absolute: number("a number above 0").describe(
+            "Largest absolute error of the sum that is acceptable.",
+          ),
+          confidence: number("a number between 0.5 and 1").optional().meta({
+            description:
+              "Probability with which the error of the sum must stay within it, above 0.5 and below 1.",
+            default: DEFAULT_CONFIDENCE,
+          }),
+        },
+        { error: "a mapping such as { absolute: 10, confidence: 0.99 }" },
+      )
+      .describe("The tolerance on the weighted sum."),
+  },
+  { error: "a mapping with weights and tolerance" },
+);
+
 export const suiteSchema = z
   .strictObject({
     title: text("a title, as text")
@@ -226,6 +253,9 @@ export const suiteSchema = z
     study: study
       .optional()
       .describe("Settings shared by the problems of the folder; a problem's own come first."),
+    total: total
+      .optional()
+      .describe("A weighted sum of the problems with one tolerance: `tolerand plan` allocates points to it."),
   })
   .describe("Shared settings of the problem files in one folder.");
 

@@ -1,11 +1,14 @@
 /** `tolerand plan PATH…`: from a pilot on keys of its own (or from a record) to points, cost and a recommendation. */
 import { relative, resolve } from "node:path";
+import { allocationOf } from "../../findings/allocation-plan.js";
 import { planOf, type PlanOptions } from "../../findings/plan.js";
+import type { SuiteTotal } from "../../problem/contract.js";
 import { loadPaths, type LoadedProblems } from "../../problem/load.js";
 import { parseSizes } from "../../problem/sizes.js";
 import { runStudy } from "../../recipe.js";
 import { jsonText } from "../../record/json.js";
 import type { StudyRecord } from "../../record/types.js";
+import { allocationText } from "../../report/allocation-text.js";
 import { planText } from "../../report/plan-text.js";
 import { parseSource } from "../../sources/choice.js";
 import { threads } from "../../study/executor.js";
@@ -28,9 +31,12 @@ export async function run(args: Arguments, io: Io): Promise<number> {
   const randomisations = wholeFlag(args, "randomisations", 1) ?? 1;
   const secondsPerPoint = positiveFlag(args, "seconds-per-point");
   const seconds = positiveFlag(args, "time");
+  const tolerance = positiveFlag(args, "total");
   const paths = textFlags(args, "paths");
   const given = await recordOf(paths, io);
   const loaded = given === null ? await loadPaths(paths, parseSource) : { name: "", problems: [] };
+  const sum = totalOf(loaded);
+  if (sum === null && tolerance !== null) throw new InputError(messages.noWeights);
   const record = given ?? (await pilot(loaded, args, io));
   if (!record.environment.complete) return EXIT.interrupted;
 
@@ -44,9 +50,11 @@ export async function run(args: Arguments, io: Io): Promise<number> {
     nearestSize: (source, n) => parseSource(specs.get(source) ?? source).source.nearestSize(n),
   };
   const plans = planOf(record, options);
+  const total = sum === null ? null : { ...sum, tolerance: tolerance ?? sum.tolerance };
+  const allocation = total === null ? null : allocationOf(record, total, options);
   const from = given === null ? "pilot" : "record";
-  if (booleanFlag(args, "json")) io.stdout.write(`${jsonText({ from, plans }, 2)}\n`);
-  else io.stdout.write(planText(plans));
+  if (booleanFlag(args, "json")) io.stdout.write(`${jsonText({ from, plans, allocation }, 2)}\n`);
+  else io.stdout.write(planText(plans) + (allocation === null ? "" : `\n${allocationText(allocation)}`));
   for (const warning of record.warnings) io.stderr.write(`note: ${warning}\n`);
   const [first] = plans.flatMap(({ recommended }) => recommended ?? []);
   if (first?.point) {
@@ -68,6 +76,13 @@ async function recordOf(paths: readonly string[], io: Io): Promise<StudyRecord |
   if (!flags.includes(true)) return null;
   if (paths.length > 1) throw new InputError(messages.oneRecord(paths.length));
   return (await readRecord(paths[0] ?? "", io)).record;
+}
+
+/** The weighted sum of the suite, where all problems that it weighs are here. */
+function totalOf({ problems }: LoadedProblems): SuiteTotal | null {
+  const here = new Set(problems.map(({ problem }) => problem.id));
+  const totals = new Set(problems.flatMap(({ suite }) => suite?.total ?? []));
+  return [...totals].find(({ weights }) => Object.keys(weights).every((id) => here.has(id))) ?? null;
 }
 
 /** A small study of every problem and source with keys of its own. */

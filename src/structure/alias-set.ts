@@ -135,7 +135,7 @@ function recurrenceSet(source: PseudoRandomSource, given: LinearRecurrence): Ali
     kind: averaged,
     modulus: dual,
     tuples: recurrenceTuples({ multipliers, modulus: dual }, stride),
-    what: wordsOf(linear, units),
+    what: `${wordsOf(linear, units)}${usage.seeding.kind === "published" ? PUBLISHED_SEEDS : ""}`,
     stationary: true,
     lags: lagsOf(linear, stride),
     weight,
@@ -181,6 +181,9 @@ function offsetOf(
 function missingOrigin({ multipliers, increment, modulus }: LinearRecurrence): boolean {
   return increment === 0n && (multipliers.length > 1 || isPrime(modulus));
 }
+
+const PUBLISHED_SEEDS =
+  "; the replicates start at published seeds, which are few of them and need not average to the same";
 
 function wordsOf({ multipliers, increment, modulus }: LinearRecurrence, units: bigint): string {
   if (units > 1n)

@@ -138,6 +138,11 @@ test("sources without a lattice say why", () => {
   );
 });
 
+test("published seeds are said to be no average over all starts", () => {
+  const set = setOf({ congruential: { modulus: 61, multiplier: 17 }, seeding: "published" }, 3);
+  expect(set.what).toContain("start at published seeds");
+});
+
 test("short vectors come first, by product weight or by length, at every place along the coordinates", () => {
   const set = setOf({ congruential: { modulus: "2^31", multiplier: 65539 } }, 5);
   const { vectors, shortest } = aliasVectors(set, 5, 64);

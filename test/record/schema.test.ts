@@ -4,6 +4,7 @@ import { describe, expect, it } from "vitest";
 import { assembleRecord } from "../../src/findings/assemble.js";
 import { consensusOf } from "../../src/findings/consensus.js";
 import { canonicalJson, jsonText } from "../../src/record/json.js";
+import { sampleExplanation } from "../report/sample-explanation.js";
 import { parseRecord, recordJsonSchema } from "../../src/record/schema.js";
 import {
   makeAssembly,
@@ -40,6 +41,7 @@ function fullRecord() {
         sources: [makeSource("philox4x32"), makeSource("sobol", { period: null, deterministic: true })],
         consensus: [consensusOf("q", [{ source: "philox4x32", n: 4, estimates: [1, 2, 3, 4] }])],
         confirmations: [makeConfirmation(0.1, 1 / 64)],
+        explanations: [sampleExplanation("p", "mean", -0.2), sampleExplanation("q", "mean", null)],
       },
     ),
   );
@@ -52,6 +54,11 @@ describe("a record", () => {
   it("is read back as it was written", () => {
     expect(parseRecord(JSON.parse(written))).toEqual(record);
     expect(canonicalJson(parseRecord(JSON.parse(written)))).toBe(canonicalJson(record));
+  });
+
+  it("may come from before there were explanations", () => {
+    const { explanations: _, ...older } = JSON.parse(written) as Record<string, unknown>;
+    expect(parseRecord(older).explanations).toEqual([]);
   });
 
   it("is valid by the published JSON Schema (draft 2020-12, ajv 8)", () => {

@@ -6,6 +6,7 @@ import { explain } from "../../src/study/explain.js";
 import { evaluateAt } from "../../src/study/evaluate-at.js";
 import { unboundedAlong } from "../../src/study/growth.js";
 import { prepareProblems, type RunnableProblem } from "../../src/study/runnable.js";
+import type { TaskResult } from "../../src/study/tasks.js";
 import { problem, runSpec, specOf } from "./fixtures.js";
 
 async function prepared(one: Problem): Promise<RunnableProblem> {
@@ -212,4 +213,15 @@ test("points of a net that are no power of its base", async () => {
     measured: null,
   });
   expect(found.reason).toBe("its first 100 points are no net; take a power of 2 (--points 128)");
+});
+
+test("a run that is taken up again gives the same explanations", async () => {
+  const reference = { value: 1, text: "1", uncertainty: 0, basis: "normalised" };
+  const peak = problem("peak", PEAK, { reference });
+  const spec = specOf([peak], { sources: ["randu", "philox4x32"], sizes: [4096], replicates: 32, seed: 3 });
+  const journal = new Map<string, TaskResult>();
+  const whole = await runSpec(spec, { journal });
+  expect(whole.explanations.some(({ predicted }) => predicted !== null)).toBe(true);
+  const half = new Map([...journal].slice(0, Math.floor(journal.size / 2)));
+  expect((await runSpec(spec, { journal: half })).explanations).toEqual(whole.explanations);
 });

@@ -97,11 +97,12 @@ function shareText(share: number): string {
 /** Why the prediction does not explain what was measured. */
 function unexplained({ predicted, measured, difference }: Explanation): string {
   if (predicted === null) return "No prediction.";
-  const none = predicted.interval[0] <= 0 && predicted.interval[1] >= 0;
-  const quiet = measured !== null && measured.interval[0] <= 0 && measured.interval[1] >= 0;
-  if (none && quiet)
-    return "No bias is predicted and none was found: the planes do not matter to this integrand.";
-  if (none)
+  const most = Math.max(...predicted.interval.map(Math.abs));
+  if (hidden(predicted) && hidden(measured))
+    return `No bias is predicted and none was found: the vectors taken add less than ${formatValue(most)} to this integrand.`;
+  if (hidden(measured))
+    return `A bias of ${formatValue(predicted.value, predicted.standardError)} is predicted, too small for this measurement to show.`;
+  if (hidden(predicted))
     return "Not explained: the dual vectors looked at add nothing that shows beside the noise of the prediction.";
   if (measured === null || difference === null)
     return "Predicted only: there is no measured bias to hold it against.";

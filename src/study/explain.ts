@@ -1,7 +1,8 @@
 /**
  * From a problem and a lattice-structured source to what its dual vectors do to the integral: the truncated sum S_K of Fourier
- * coefficients (structure/alias-set.ts, prediction.ts) beside the bias that was measured. "Explained" needs the measured
- * bias less S_K to hold 0 in its interval, S_K to be other than 0, and the step from K to 2K to add nothing that matters.
+ * coefficients (structure/alias-set.ts, prediction.ts) beside the bias that was measured. "Explained" needs a bias
+ * that was measured and S_K both to be other than 0, their difference to hold 0 in its interval, and the step from K to 2K to
+ * add nothing that matters.
  */
 import type {
   Alias,
@@ -83,7 +84,12 @@ function predict(request: ExplainRequest, known: KnownStructure, shortest: reado
   const difference = differenceOf(measured, predicted, confidence);
   const zero = (interval: readonly [number, number]): boolean => interval[0] <= 0 && interval[1] >= 0;
   const explained =
-    difference !== null && zero(difference.interval) && !zero(predicted.interval) && predicted.stable;
+    measured !== null &&
+    difference !== null &&
+    !zero(measured.interval) &&
+    !zero(predicted.interval) &&
+    zero(difference.interval) &&
+    predicted.stable;
   const aliases = aliasGroups(taken, contributions, stationary).map(toAlias);
   const comb = combOf(request, estimator, aliases[0]);
   return { reason: null, predicted, difference, explained, aliases, comb };

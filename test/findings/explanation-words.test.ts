@@ -60,6 +60,18 @@ describe("explanations in words", () => {
     expect(explanationHeadline({ ...off, predicted: none })).toContain("nothing that shows beside the noise");
   });
 
+  it("say what was predicted where no bias was found", () => {
+    const quiet = { ...explained.measured!, value: 0, interval: [-0.5, 0.5] as const };
+    const none = { ...explained.predicted!, value: 0, interval: [-0.012, 0.01] as const };
+    const nothing = { ...explained, explained: false, measured: quiet };
+    expect(explanationHeadline({ ...nothing, predicted: none })).toBe(
+      "No bias is predicted and none was found: the vectors taken add less than 0.012 to this integrand.",
+    );
+    expect(explanationHeadline(nothing)).toBe(
+      "A bias of −0.2435 is predicted, too small for this measurement to show.",
+    );
+  });
+
   it("say what known structure could still spoil", () => {
     const known = sampleExplanation("p", "mean", null);
     expect(explanationHeadline(known)).toBe("No prediction: no bias was confirmed.");

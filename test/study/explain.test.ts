@@ -122,6 +122,20 @@ test("a bias that does not come from the planes is not called explained", async 
   expect(found.predicted?.value).toBeCloseTo(-0.246, 1);
 });
 
+test("where no bias shows there is none to explain", async () => {
+  const runnable = await prepared(problem("peak", PEAK));
+  const measured = {
+    value: -0.2,
+    standardError: 0.2,
+    interval: [-0.72, 0.32],
+    n: 64,
+    replicates: 32,
+  } as const;
+  const found = explain({ ...request, problem: runnable, choice: parseSource("randu"), centre: 1, measured });
+  expect(found.predicted?.value).toBeCloseTo(-0.246, 1);
+  expect(found.explained).toBe(false);
+});
+
 test("an integrand without bound is left to the full cycle", async () => {
   const choice = parseSource("randu");
   for (const integrand of ["x[1]^-0.3", "-log(x[2])", "-log(1 - x[3])"]) {

@@ -69,24 +69,54 @@ function phaseText({ phase }: Alias): string {
   return turn === 0.5 ? "whole number + \u00bd" : `whole number + ${formatValue(turn)}`;
 }
 
-/** The share of the measured bias (of the predicted one where none was measured) that the leading vector carries. */
-export function leadingShare({ aliases, measured, predicted }: Explanation): number | null {
-  const whole = measured?.value ?? predicted?.value ?? 0;
-  const part = aliases[0]?.contribution ?? null;
-  return part === null || whole === 0 ? null : part / whole;
+/** A vector and its multiples, which belong to the same planes. */
+interface Bundle {
+  /** The shortest of them. */
+  readonly alias: Alias;
+  /** What they add together, as a share of the bias. */
+  readonly share: number;
 }
+
+/** The shares of the measured bias (of the predicted one where none was measured), the largest first. */
+function bundlesOf({ aliases, measured, predicted }: Explanation): Bundle[] {
+  const whole = measured?.value ?? predicted?.value ?? 0;
+  const bundles = new Map<string, { alias: Alias; sum: number }>();
+  for (const alias of aliases) {
+    const { indices, entries, contribution, walsh } = alias;
+    if (contribution === null) continue;
+    const unit = walsh === null ? entries.reduce(gcd, 0) : 1;
+    const first = alias.copies > 1 ? (indices[0] ?? 0) : 0;
+    const key = `${indices.map((index) => index - first).join()}:${entries.map((entry) => entry / unit).join()}`;
+    const known = bundles.get(key);
+    const shorter = known === undefined || Math.hypot(...entries) < Math.hypot(...known.alias.entries);
+    bundles.set(key, { alias: shorter ? alias : known.alias, sum: (known?.sum ?? 0) + contribution });
+  }
+  return [...bundles.values()]
+    .map(({ alias, sum }) => ({ alias, share: whole === 0 ? 0 : sum / whole }))
+    .sort((one, other) => other.share - one.share);
+}
+
+function gcd(a: number, b: number): number {
+  return b === 0 ? Math.abs(a) : gcd(b, a % b);
+}
+
+/** Bundles beside the first that are named: those with at least this share. */
+const NAMED_SHARE = 0.1;
+const NAMED = 3;
 
 /** The finding in one sentence. */
 export function explanationHeadline(explanation: Explanation): string {
-  const { reason, aliases, predicted, explained } = explanation;
+  const { reason, predicted, explained } = explanation;
   if (predicted === null) return `No prediction: ${reason ?? "nothing was estimated"}.`;
-  const [alias] = aliases;
-  const share = leadingShare(explanation);
   if (!explained) return unexplained(explanation);
-  const named = alias === undefined ? "its dual vectors" : `${vectorText(alias)}${copiesText(alias)}`;
-  const planes = alias === undefined ? "" : `: ${planesText(alias)}`;
-  const part = share === null ? "The bias" : `${shareText(share)} of the bias`;
-  return `${part} comes from ${named}${planes}.`;
+  const parts = bundlesOf(explanation)
+    .filter(({ share }, i) => i === 0 || share >= NAMED_SHARE)
+    .slice(0, NAMED)
+    .map(({ alias, share }, i) => {
+      const lead = i === 0 ? `${shareText(share)} of the bias comes from` : `${shareText(share)} from`;
+      return `${lead} ${vectorText(alias)}${copiesText(alias)}: ${planesText(alias)}`;
+    });
+  return `${parts.join("; ")}.`;
 }
 
 /** "98 %"; several vectors of both signs make shares above 1. */

@@ -28,7 +28,13 @@ describe("explanations in words", () => {
 
   it("say how much of the bias comes from which planes", () => {
     expect(spaced(explanationHeadline(explained))).toBe(
-      "98 % of the bias comes from 9 u₁ − 6 u₂ + u₃: 15 planes, gap 0.092.",
+      // 98 % from the vector itself, 1 % from its double
+      "99 % of the bias comes from 9 u₁ − 6 u₂ + u₃: 15 planes, gap 0.092.",
+    );
+    const [own, double] = explained.aliases;
+    const other = { ...double!, indices: [1, 2, 3], entries: [2, -5, 3], planes: 9, contribution: -0.05 };
+    expect(spaced(explanationHeadline({ ...explained, aliases: [own!, other] }))).toBe(
+      "98 % of the bias comes from 9 u₁ − 6 u₂ + u₃: 15 planes, gap 0.092; 20 % from 2 u₂ − 5 u₃ + 3 u₄: 9 planes, gap 0.046.",
     );
   });
 

@@ -63,7 +63,7 @@ describe("the page", () => {
     expect(page).toMatch(
       /<summary>What bits cost: the bias of the middles of cells of width 2\^−bits, 99.% intervals \(◂ its own\)<\/summary>/,
     );
-    expect(page).toMatch(/<td class="num">31 ◂<\/td><td class="num">−2\.2e-19<\/td>/);
+    expect(page).toMatch(/<td class="num">31 ◂<\/td><td class="num">−2\.2e−19<\/td>/);
   });
 
   it("links a verdict that structure explains to its explanation, and names what structure could still spoil", () => {

@@ -5,7 +5,8 @@
 import { assembleRecord, candidatesOf, confirmedTests, type Measured } from "./findings/assemble.js";
 import { CONFIRMATION_REPLICATES, type Confirmation } from "./findings/bias.js";
 import { consensusOf } from "./findings/consensus.js";
-import type { Consensus, Environment, RawCell, StudyRecord, StudySpec } from "./record/types.js";
+import { insidePairs, pairKey, stopSentences } from "./findings/until.js";
+import type { Consensus, Environment, RawCell, Stop, StudyRecord, StudySpec } from "./record/types.js";
 import type { Explanation } from "./record/explanation.js";
 import { explainStudy, pairsToExplain, type ExplainedPairs } from "./study/explanations.js";
 import { collectCells, type CellInfo } from "./study/collect.js";
@@ -13,7 +14,7 @@ import type { Executor } from "./study/executor.js";
 import { notesOf } from "./study/notes.js";
 import { RepetitionWatch } from "./study/opening.js";
 import type { RunnableProblem } from "./study/runnable.js";
-import { confirmationTasks, recordSources, referenceTasks, studyTasks } from "./study/spec.js";
+import { confirmationTasks, recordSources, referenceTasks, studyLooks, studyTasks } from "./study/spec.js";
 import type { Task, TaskResult } from "./study/tasks.js";
 
 /** Progress of a stage; units are coordinates evaluated. */
@@ -48,8 +49,7 @@ export async function runStudy(run: StudyRun): Promise<StudyRecord> {
   if (references.length > 0) await runStage(run, "reference", references, results, watch);
   const consensus = formConsensus(spec, cellsOf(run, references, results));
 
-  const tasks = studyTasks(spec);
-  await runStage(run, "study", tasks, results, watch);
+  const { tasks, stops } = await runSizes(run, consensus, results, watch);
   const rawCells = cellsOf(run, tasks, results);
   const measured = { spec, problems: spec.problems, sources: recordSources(spec), rawCells, consensus };
 
@@ -61,8 +61,47 @@ export async function runStudy(run: StudyRun): Promise<StudyRecord> {
   const explanations = await explainMeasured(run, measured, confirmations);
 
   const environment = run.environment(!run.signal.aborted);
-  const warnings = [...run.warnings, ...notesOf([...tasks, ...fresh], results)];
-  return assembleRecord({ ...measured, environment, confirmations, explanations, warnings });
+  const stopping = stops === null ? [] : stopSentences(stops, spec);
+  const warnings = [...run.warnings, ...stopping, ...notesOf([...tasks, ...fresh], results)];
+  const stopped = stops === null ? {} : { stops };
+  return assembleRecord({ ...measured, environment, confirmations, explanations, ...stopped, warnings });
+}
+
+/** All sizes at once, or one after the other until each source is inside the tolerance or at its largest size. */
+async function runSizes(
+  run: StudyRun,
+  consensus: readonly Consensus[],
+  results: Map<string, TaskResult>,
+  watch: RepetitionWatch,
+): Promise<{ readonly tasks: readonly Task[]; readonly stops: readonly Stop[] | null }> {
+  const { spec } = run;
+  if (spec.until === undefined) {
+    const tasks = studyTasks(spec);
+    await runStage(run, "study", tasks, results, watch);
+    return { tasks, stops: null };
+  }
+  const sources = recordSources(spec);
+  const looks = studyLooks(spec);
+  const tasks: Task[] = [];
+  const stops = new Map<string, Stop>();
+  let open = looks;
+  for (let look = 1; open.length > 0 && !run.signal.aborted; look++) {
+    const next = open.flatMap((one) => one.tasks(one.sizes[look - 1] ?? 0));
+    tasks.push(...next);
+    await runStage(run, `look ${look}`, next, results, watch);
+    if (run.signal.aborted) break;
+    const rawCells = cellsOf(run, tasks, results);
+    const inside = insidePairs({ spec, problems: spec.problems, sources, rawCells, consensus });
+    const ended = open.filter((one) => inside.has(pairKey(one)) || look === one.sizes.length);
+    for (const { problem, source, sizes } of ended) {
+      const pair = { problem, source };
+      const n = sizes[look - 1] ?? 0;
+      const declared = spec.sizes[problem]?.length ?? sizes.length;
+      stops.set(pairKey(pair), { ...pair, n, look, looks: declared, inside: inside.has(pairKey(pair)) });
+    }
+    open = open.filter((one) => !ended.includes(one));
+  }
+  return { tasks, stops: looks.flatMap((one) => stops.get(pairKey(one)) ?? []) };
 }
 
 /** What the structure of sources does to integrands; nothing after an interruption, when no bias is confirmed yet. */

@@ -39,6 +39,10 @@ export const commands: readonly Command[] = [
       ...studySettings,
       out: text("report folder (default: reports/NAME)"),
       threads,
+      until: {
+        ...text("stop each source at the first of its sizes that is inside the tolerance"),
+        choices: ["tolerance"],
+      },
       resume: flag("go on with an interrupted run of the same study"),
       replace: flag("overwrite a report folder that holds another study"),
       "allow-programs": allowPrograms,

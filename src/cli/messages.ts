@@ -23,6 +23,8 @@ export const messages = {
   wholeNumber: (flag: string, least: number, found: string) =>
     `--${flag}: expected a whole number of at least ${least}, found "${found}"`,
   positive: (flag: string, found: string) => `--${flag}: expected a number above 0, found "${found}"`,
+  untilOnce: (source: string) =>
+    `--until: each look begins the points anew, but the draws of "${source}" pass by once; study it without --until`,
   noWeights:
     "--total: a weighted sum needs weights; give a folder whose suite.yaml has total: { weights: { PROBLEM: 1 }, tolerance: { absolute: 1 } }",
   oneRecord: (found: number) =>

@@ -12,6 +12,7 @@ import {
   type RawCell,
   type RecordSource,
   type SpreadTest,
+  type Stop,
   type StudyRecord,
   type StudySpec,
 } from "../record/types.js";
@@ -22,6 +23,7 @@ import { makeContext } from "./context.js";
 import { convergenceOf } from "./convergence.js";
 import { confirmFamily, screenFamily, type Family } from "./family.js";
 import { seriesKey, seriesOf, type Series } from "./series.js";
+import { judgedProblems } from "./until.js";
 import { warningsOf } from "./warnings.js";
 
 export interface Measured {
@@ -38,13 +40,19 @@ export interface Assembly extends Measured {
   readonly confirmations: readonly Confirmation[];
   /** What the structure of sources does to integrands. */
   readonly explanations: readonly Explanation[];
+  /** Where each source stopped; only of a study that stops at the tolerance. */
+  readonly stops?: readonly Stop[];
   /** Warnings from before the run, shown first. */
   readonly warnings: readonly string[];
 }
 
 /** Stage 1 alone: the tests to be repeated on fresh keys, at the test's n with R = 256. */
 export function candidatesOf(measured: Measured): (BiasTest | SpreadTest)[] {
-  const context = makeContext(measured.problems, measured.sources, measured.consensus);
+  const context = makeContext(
+    judgedProblems(measured.spec, measured.problems),
+    measured.sources,
+    measured.consensus,
+  );
   const series = seriesOf(toCells(measured.rawCells, context, false));
   const { tests, spreadTests } = screenFamily(series, context, measured.spec.falseAlarms);
   return [...tests, ...spreadTests].filter((test) => test.candidate);
@@ -55,7 +63,11 @@ export function confirmedTests(
   measured: Measured,
   confirmations: readonly Confirmation[],
 ): { readonly cells: readonly Cell[]; readonly tests: readonly BiasTest[] } {
-  const context = makeContext(measured.problems, measured.sources, measured.consensus);
+  const context = makeContext(
+    judgedProblems(measured.spec, measured.problems),
+    measured.sources,
+    measured.consensus,
+  );
   const cells = toCells(measured.rawCells, context, false);
   return { cells, tests: familyOf(cells, measured, confirmations, context).tests };
 }
@@ -73,7 +85,7 @@ function familyOf(
 
 export function assembleRecord(assembly: Assembly): StudyRecord {
   const { spec, environment, problems, sources, rawCells, consensus, confirmations } = assembly;
-  const context = makeContext(problems, sources, consensus, assembly.explanations);
+  const context = makeContext(judgedProblems(spec, problems), sources, consensus, assembly.explanations);
   const cells = toCells(rawCells, context);
   const series = seriesOf(cells);
   const { tests, spreadTests, size } = familyOf(cells, assembly, confirmations, context);
@@ -98,6 +110,7 @@ export function assembleRecord(assembly: Assembly): StudyRecord {
     convergence: series.map((one) => convergenceOf(one, testOf.get(seriesKey(one)), context)),
     budgets: [...budgets, ...inUseBudgets(problems, series, testOf, context)],
     explanations: assembly.explanations,
+    ...(assembly.stops === undefined ? {} : { stops: assembly.stops }),
     warnings: [...new Set([...assembly.warnings, ...warningsOf(series, consensus, context)])],
   };
 }

@@ -184,6 +184,7 @@ const recordSchema = z
     spec: z
       .strictObject({
         purpose: z.literal("pilot").optional(),
+        until: z.literal("tolerance").optional(),
         problems: z.array(problem),
         sources: z.record(text, z.array(sourceSpec)),
         sizes: z.record(text, z.array(whole)),
@@ -216,6 +217,19 @@ const recordSchema = z
     convergence: z.array(convergence),
     budgets: z.array(budget),
     explanations: z.array(explanation).default([]),
+    stops: z
+      .array(
+        z.strictObject({
+          problem: name,
+          source: name,
+          n: whole,
+          look: whole,
+          looks: whole,
+          inside: z.boolean(),
+        }),
+      )
+      .optional()
+      .describe("Where a study that stops at the tolerance left each source."),
     warnings: z.array(text),
   })
   .describe("The record of a study by tolerand: what was asked, what was measured, what follows from it.");

@@ -13,6 +13,8 @@ export const RECORD_SCHEMA = "tolerand/record/1";
 export interface StudySpec {
   /** Present for the pilot of a plan, whose points have keys of their own; absent for a study. */
   readonly purpose?: "pilot";
+  /** Present where each source stops at the first of its sizes at which it is inside the tolerance. */
+  readonly until?: "tolerance";
   readonly problems: readonly Problem[];
   /** For each problem id: the sources, as canonical ids or the user's own descriptions. */
   readonly sources: Readonly<Record<string, readonly SourceSpec[]>>;
@@ -257,6 +259,19 @@ export interface FullCycleAverage {
   readonly endpoints: number;
 }
 
+/** Where a study that stops at the tolerance left one source. */
+export interface Stop {
+  readonly problem: string;
+  readonly source: string;
+  /** The last n looked at. */
+  readonly n: number;
+  /** Looks made, and sizes declared. */
+  readonly look: number;
+  readonly looks: number;
+  /** False where the limit of points came first. */
+  readonly inside: boolean;
+}
+
 export interface StudyRecord {
   readonly schema: typeof RECORD_SCHEMA;
   readonly spec: StudySpec;
@@ -277,5 +292,7 @@ export interface StudyRecord {
   readonly budgets: readonly Budget[];
   /** Pairs whose source has known structure: what it does to the integrand, or could do. */
   readonly explanations: readonly Explanation[];
+  /** Only of a study that stops at the tolerance. */
+  readonly stops?: readonly Stop[];
   readonly warnings: readonly string[];
 }

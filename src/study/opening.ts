@@ -56,9 +56,11 @@ export function findRepetitions(
     rows.set(key, row);
     for (const { replicate, digest } of results.get(task.id)?.openings ?? []) {
       if (digest === "") continue;
-      row.replicates++;
       const at = `${purpose === "study" ? "" : `${purpose} `}replicate ${replicate}`;
       const first = row.seen.get(digest);
+      // The same replicate, begun anew for a larger look.
+      if (first === at) continue;
+      row.replicates++;
       if (first === undefined) row.seen.set(digest, at);
       else
         row.found = {
@@ -94,7 +96,7 @@ export class RepetitionWatch {
       const here = task.before + replicate;
       const other = this.#seen.get(key);
       this.#seen.set(key, here);
-      if (other === undefined) continue;
+      if (other === undefined || other === here) continue;
       const [first, second] = [Math.min(here, other), Math.max(here, other)];
       const dimension = this.#dimensions.get(task.problem) ?? 1;
       throw new RangeError(source.repetition(first, second, dimension, task.sizes.at(-1) ?? 1));

@@ -77,6 +77,31 @@ export function studyTasks(spec: StudySpec): Task[] {
   });
 }
 
+/** The looks at one problem x source: sizes ascending, and the tasks of one of them. */
+export interface Looks {
+  readonly problem: string;
+  readonly source: string;
+  readonly sizes: readonly number[];
+  tasks(n: number): Task[];
+}
+
+/**
+ * The looks of a study that stops at the tolerance. Each look begins the points anew, which doubles the work at most and
+ * leaves every estimate as it would be in a study of all sizes.
+ */
+export function studyLooks(spec: StudySpec): Looks[] {
+  return rows(spec).map((row) => {
+    const replicates = row.choice.deterministic ? 1 : (spec.replicates[row.problem.id] ?? 1);
+    const common = { ...request(spec, row), purpose: "study", replicates, before: 0, look: true } as const;
+    return {
+      problem: row.problem.id,
+      source: row.choice.id,
+      sizes: sizesFor(spec, row.problem, row.choice),
+      tasks: (n) => planTasks({ ...common, sizes: [n] }),
+    };
+  });
+}
+
 /** The long runs that a missing reference is formed from. */
 export function referenceTasks(spec: StudySpec): Task[] {
   return spec.problems

@@ -80,6 +80,8 @@ export interface PlanRequest {
   readonly before: number;
   /** True where one task must read all replicates, one after the other. */
   readonly singlePass: boolean;
+  /** True where each size is a stage of its own that may be the last: the size is then part of the task's id. */
+  readonly look?: boolean;
 }
 
 /** The tasks of one problem x source. */
@@ -94,7 +96,7 @@ export function planTasks(request: PlanRequest): Task[] {
     const tasks: Task[] = [];
     for (let from = 0; from < replicates; from += chunk) {
       const to = Math.min(replicates, from + chunk);
-      const size = perSize ? `/n${pass[0]}` : "";
+      const size = perSize || request.look === true ? `/n${pass[0]}` : "";
       const id = `${purpose}/${problem}/${sourceId}${size}/r${from}-${to - 1}`;
       tasks.push({
         id,

@@ -5,7 +5,7 @@ import { exitCodeOf } from "../../findings/headline.js";
 import { loadPaths } from "../../problem/load.js";
 import { runStudy } from "../../recipe.js";
 import { jsonText, digestOf } from "../../record/json.js";
-import type { StudyRecord } from "../../record/types.js";
+import type { StudyRecord, StudySpec } from "../../record/types.js";
 import { threads } from "../../study/executor.js";
 import { parseSource } from "../../sources/choice.js";
 import { JOURNAL_FILE, journalOwner, openJournal } from "../../study/journal.js";
@@ -25,7 +25,9 @@ export async function run(args: Arguments, io: Io): Promise<number> {
   const flags = settingsFromFlags(args, io);
   const count = threadCount(args);
   const loaded = await loadPaths(textFlags(args, "paths"), parseSource);
-  const { spec, warnings } = asInput(() => buildSpec(loaded.problems, flags));
+  const built = asInput(() => buildSpec(loaded.problems, flags));
+  const { warnings } = built;
+  const spec = textFlag(args, "until") === null ? built.spec : untilTolerance(built.spec);
   const problems = await prepareProblems(spec.problems);
   const allowPrograms = booleanFlag(args, "allow-programs");
   if (booleanFlag(args, "dry-run")) {
@@ -81,6 +83,16 @@ export async function run(args: Arguments, io: Io): Promise<number> {
   for (const warning of record.warnings) io.stderr.write(`note: ${warning}\n`);
   io.stderr.write(messages.next(`open ${join(folder, "index.html")}`));
   return exitCodeOf(record, textFlag(args, "undecided") === "fail");
+}
+
+/** The spec of a study that stops at the tolerance. Throws InputError for draws that cannot be begun anew. */
+function untilTolerance(spec: StudySpec): StudySpec {
+  const once = Object.values(spec.sources)
+    .flat()
+    .map(parseSource)
+    .find(({ source }) => source.singlePass === true);
+  if (once !== undefined) throw new InputError(messages.untilOnce(once.id));
+  return { ...spec, until: "tolerance" };
 }
 
 /** Refuses a folder that holds something else, before any work is done. */

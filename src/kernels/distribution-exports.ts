@@ -16,6 +16,8 @@ export interface DistributionExports {
   ): void;
   /** Quantiles by pieces of polynomials; `table` is the address (aligned to 16) of what numeric/quantile-table.ts makes. */
   piecesBlock(pointer: number, stride: number, rows: number, count: number, table: number): void;
+  /** Linear steps on rows of the block at `pointer`; `table`: numeric/linear-steps.ts; `scratch`: 64 bytes a step. */
+  linearBlock(pointer: number, stride: number, count: number, table: number, scratch: number): void;
   /** Quantiles of discrete laws; `table` is the address of what numeric/step-table.ts makes. */
   stepsBlock(pointer: number, stride: number, rows: number, count: number, table: number): void;
 }

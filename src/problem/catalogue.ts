@@ -64,8 +64,9 @@ async function entryOf(name: string): Promise<CatalogueEntry> {
   const path = join(ROOT, `${name}.yaml`);
   const file = problemSchema.parse(parseYaml(path, await readText(path)).value);
   const id = basename(name);
-  let dimension = 0;
-  for (const { length = 1 } of Object.values(file.inputs)) {
+  let dimension = file.dependence?.factor === undefined ? 0 : 1;
+  for (const { length: given, times } of Object.values(file.inputs)) {
+    const length = given ?? (Array.isArray(times) ? times.length : 1);
     dimension += typeof length === "number" ? length : (plainNumber(length) ?? NaN);
   }
   return {
@@ -73,7 +74,9 @@ async function entryOf(name: string): Promise<CatalogueEntry> {
     id,
     title: file.title ?? id,
     dimension,
-    distributions: [...new Set(Object.values(file.inputs).map(({ distribution }) => distribution))],
+    distributions: [
+      ...new Set(Object.values(file.inputs).map(({ distribution, path }) => distribution ?? path ?? "")),
+    ],
     basis: file.reference?.basis.trim() ?? null,
     inUse: file.inUse !== undefined,
   };

@@ -6,9 +6,10 @@ import { z } from "zod";
 import { FormulaError } from "../formula/contract.js";
 import type { FormulaScope } from "../formula/contract.js";
 import { FUNCTIONS, NAMED_NUMBERS, RESERVED_WORDS, compileFormula } from "../formula/index.js";
-import type { Declared, Input, InUse, Problem, Reference, SuiteTotal, Tolerance } from "./contract.js";
+import type { Declared, InUse, Problem, Reference, SuiteTotal, Tolerance } from "./contract.js";
 import { DEFAULT_CONFIDENCE, LIMITS } from "./defaults.js";
-import { readParameters } from "./parameters.js";
+import { checkDependence } from "./dependence.js";
+import { checkInputs } from "./inputs.js";
 import type { YamlDocument } from "./document.js";
 import { ProblemError, show } from "./errors.js";
 import { Findings } from "./findings.js";
@@ -64,34 +65,6 @@ function checkNames(names: readonly string[], section: string, others: Constants
       findings.addKey([section, name], `"${name}" is an input and a constant; give one of them another name`);
     }
   }
-}
-
-async function checkInputs(
-  file: ProblemFile["inputs"],
-  numbers: NumberReader,
-  findings: Findings,
-): Promise<Input[]> {
-  const inputs: Input[] = [];
-  let first = 0;
-  for (const [name, { distribution, length: raw, ...given }] of Object.entries(file)) {
-    const parameters = await readParameters(distribution, given, ["inputs", name], numbers, findings);
-    let length: number | null = null;
-    if (raw !== undefined) {
-      length = await numbers.read(raw, ["inputs", name, "length"], wholeFrom(1, LIMITS.dimension));
-      if (length === null) continue;
-    }
-    if (parameters === null) continue;
-    const own = Object.keys(parameters).length > 0 ? { parameters } : {};
-    inputs.push({ name, distribution, ...own, length, first });
-    first += length ?? 1;
-  }
-  if (first > LIMITS.dimension) {
-    findings.add(
-      ["inputs"],
-      `expected at most ${LIMITS.dimension} coordinates in all, found ${first}; shorten them`,
-    );
-  }
-  return inputs;
 }
 
 async function checkReference(
@@ -222,7 +195,12 @@ export async function checkProblem(
   numbers.formulas = !malformed && !names.some((name) => TAKEN.has(name));
   const constants = await readConstants(file.constants, numbers, findings);
   checkNames(Object.keys(file.inputs ?? {}), "inputs", constants, findings);
-  const inputs = await checkInputs(file.inputs ?? {}, numbers, findings);
+  const before = file.dependence?.factor === undefined ? 0 : 1;
+  const inputs = await checkInputs(file.inputs ?? {}, before, numbers, findings);
+  const dependence =
+    file.dependence === undefined || inputs.length < Object.keys(file.inputs ?? {}).length
+      ? null
+      : await checkDependence(file.dependence, inputs, numbers, findings);
   // A formula whose names are broken would only repeat that.
   if (inputs.length > 0 && !malformed && findings.issues.length === misshapen) {
     await checkIntegrand(file.integrand ?? "", { inputs, constants }, findings);
@@ -246,6 +224,7 @@ export async function checkProblem(
     about: file.about?.trim() ?? "",
     dimension: last === undefined ? 0 : last.first + (last.length ?? 1),
     inputs,
+    ...(dependence === null ? {} : { dependence }),
     constants,
     integrand: file.integrand,
     quantity: file.quantity ?? "mean",

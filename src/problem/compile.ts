@@ -2,7 +2,7 @@
 import type { CompiledFormula, FormulaScope } from "../formula/contract.js";
 import { compileFormula } from "../formula/index.js";
 import type { Problem, Transform } from "./contract.js";
-import { lawOf } from "./distributions/registry.js";
+import { transformsOf } from "./passes.js";
 
 export interface CompiledProblem {
   readonly formula: CompiledFormula;
@@ -13,23 +13,6 @@ export interface CompiledProblem {
 /** The names that the integrand of a problem may use. */
 export function scopeOf({ inputs, constants }: Problem): FormulaScope {
   return { inputs: inputs.map(({ name, length, first }) => ({ name, length, first })), constants };
-}
-
-/** The passes that turn uniform coordinates into inputs: normals first, neighbouring ones in one pass, then the others. */
-export function transformsOf(problem: Problem): Transform[] {
-  const normals: Transform[] = [];
-  const others: Transform[] = [];
-  for (const { distribution, parameters, first, length } of problem.inputs) {
-    const rows = length ?? 1;
-    for (const pass of lawOf(distribution, parameters).passes()) {
-      const before = normals.at(-1);
-      if (pass.kind !== "normal") others.push({ ...pass, first, rows });
-      else if (before !== undefined && before.first + before.rows === first) {
-        normals[normals.length - 1] = { ...before, rows: before.rows + rows };
-      } else normals.push({ ...pass, first, rows });
-    }
-  }
-  return [...normals, ...others];
 }
 
 /** Compiles a problem. Throws FormulaError where the integrand is refused, which a problem from a file never is. */

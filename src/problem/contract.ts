@@ -1,12 +1,32 @@
 /** A problem as the program holds it after parsing and checking: plain data, JSON-serialisable, no functions. */
 
 import type { DistributionId } from "./distributions/registry.js";
+import type { Construction } from "./gaussian/constructions.js";
+import type { ProcessId } from "./gaussian/paths.js";
 import type { ParameterValues, Pass } from "./distributions/contract.js";
+
+/** How inputs hang together: through correlated normals, or a common factor that has the first coordinate. */
+export type Dependence =
+  | {
+      readonly inputs: readonly string[];
+      readonly kind: "cholesky" | "principal-components";
+      /** Of the components of all inputs, or of the inputs index by index. */
+      readonly correlation: readonly (readonly number[])[];
+    }
+  | {
+      readonly inputs: readonly string[];
+      readonly kind: "one-factor";
+      /** Share of the factor in the variance of each component. */
+      readonly shares: readonly number[];
+    };
 
 /** Inputs take their coordinates in order; a scalar has length null and takes one coordinate. */
 export interface Input {
   readonly name: string;
-  readonly distribution: DistributionId;
+  /** A distribution of independent coordinates, or a process whose path the input is. */
+  readonly distribution: DistributionId | ProcessId;
+  /** How a path is made from its normals; present for processes only. */
+  readonly construction?: Construction;
   /** Parameters that the file gives; absent where all have their defaults. */
   readonly parameters?: ParameterValues;
   readonly length: number | null;
@@ -86,6 +106,8 @@ export interface Problem {
   readonly about: string;
   readonly dimension: number;
   readonly inputs: readonly Input[];
+  /** Absent where all inputs are independent. */
+  readonly dependence?: Dependence;
   readonly constants: Readonly<Record<string, Constant>>;
   /** Source text in the formula language. */
   readonly integrand: string;

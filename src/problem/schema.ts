@@ -6,6 +6,8 @@
  */
 import { z } from "zod";
 import { distributionIds, parameterNames } from "./distributions/registry.js";
+import { CONSTRUCTIONS } from "./gaussian/constructions.js";
+import { PROCESSES, processIds } from "./gaussian/paths.js";
 import { DEFAULT_CONFIDENCE, DEFAULT_SETTINGS, DEFAULT_SIZES_TEXT, LIMITS } from "./defaults.js";
 
 /** Names of inputs and constants: as a formula writes them. */
@@ -40,7 +42,16 @@ const input = z
         .enum(distributionIds, {
           error: "a distribution such as uniform or normal (`tolerand distributions` lists them)",
         })
+        .optional()
         .describe("Law of every coordinate; `tolerand distributions` lists them with their parameters."),
+      path: z
+        .enum(processIds, { error: `a process: ${processIds.join(", ")}` })
+        .optional()
+        .describe("Instead of `distribution`: the input is a path of this process at `length` times."),
+      construction: z
+        .enum(CONSTRUCTIONS, { error: `a construction: ${CONSTRUCTIONS.join(", ")}` })
+        .optional()
+        .meta({ description: "How a path is made from normals.", default: "increments" }),
       length: number("a whole number of coordinates, 1 or more")
         .optional()
         .describe("Coordinates of a vector; without it the input is a single number."),
@@ -56,12 +67,57 @@ const input = z
 /** The parameters of all distributions, as the published schema lists them beside an input's own keys. */
 function parameterProperties(): Record<string, z.core.JSONSchema.JSONSchema> {
   const properties: Record<string, z.core.JSONSchema.JSONSchema> = {};
-  for (const [key, ids] of parameterNames()) {
+  const users = new Map<string, string[]>(parameterNames());
+  for (const [id, { parameters }] of Object.entries(PROCESSES)) {
+    for (const key of [...Object.keys(parameters), "times"]) {
+      if (users.get(key)?.includes(id) !== true) users.set(key, [...(users.get(key) ?? []), id]);
+    }
+  }
+  for (const [key, ids] of users) {
     const anyOf: z.core.JSONSchema.JSONSchema[] = [{ type: "number" }, { type: "string", minLength: 1 }];
     properties[key] = { anyOf, description: `Parameter of ${ids.join(", ")}.` };
   }
   return properties;
 }
+
+const dependence = z.strictObject(
+  {
+    inputs: z
+      .array(text("the name of an input"), { error: "a list of names of inputs" })
+      .min(2, { error: "names of two inputs or more" })
+      .or(z.array(text("the name of an input")).length(1))
+      .optional()
+      .describe("The inputs that hang together; all if absent."),
+    correlation: z
+      .union(
+        [
+          number("a correlation"),
+          z
+            .array(
+              z
+                .array(z.union([z.number(), z.string().min(1)]))
+                .min(1)
+                .max(LIMITS.elements),
+            )
+            .min(1),
+        ],
+        { error: "one correlation for all pairs, a matrix, or the name of a matrix constant" },
+      )
+      .optional()
+      .describe("Of the normals behind the inputs: one number for all pairs, a matrix, or its name."),
+    factor: z
+      .union([number("a share"), z.array(z.union([z.number(), z.string().min(1)])).min(1)], {
+        error: "the share of a common factor in the variance: one number or a list",
+      })
+      .optional()
+      .describe("Instead of `correlation`: share of one common factor in the variance of each component."),
+    construction: z
+      .enum(["cholesky", "principal-components"], { error: "cholesky or principal-components" })
+      .optional()
+      .meta({ description: "Factor of the correlation matrix.", default: "cholesky" }),
+  },
+  { error: "a mapping such as { inputs: [x, y], correlation: 0.5 }" },
+);
 
 const reference = z.strictObject(
   {
@@ -180,6 +236,7 @@ export const problemSchema = z
         error: "at least one input such as x: { distribution: uniform }",
       })
       .describe("Random inputs by name; they take their coordinates in order."),
+    dependence: dependence.optional().describe("How inputs hang together; without it they are independent."),
     constants: z
       .record(name, constant, { error: "a mapping from names to numbers, vectors or matrices" })
       .optional()

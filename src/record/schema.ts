@@ -21,6 +21,7 @@ const problem = z.strictObject({
     z.strictObject({
       name,
       distribution: text,
+      construction: text.optional(),
       parameters: z.record(name, z.union([number, z.array(number)])).optional(),
       length: orNull(z.int().min(1)),
       first: whole,

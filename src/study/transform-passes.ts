@@ -25,6 +25,10 @@ export class TransformPasses {
         return (count) => exports.closedBlock(form, at, stride, rows, count, location, scale, shape);
       }
       const table = place(one.table);
+      if (one.kind === "linear") {
+        const room = arena.allocate((one.table[0] ?? 0) * 64);
+        return (count) => exports.linearBlock(x, stride, count, table, room);
+      }
       if (one.kind === "pieces") return (count) => exports.piecesBlock(at, stride, rows, count, table);
       return (count) => exports.stepsBlock(at, stride, rows, count, table);
     });

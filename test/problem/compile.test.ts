@@ -2,7 +2,8 @@
 import { expect, test } from "vitest";
 import { interpretFormula } from "../../src/formula/index.js";
 import { checkProblem } from "../../src/problem/check.js";
-import { compileProblem, scopeOf, transformsOf } from "../../src/problem/compile.js";
+import { compileProblem, scopeOf } from "../../src/problem/compile.js";
+import { transformsOf } from "../../src/problem/passes.js";
 import type { Problem } from "../../src/problem/contract.js";
 import { parseYaml } from "../../src/problem/document.js";
 import { loadPaths } from "../../src/problem/load.js";

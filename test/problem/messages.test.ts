@@ -86,7 +86,7 @@ describe("form", () => {
 
   test("a file that is no mapping", async () => {
     const keys =
-      "title, about, inputs, constants, integrand, quantity, reference, tolerance, declared, inUse, study";
+      "title, about, inputs, dependence, constants, integrand, quantity, reference, tolerance, declared, inUse, study";
     const say = (found: string) => [
       `case.yaml:1:1: expected a mapping with the keys ${keys}; found ${found}`,
     ];

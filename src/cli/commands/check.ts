@@ -4,7 +4,7 @@ import { describeFormula, type FormulaDescription } from "../../formula/index.js
 import type { Problem } from "../../problem/contract.js";
 import { loadPaths, type LoadedProblem } from "../../problem/load.js";
 import { scopeOf } from "../../problem/compile.js";
-import { lawOf } from "../../problem/distributions/registry.js";
+import { momentsOf } from "../../problem/moments.js";
 import type { ResolvedSettings } from "../../problem/settings.js";
 import { jsonText } from "../../record/json.js";
 import { buildSpec, settingsOf } from "../../study/settings.js";
@@ -70,18 +70,22 @@ function words(checked: Checked, resolved: boolean): string {
   const { problem, file, formula, settings, at } = checked;
   const shapes = [...formula.names.map(({ name, shape }) => `${name} ${shape}`), `value ${formula.result}`];
   const inputs = problem.inputs.map(
-    ({ name, distribution, parameters, length }) =>
-      `${name} ${distribution}${formatParameters(parameters)}${length === null ? "" : ` × ${length}`}`,
+    ({ name, distribution, construction, parameters, length }) =>
+      `${name} ${distribution}${construction === undefined ? "" : ` by ${construction}`}${formatParameters(parameters)}${length === null ? "" : ` × ${length}`}`,
   );
-  const moments = problem.inputs.map(({ name, distribution, parameters }) => {
-    const { mean, variance } = lawOf(distribution, parameters);
-    return `${name} mean ${momentWords(mean)}, variance ${momentWords(variance)}`;
+  const moments = problem.inputs.map((input) => {
+    const { mean, variance, time } = momentsOf(input);
+    const when = time === null ? "" : ` at ${time}`;
+    return `${input.name}${when} mean ${momentWords(mean)}, variance ${momentWords(variance)}`;
   });
   const { reference, tolerance, inUse } = problem;
   const relative = tolerance.relative === null ? "" : `${tolerance.relative} of ${tolerance.to}`;
   const lines = [
     `${problem.title} (${problem.id}, ${file})`,
     `  inputs      ${inputs.join(", ")}; dimension ${problem.dimension}`,
+    ...(problem.dependence === undefined
+      ? []
+      : [`  dependence  ${problem.dependence.kind} of ${problem.dependence.inputs.join(", ")}`]),
     `  moments     ${moments.slice(0, 12).join("; ")}${moments.length > 12 ? "; …" : ""}`,
     `  constants   ${Object.keys(problem.constants).join(", ") || "none"}`,
     `  formula     ${shapes.join(", ")}`,

@@ -27,6 +27,7 @@ export const CLOSED = {
   weibull: 7,
   pareto: 8,
   triangular: 9,
+  normalCdf: 10,
 } as const;
 
 /** One change of a row of the block, in place. Plain data, so that it can be posted to a thread. */
@@ -39,7 +40,7 @@ export type Pass =
       readonly scale: number;
       readonly shape: number;
     }
-  | { readonly kind: "pieces" | "steps"; readonly table: Float64Array<ArrayBuffer> };
+  | { readonly kind: "pieces" | "steps" | "linear"; readonly table: Float64Array<ArrayBuffer> };
 
 /** A distribution with its parameters set. */
 export interface Law {

@@ -7,6 +7,7 @@
 import { add, div, mul, splat, sub } from "../vector";
 import { vec_exp } from "../math/exp";
 import { vec_log, vec_log1p } from "../math/log";
+import { vec_normalCdf } from "../math/normal-cdf";
 import { vec_pow } from "../math/pow";
 import { vec_tan } from "../math/sine";
 
@@ -65,6 +66,7 @@ function standard(form: i32, u: v128, shape: v128): v128 {
     case 7: return vec_pow(f64x2.neg(vec_log1p(f64x2.neg(u))), shape);
     case 8: return vec_pow(sub(splat(1), u), shape);
     case 9: return triangular(u, shape);
+    case 10: return vec_normalCdf(u);
     default: return u;
   }
 }
@@ -73,7 +75,8 @@ function standard(form: i32, u: v128, shape: v128): v128 {
  * Replaces the values u in `rows` rows of `count` by location + scale * q(u), or for form 1 by exp(location + scale * u);
  * value i of row r stands at pointer + (r * stride + i) * 8. `stride` is even; of an odd row one more value is changed.
  * Forms: 0 u itself, 1 exponential of a normal, 2 exponential, 3 logistic, 4 Laplace, 5 Cauchy, 6 Gumbel,
- * 7 Weibull (shape: 1 / its shape), 8 Pareto (shape: -1 / its shape), 9 triangular (shape: place of the peak in 0 to 1).
+ * 10 distribution function of the
+ * normal, 7 Weibull (shape: 1 / its shape), 8 Pareto (shape: -1 / its shape), 9 triangular (shape: place of the peak in 0 to 1).
  */
 export function closedBlock(
   form: i32, pointer: usize, stride: i32, rows: i32, count: i32, location: f64, scale: f64, shape: f64,

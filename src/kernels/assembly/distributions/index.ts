@@ -2,3 +2,4 @@
 export { closedBlock } from "./closed";
 export { piecesBlock } from "./pieces";
 export { stepsBlock } from "./steps";
+export { linearBlock } from "./linear";

@@ -5,7 +5,7 @@ import { fileWith, problemIn, refusal } from "./text.js";
 describe("form", () => {
   test("an unknown key names the nearest known one and its line", async () => {
     expect(await refusal(`${fileWith()}tolerence: { absolute: 1 }\n`)).toEqual([
-      'case.yaml:4:1: unknown key "tolerence"; did you mean "tolerance"? known keys here: title, about, inputs, ' +
+      'case.yaml:4:1: unknown key "tolerence"; did you mean "tolerance"? known keys here: title, about, inputs, dependence, ' +
         "constants, integrand, quantity, reference, tolerance, declared, inUse, study",
     ]);
   });

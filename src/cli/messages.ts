@@ -56,6 +56,10 @@ export const messages = {
     `Tuples of ${source} lie on planes of ${planes}, ${Number(gap.toPrecision(3))} apart; predicted error ${error > 0 ? "+" : "−"}${Math.abs(Number((100 * error).toPrecision(3)))} % of the integral.\n`,
   probeUnseen: (source: string, planes: string, least: number) =>
     `source "${source}": its own points do not stand on the planes of ${planes} as its recurrence says (least cosine ${Number(least.toPrecision(3))}, expected 1); no probe is written`,
+  studyFolder: (folder: string) =>
+    `--out: ${folder} holds the report of a study and is not overwritten; choose another folder`,
+  cannotWrite: (folder: string, why: string) =>
+    `--out: cannot write to ${folder} (${why}); choose another folder`,
   next: (text: string) => `Next: ${text}\n`,
 };
 

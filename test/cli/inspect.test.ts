@@ -1,5 +1,8 @@
 // `tolerand inspect` as a user meets it. RANDU: G. Marsaglia, PNAS 61 (1968) 25-28; 15 planes, 9 x - 6 y + z.
-import { describe, expect, it } from "vitest";
+import { existsSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { run } from "../../src/cli/commands/inspect.js";
 import { fakeIo } from "./io.js";
 
@@ -116,6 +119,32 @@ describe("tables", () => {
     const { out } = await inspect("lcg-6364136223846793005", { dimension: "26" });
     expect(out).toMatch(/^ {2}26 +56 .* ≤ 27 /m);
     expect(out).toContain("Enumeration by |h|₁ reached its bound in dimension 26");
+  });
+});
+
+describe("report", () => {
+  let folder: string;
+  beforeAll(() => {
+    folder = mkdtempSync(join(tmpdir(), "tolerand-inspect-"));
+  });
+  afterAll(() => {
+    rmSync(folder, { recursive: true });
+  });
+
+  it("is written beside the tables", async () => {
+    const { out, err } = await inspect("randu", { dimension: "3", out: join(folder, "page") });
+    expect(out).toContain("(9, −6, 1)");
+    expect(err).toContain("Next: open ");
+    expect(readFileSync(join(folder, "page", "index.html"), "utf8")).toContain("15 planes hold them");
+    expect(existsSync(join(folder, "page", "charts", "slice-randu.vl.json"))).toBe(true);
+  });
+
+  it("leaves the report of a study alone, and says where it cannot write", async () => {
+    writeFileSync(join(folder, "record.json"), "{}");
+    const { err } = await inspect("randu", { dimension: "3", out: folder });
+    expect(err).toContain("holds the report of a study and is not overwritten");
+    const below = await inspect("randu", { dimension: "3", out: join(folder, "record.json", "x") });
+    expect(below.err).toContain("--out: cannot write to ");
   });
 });
 

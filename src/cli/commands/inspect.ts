@@ -1,5 +1,6 @@
 /** `tolerand inspect SOURCE...`: the structure of sources, without running an integrand. */
-import { resolve } from "node:path";
+import { existsSync } from "node:fs";
+import { join, resolve } from "node:path";
 import { jsonText } from "../../record/json.js";
 import { plainText, textTable } from "../../report/text-table.js";
 import { parseSource, type SourceChoice } from "../../sources/choice.js";
@@ -21,12 +22,15 @@ export async function run(args: Arguments, io: Io): Promise<number> {
     asInput(() => parseSource(sourceFromText(text, io))),
   );
   const request = inspectionRequest(args, io);
+  const out = textFlag(args, "out");
+  const folder = out === null ? null : resolve(io.cwd, out);
+  if (folder !== null && existsSync(join(folder, "record.json")))
+    throw new InputError(messages.studyFolder(folder));
   const inspections: Inspection[] = [];
   for (const choice of choices) inspections.push(await inspect(choice, request));
   if (booleanFlag(args, "json")) io.stdout.write(`${jsonText(inspections.map(inspectionJson), 2)}\n`);
   else io.stdout.write(inspections.map(words).join("\n\n"));
-  const out = textFlag(args, "out");
-  if (out !== null) await writePage(inspections, resolve(io.cwd, out), io);
+  if (folder !== null) await writePage(inspections, folder, io);
   return EXIT.done;
 }
 
@@ -39,7 +43,13 @@ async function writePage(inspections: readonly Inspection[], folder: string, io:
     const slice = vector === null ? null : sliceOf(choice, vector, findings.dual?.latticePoints ?? null);
     return { source: recordSource(choice), inspection, slice, pairs: pairsOf(inspection) };
   });
-  await writeInspection(inspected, folder, io.commandLine);
+  try {
+    await writeInspection(inspected, folder, io.commandLine);
+  } catch (error) {
+    if (error instanceof Error && "syscall" in error)
+      throw new InputError(messages.cannotWrite(folder, error.message));
+    throw error;
+  }
   io.stderr.write(messages.next(`open ${folder}/index.html`));
 }
 

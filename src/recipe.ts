@@ -11,8 +11,10 @@ import type { Explanation } from "./record/explanation.js";
 import { explainStudy, pairsToExplain, type ExplainedPairs } from "./study/explanations.js";
 import { collectCells, type CellInfo } from "./study/collect.js";
 import type { Executor } from "./study/executor.js";
+import { measureProblems } from "./study/measure/index.js";
 import { notesOf } from "./study/notes.js";
 import { RepetitionWatch } from "./study/opening.js";
+import type { ProblemMeasurements } from "./record/measurements.js";
 import type { RunnableProblem } from "./study/runnable.js";
 import { confirmationTasks, recordSources, referenceTasks, studyLooks, studyTasks } from "./study/spec.js";
 import type { Task, TaskResult } from "./study/tasks.js";
@@ -49,9 +51,11 @@ export async function runStudy(run: StudyRun): Promise<StudyRecord> {
   if (references.length > 0) await runStage(run, "reference", references, results, watch);
   const consensus = formConsensus(spec, cellsOf(run, references, results));
 
-  const { tasks, stops } = await runSizes(run, consensus, results, watch);
+  const measurements = await measureForBudgets(run);
+  const { tasks, stops } = await runSizes(run, { consensus, measurements }, results, watch);
   const rawCells = cellsOf(run, tasks, results);
-  const measured = { spec, problems: spec.problems, sources: recordSources(spec), rawCells, consensus };
+  const sources = recordSources(spec);
+  const measured = { spec, problems: spec.problems, sources, rawCells, consensus, measurements };
 
   const candidates = run.signal.aborted ? [] : candidatesOf(measured);
   const fresh = confirmationTasks(spec, candidates, CONFIRMATION_REPLICATES);
@@ -70,7 +74,7 @@ export async function runStudy(run: StudyRun): Promise<StudyRecord> {
 /** All sizes at once, or one after the other until each source is inside the tolerance or at its largest size. */
 async function runSizes(
   run: StudyRun,
-  consensus: readonly Consensus[],
+  known: Pick<Measured, "consensus" | "measurements">,
   results: Map<string, TaskResult>,
   watch: RepetitionWatch,
 ): Promise<{ readonly tasks: readonly Task[]; readonly stops: readonly Stop[] | null }> {
@@ -91,7 +95,7 @@ async function runSizes(
     await runStage(run, `look ${look}`, next, results, watch);
     if (run.signal.aborted) break;
     const rawCells = cellsOf(run, tasks, results);
-    const inside = insidePairs({ spec, problems: spec.problems, sources, rawCells, consensus });
+    const inside = insidePairs({ spec, problems: spec.problems, sources, rawCells, ...known });
     const ended = open.filter((one) => inside.has(pairKey(one)) || look === one.sizes.length);
     for (const { problem, source, sizes } of ended) {
       const pair = { problem, source };
@@ -102,6 +106,20 @@ async function runSizes(
     open = open.filter((one) => !ended.includes(one));
   }
   return { tasks, stops: looks.flatMap((one) => stops.get(pairKey(one)) ?? []) };
+}
+
+/** What the lines of budgets need beside the estimates; nothing after an interruption. */
+async function measureForBudgets({
+  spec,
+  problems,
+  signal,
+  stage: open,
+}: StudyRun): Promise<ProblemMeasurements[]> {
+  if (signal.aborted) return [];
+  const stage = open("budget", problems.length);
+  const measurements = await measureProblems({ spec, problems, signal, done: () => stage.advance(1) });
+  stage.finish();
+  return measurements;
 }
 
 /** What the structure of sources does to integrands; nothing after an interruption, when no bias is confirmed yet. */

@@ -16,7 +16,7 @@ import {
   type AllocationChoice,
   type AllocationItem,
 } from "./allocation.js";
-import { EXTRAPOLATION } from "./budget.js";
+import { EXTRAPOLATION } from "./budget/sampling.js";
 import type { Context } from "./cells.js";
 import { makeContext } from "./context.js";
 import { unsoundness, userSeconds, type PlanOptions } from "./plan.js";

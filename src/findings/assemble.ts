@@ -2,6 +2,7 @@
 import type { Problem } from "../problem/contract.js";
 import type { Explanation } from "../record/explanation.js";
 import { digestOf } from "../record/json.js";
+import type { ProblemMeasurements } from "../record/measurements.js";
 import {
   RECORD_SCHEMA,
   type BiasTest,
@@ -17,7 +18,7 @@ import {
   type StudySpec,
 } from "../record/types.js";
 import type { Confirmation } from "./bias.js";
-import { budgetOf } from "./budget.js";
+import { budgetOf } from "./budget/total.js";
 import { toCells, type Context } from "./cells.js";
 import { makeContext } from "./context.js";
 import { convergenceOf } from "./convergence.js";
@@ -32,6 +33,7 @@ export interface Measured {
   readonly sources: readonly RecordSource[];
   readonly rawCells: readonly RawCell[];
   readonly consensus: readonly Consensus[];
+  readonly measurements: readonly ProblemMeasurements[];
 }
 
 export interface Assembly extends Measured {
@@ -48,11 +50,7 @@ export interface Assembly extends Measured {
 
 /** Stage 1 alone: the tests to be repeated on fresh keys, at the test's n with R = 256. */
 export function candidatesOf(measured: Measured): (BiasTest | SpreadTest)[] {
-  const context = makeContext(
-    judgedProblems(measured.spec, measured.problems),
-    measured.sources,
-    measured.consensus,
-  );
+  const context = contextOf(measured);
   const series = seriesOf(toCells(measured.rawCells, context, false));
   const { tests, spreadTests } = screenFamily(series, context, measured.spec.falseAlarms);
   return [...tests, ...spreadTests].filter((test) => test.candidate);
@@ -63,11 +61,7 @@ export function confirmedTests(
   measured: Measured,
   confirmations: readonly Confirmation[],
 ): { readonly cells: readonly Cell[]; readonly tests: readonly BiasTest[] } {
-  const context = makeContext(
-    judgedProblems(measured.spec, measured.problems),
-    measured.sources,
-    measured.consensus,
-  );
+  const context = contextOf(measured);
   const cells = toCells(measured.rawCells, context, false);
   return { cells, tests: familyOf(cells, measured, confirmations, context).tests };
 }
@@ -83,9 +77,23 @@ function familyOf(
   return confirmFamily(screened, confirmations, series, context, spec.falseAlarms);
 }
 
+function contextOf(
+  { spec, problems, sources, consensus, measurements, rawCells }: Measured,
+  explanations: readonly Explanation[] = [],
+): Context {
+  return makeContext(
+    judgedProblems(spec, problems),
+    sources,
+    consensus,
+    explanations,
+    measurements,
+    rawCells,
+  );
+}
+
 export function assembleRecord(assembly: Assembly): StudyRecord {
   const { spec, environment, problems, sources, rawCells, consensus, confirmations } = assembly;
-  const context = makeContext(judgedProblems(spec, problems), sources, consensus, assembly.explanations);
+  const context = contextOf(assembly, assembly.explanations);
   const cells = toCells(rawCells, context);
   const series = seriesOf(cells);
   const { tests, spreadTests, size } = familyOf(cells, assembly, confirmations, context);
@@ -111,6 +119,7 @@ export function assembleRecord(assembly: Assembly): StudyRecord {
     budgets: [...budgets, ...inUseBudgets(problems, series, testOf, context)],
     explanations: assembly.explanations,
     ...(assembly.stops === undefined ? {} : { stops: assembly.stops }),
+    measurements: assembly.measurements,
     warnings: [...new Set([...assembly.warnings, ...warningsOf(series, consensus, context)])],
   };
 }

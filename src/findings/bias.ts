@@ -163,6 +163,8 @@ function screen(one: Series, series: readonly Series[], context: Context): Outco
   if (context.sources.get(one.source)?.deterministic === true) {
     return untested("deterministic source: one error, no error bar");
   }
+  const divergent = context.divergent.get(one.problem);
+  if (divergent !== undefined) return untested(divergent);
   const subject = subjectOf(one, series, context);
   if (subject === null) return untested("no reference value");
   if (one.last.mean === null) return untested("non-finite values of the integrand");

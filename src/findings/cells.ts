@@ -6,6 +6,7 @@ import { normalUpperQuantile } from "../numeric/normal.js";
 import type { Problem } from "../problem/contract.js";
 import { digestOf } from "../record/json.js";
 import type { Explanation } from "../record/explanation.js";
+import type { ProblemMeasurements } from "../record/measurements.js";
 import type { Cell, RawCell, RecordSource } from "../record/types.js";
 import { logRmse } from "./leave-one-out.js";
 import type { KnownReference } from "./reference.js";
@@ -16,8 +17,12 @@ export interface Context {
   readonly problems: ReadonlyMap<string, Problem>;
   readonly sources: ReadonlyMap<string, RecordSource>;
   readonly references: ReadonlyMap<string, KnownReference>;
-  /** What the structure of sources does to integrands, by the key of a series; empty while tests are still being made. */
+  /** By `seriesKey`. */
   readonly explanations: ReadonlyMap<string, Explanation>;
+  /** By problem id. */
+  readonly measurements: ReadonlyMap<string, ProblemMeasurements>;
+  /** Problems without a finite variance, and why that is said. */
+  readonly divergent: ReadonlyMap<string, string>;
 }
 
 /** Sample kurtosis of the errors above which a cell is called heavy-tailed (3 for normal errors). */
@@ -41,9 +46,15 @@ export function toCells(rawCells: readonly RawCell[], context: Context, bootstra
   for (const raw of rawCells) largest.set(seriesKey(raw), Math.max(raw.n, largest.get(seriesKey(raw)) ?? 0));
   return rawCells.map((raw) => {
     const cell = toCell(raw, context);
+    if (context.divergent.has(raw.problem) === true) return withoutIntervals(cell);
     const variances = crude.get(outputKey(raw)) ?? null;
     return { ...cell, ...againstCrude(cell, variances, bootstrap && raw.n === largest.get(seriesKey(raw))) };
   });
+}
+
+/** What is left of a cell where the variance is not finite: estimates, their mean and deviation, no interval of anything. */
+function withoutIntervals(cell: Cell): Cell {
+  return { ...cell, biasStandardError: null, rmseInterval: null, coverage: null, heavyTailed: true };
 }
 
 function outputKey(raw: RawCell): string {

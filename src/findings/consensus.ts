@@ -16,10 +16,13 @@ export interface Contribution {
   readonly estimates: readonly number[];
 }
 
+/** Fewer members could agree on the same mistake. */
+const FEWEST_MEMBERS = 3;
+
 /** Below this p-value of homogeneity the members contradict each other, and there is no reference. */
 const HOMOGENEITY_LEVEL = 0.01;
 
-/** Needs two or more members with at least 4 finite estimates each; otherwise there is no value and `agreed` is false. */
+/** Needs three or more members with at least 4 finite estimates each; otherwise there is no value and `agreed` is false. */
 export function consensusOf(problem: string, contributions: readonly Contribution[]): Consensus {
   const members = contributions.map(({ source, n, estimates }) => {
     const centre = mean(estimates);
@@ -30,7 +33,7 @@ export function consensusOf(problem: string, contributions: readonly Contributio
     return { source, n, mean: centre, standardError: count > 3 ? standardError : NaN };
   });
   const usable = members.every((one) => Number.isFinite(one.mean) && Number.isFinite(one.standardError));
-  if (!usable || members.length < 2) {
+  if (!usable || members.length < FEWEST_MEMBERS) {
     return { problem, value: null, standardError: null, members, q: NaN, pValue: NaN, agreed: false };
   }
   const pooled = poolMeans(

@@ -1,9 +1,11 @@
-/** The look-up tables that findings share: problems, sources and references by name. */
+/** The look-up tables that findings share: problems, sources, references, measurements and explanations by name. */
 import type { Problem } from "../problem/contract.js";
 import type { Explanation } from "../record/explanation.js";
-import type { Consensus, RecordSource } from "../record/types.js";
+import type { ProblemMeasurements } from "../record/measurements.js";
+import type { Consensus, RawCell, RecordSource } from "../record/types.js";
 import { seriesKey } from "./series.js";
 import type { Context } from "./cells.js";
+import { divergentProblems } from "./divergence.js";
 import { referencesOf } from "./reference.js";
 
 export function makeContext(
@@ -11,11 +13,16 @@ export function makeContext(
   sources: readonly RecordSource[],
   consensus: readonly Consensus[],
   explanations: readonly Explanation[] = [],
+  measurements: readonly ProblemMeasurements[] = [],
+  rawCells: readonly RawCell[] = [],
 ): Context {
+  const byId = new Map(sources.map((source) => [source.id, source]));
   return {
     problems: new Map(problems.map((problem) => [problem.id, problem])),
-    sources: new Map(sources.map((source) => [source.id, source])),
+    sources: byId,
     references: referencesOf(problems, consensus),
     explanations: new Map(explanations.map((explanation) => [seriesKey(explanation), explanation])),
+    measurements: new Map(measurements.map((one) => [one.problem, one])),
+    divergent: divergentProblems(measurements, rawCells, byId),
   };
 }

@@ -13,12 +13,16 @@ import { studentFactor } from "../numeric/student.js";
 import { normalUpperQuantile } from "../numeric/normal.js";
 import type { BiasTest, Convergence } from "../record/types.js";
 import { COUNTLESS } from "./format.js";
-import { EXTRAPOLATION } from "./budget.js";
+import { EXTRAPOLATION } from "./budget/sampling.js";
 import { isRounding, type Context } from "./cells.js";
 import { toleranceOf } from "./reference.js";
 import { namesOf, type Series } from "./series.js";
 import { decayRejected, logErrors, slopeOver, spreadOf, type Spread } from "./spread.js";
-import { structureLine, unbiasedBy } from "./structure-line.js";
+import { arithmeticLine } from "./budget/arithmetic.js";
+import { resolutionLine } from "./budget/resolution.js";
+import { transformLine } from "./budget/transform.js";
+import type { Problem } from "../problem/contract.js";
+import { structureLine, unbiasedBy } from "./budget/structure.js";
 
 const FLOOR_CONFIDENCE = 0.95;
 
@@ -37,6 +41,7 @@ export function convergenceOf(series: Series, test: BiasTest | undefined, contex
     cost: null,
   };
   if (source === undefined || source.deterministic || series.last.mean === null) return none;
+  if (context.divergent.has(series.problem) === true) return none;
   const spread = spreadOf(series, source.family === "pseudo-random");
   const { floor, floorLower } = floorOf(series, test, context, spread);
   const tolerance = toleranceIn(series, context);
@@ -108,11 +113,13 @@ function reachOf(
   const { confidence } = problem.tolerance;
   const structure = structureLine(series, test, context, confidence);
   const uncertainty = context.references.get(series.problem)?.uncertainty ?? 0;
+  const measured = fixedBiases(series, context, problem, test);
   const declared = (kind: "bias" | "random") =>
     (problem.declared ?? []).filter((line) => line.kind === kind).map((line) => line.value);
   const bias =
     (structure.confirmed ? (structure.value ?? 0) : 0) +
     uncertainty * normalUpperQuantile((1 - confidence) / 2) +
+    measured +
     declared("bias").reduce((sum, value) => sum + value, 0);
   const factor = studentFactor(confidence, series.last.replicates - 1);
   const room = Math.max(0, tolerance - bias) / factor;
@@ -128,6 +135,24 @@ function reachOf(
     interval: [atLeast(found.interval[0]), atLeast(found.interval[1])],
     extrapolated: found.value > EXTRAPOLATION * spread.largest,
   };
+}
+
+/** The bias lines that were measured once for the problem and do not fall with n. */
+function fixedBiases(series: Series, context: Context, problem: Problem, test: BiasTest | undefined): number {
+  const given = {
+    series,
+    context,
+    problem,
+    test,
+    source: context.sources.get(series.source),
+    reference: context.references.get(series.problem),
+    n: series.last.n,
+    confidence: problem.tolerance.confidence,
+    spread: null,
+    sigma: { value: 0, interval: null },
+  };
+  const lines = [resolutionLine, transformLine, arithmeticLine].flatMap((make) => make(given));
+  return lines.reduce((sum, line) => sum + (line.value ?? 0), 0);
 }
 
 /** The n from which on the replicates agree to rounding. */

@@ -35,11 +35,13 @@ export interface Family {
 export function screenFamily(series: readonly Series[], context: Context, falseAlarms: number): Family {
   const biases = screenBiases(series, context);
   const subjects = series.filter((one) => isSubject(one, context));
-  const spreads = subjects.map(({ last, cells }): SpreadOutcome =>
-    cells.some((cell) => cell.nonFinite !== null)
-      ? noSpreadTest("non-finite values of the integrand")
-      : testSpread(last, false),
-  );
+  const spreads = subjects.map(({ last, cells, problem }): SpreadOutcome => {
+    const divergent = context.divergent.get(problem);
+    if (divergent !== undefined) return noSpreadTest(divergent);
+    if (cells.some((cell) => cell.nonFinite !== null))
+      return noSpreadTest("non-finite values of the integrand");
+    return testSpread(last, false);
+  });
   const pValues = [...biases, ...spreads].map((outcome) => outcome.pValue);
   const size = pValues.filter((value) => value !== null).length;
   const adjusted = adjustTogether(pValues, size);

@@ -20,7 +20,9 @@
 import { studentFactor } from "../numeric/student.js";
 import type { Problem } from "../problem/contract.js";
 import type { BiasTest, Budget, Convergence, RecordSource, StudyRecord } from "../record/types.js";
-import { budgetOf, EXTRAPOLATION } from "./budget.js";
+import { ESSENTIAL } from "./budget/line.js";
+import { EXTRAPOLATION } from "./budget/sampling.js";
+import { budgetOf } from "./budget/total.js";
 import type { Context } from "./cells.js";
 import { makeContext } from "./context.js";
 import { formatCount, formatValue } from "./format.js";
@@ -225,7 +227,7 @@ function totalsOf(series: Series, test: BiasTest | undefined, context: Context, 
     if (budget === null) return "the record does not hold its problem";
     const { total, totalInterval: ends, lines } = budget;
     if (total === null) return budget.reason ?? "its total is not known";
-    const missing = lines.find((line) => line.value === null);
+    const missing = lines.find(({ line, value }) => ESSENTIAL.has(line) && value === null);
     if (missing !== undefined) return `${missing.line}: ${missing.basis}`;
     if (ends === null) return "the deviation of its estimates has no interval";
     return scaled({ budget, total, ends, test, series, randomisations });
@@ -261,7 +263,7 @@ function scaled({ budget, total, ends, test, series, randomisations }: Scaling):
   const kept = test?.confirmed === true ? structure : Math.min(structure, resolution);
   const fixed = bias - structure + kept;
   const [from, to] = sampling?.interval ?? [sigma, sigma];
-  const lowRandom = factor * Math.hypot(from, others);
+  const lowRandom = (budget.coverageFactor ?? factor) * Math.hypot(from, others);
   const lowBias = Math.max(0, ends[0] - lowRandom);
   return {
     point: {
@@ -274,7 +276,7 @@ function scaled({ budget, total, ends, test, series, randomisations }: Scaling):
         line: line.line,
         value: line.line === "source structure" && test?.confirmed !== true ? 0 : (line.value ?? 0),
       })),
-      { line: "declared and other random lines", value: factor * others },
+      { line: "declared and other random lines", value: (budget.coverageFactor ?? factor) * others },
     ].filter((line) => line.value > 0),
   };
 }

@@ -8,8 +8,9 @@
  * sources do not have.
  */
 import type { Problem } from "../problem/contract.js";
+import type { ProblemMeasurements } from "../record/measurements.js";
 import type { Consensus, RawCell, RecordSource, Stop, StudySpec } from "../record/types.js";
-import { budgetOf } from "./budget.js";
+import { budgetOf } from "./budget/total.js";
 import { toCells } from "./cells.js";
 import { makeContext } from "./context.js";
 import { formatCount, formatPercent } from "./format.js";
@@ -36,6 +37,7 @@ export interface Looked {
   readonly sources: readonly RecordSource[];
   readonly rawCells: readonly RawCell[];
   readonly consensus: readonly Consensus[];
+  readonly measurements: readonly ProblemMeasurements[];
 }
 
 /** Text that tells pairs apart. */
@@ -45,8 +47,9 @@ export function pairKey({ problem, source }: { readonly problem: string; readonl
 
 /** The pairs of problem and source (as `pairKey`) whose budgets at their largest n all say `within`. */
 export function insidePairs(looked: Looked): ReadonlySet<string> {
-  const { spec, sources, rawCells, consensus } = looked;
-  const context = makeContext(judgedProblems(spec, looked.problems), sources, consensus);
+  const { spec, sources, rawCells, consensus, measurements } = looked;
+  const problems = judgedProblems(spec, looked.problems);
+  const context = makeContext(problems, sources, consensus, [], measurements, rawCells);
   const inside = new Map<string, boolean>();
   for (const series of seriesOf(toCells(rawCells, context, false))) {
     const within = budgetOf(series, undefined, context)?.verdict === "within";

@@ -17,6 +17,13 @@ export function warningsOf(
   for (const { problem, agreed, members, pValue } of consensus) {
     if (!agreed) warnings.add(disagreement(problem, members, pValue));
   }
+  for (const [problem, why] of context.divergent) warnings.add(`${problem}: ${why}`);
+  for (const { problem, tail } of context.measurements.values()) {
+    if (tail?.constant === true)
+      warnings.add(
+        `${problem}: the integrand had one value at all of ${formatCount(tail.points)} points; if it is constant there is nothing to integrate`,
+      );
+  }
   for (const one of series) {
     const source = context.sources.get(one.source);
     const problem = context.problems.get(one.problem);
@@ -24,7 +31,15 @@ export function warningsOf(
     for (const text of sourceWarnings(source, problem, one.last)) warnings.add(text);
     const broken = one.cells.find((cell) => cell.nonFinite !== null);
     if (broken !== undefined) warnings.add(nonFiniteWarning(broken));
-    if (one.last.heavyTailed) {
+    const { replicates, replicateDeviation } = one.last;
+    const constant = context.measurements.get(one.problem)?.tail?.constant === true;
+    if (replicates > 1 && replicateDeviation === 0 && !constant) {
+      warnings.add(
+        `${one.problem}, ${one.source}: all ${formatCount(replicates)} replicates gave the same value at ` +
+          `${formatCount(one.last.n)} points; their deviation says nothing of the error`,
+      );
+    }
+    if (one.last.heavyTailed && context.divergent.has(one.problem) !== true) {
       warnings.add(
         `${one.problem}, ${one.source}: errors are heavy-tailed (sample kurtosis above ${HEAVY_TAIL} at ` +
           `${formatCount(one.last.n)} points); their deviation is a lower bound only`,

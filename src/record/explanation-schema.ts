@@ -30,7 +30,7 @@ const fullCycle = z.strictObject({
 
 const paired = { bias: real, standardError: real, interval: z.tuple([real, real]) };
 
-const resolution = z.strictObject({
+export const resolution = z.strictObject({
   bits: z.int().min(1),
   endpoint: z.enum(["middle", "left"]),
   confidence: z.number().gt(0).lt(1),

@@ -5,6 +5,7 @@
  */
 import { z } from "zod";
 import { explanation } from "./explanation-schema.js";
+import { measurements } from "./measurements-schema.js";
 import { interval, name, number, orNull, real, reals, text, whole } from "./schema-parts.js";
 import { RECORD_SCHEMA, type StudyRecord } from "./types.js";
 
@@ -168,13 +169,22 @@ const budget = z.strictObject({
   tolerance: number,
   confidence: z.number().gt(0).lt(1),
   lines: z.array(
-    z.strictObject({ line: text, kind: z.enum(["bias", "random"]), value: number, interval, basis: text }),
+    z.strictObject({
+      line: text,
+      kind: z.enum(["bias", "random", "probability"]),
+      value: number,
+      interval,
+      basis: text,
+      remedy: orNull(text).default(null),
+    }),
   ),
   total: number,
   totalInterval: interval,
   verdict: z.enum(["within", "outside", "undecided", "none"]),
   headroom: number,
   largestLine: orNull(text),
+  coverageFactor: number.default(null),
+  degrees: number.default(null),
   reason: orNull(text),
   inUse: z.boolean(),
 });
@@ -231,6 +241,7 @@ const recordSchema = z
       )
       .optional()
       .describe("Where a study that stops at the tolerance left each source."),
+    measurements: z.array(measurements).default([]),
     warnings: z.array(text),
   })
   .describe("The record of a study by tolerand: what was asked, what was measured, what follows from it.");

@@ -5,6 +5,7 @@
  */
 import type { Problem, SourceSpec } from "../problem/contract.js";
 import type { SourceDescription } from "../sources/contract.js";
+import type { ProblemMeasurements } from "./measurements.js";
 import type { Explanation } from "./explanation.js";
 
 export const RECORD_SCHEMA = "tolerand/record/1";
@@ -207,13 +208,19 @@ export interface Convergence {
 export type Verdict = "within" | "outside" | "undecided" | "none";
 
 export interface BudgetLine {
-  /** "sampling", "source structure", "reference", or the name of a contribution that the problem declares. */
+  /** Name of a line of findings/budget/registry.ts, or of a contribution that the problem declares. */
   readonly line: string;
-  readonly kind: "bias" | "random";
-  /** Size: a bound for a bias line, one standard deviation for a random line; null where it could not be assessed. */
+  readonly kind: "bias" | "random" | "probability";
+  /**
+   * Size: a bound for a bias line, one standard deviation for a random line; a probability is not part of the total. null
+   * where it could not be assessed.
+   */
   readonly value: number | null;
   readonly interval: readonly [number, number] | null;
+  /** How it was found. */
   readonly basis: string;
+  /** What would reduce it; null where there is nothing to reduce. */
+  readonly remedy: string | null;
 }
 
 /** What the tolerance is spent on at the stated n. */
@@ -232,6 +239,9 @@ export interface Budget {
   /** tolerance - total. */
   readonly headroom: number | null;
   readonly largestLine: string | null;
+  /** Coverage factor of the random lines together, and its effective degrees of freedom (null: known deviations). */
+  readonly coverageFactor: number | null;
+  readonly degrees: number | null;
   /** Why, in words, when the verdict is `undecided` or `none`. */
   readonly reason: string | null;
   /** True for the budget of what is in use. */
@@ -294,5 +304,7 @@ export interface StudyRecord {
   readonly explanations: readonly Explanation[];
   /** Only of a study that stops at the tolerance. */
   readonly stops?: readonly Stop[];
+  /** What the budgets' lines need beside the cells, per problem. */
+  readonly measurements: readonly ProblemMeasurements[];
   readonly warnings: readonly string[];
 }

@@ -6,7 +6,8 @@
 import { createHash } from "node:crypto";
 
 /** Why points are drawn; different purposes never share points. */
-export type Purpose = "study" | "pilot" | "reference" | "confirmation" | "points" | "resolution" | "explain";
+export type Purpose =
+  "study" | "pilot" | "reference" | "confirmation" | "points" | "resolution" | "explain" | "budget";
 
 export interface KeyParts {
   readonly seed: number;

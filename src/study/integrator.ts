@@ -110,6 +110,22 @@ export class Integrator {
     return this.#values;
   }
 
+  /** The inputs (one list per coordinate) and first values of `count` points of a stream. */
+  points(stream: PointStream, count: number): { inputs: Float64Array[]; values: Float64Array } {
+    const { blockPoints, dimension } = this.#problem.formula;
+    const inputs = Array.from({ length: dimension }, () => new Float64Array(count));
+    const values = new Float64Array(count);
+    for (let begin = 0; begin < count; begin += blockPoints) {
+      const size = Math.min(blockPoints, count - begin);
+      this.#evaluateBlock(stream, size);
+      const x = this.kernels.f64(this.#x, blockPoints * dimension);
+      for (const [r, row] of inputs.entries())
+        row.set(x.subarray(r * blockPoints, r * blockPoints + size), begin);
+      values.set(this.kernels.f64(this.#values, size), begin);
+    }
+    return { inputs, values };
+  }
+
   /** Fills, transforms, evaluates and sums one block; gives the first point with a non-finite value, or -1. */
   #evaluateBlock(stream: PointStream, count: number): number {
     const { blockPoints, channels } = this.#problem.formula;

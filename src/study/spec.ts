@@ -9,7 +9,7 @@ export const LARGEST_IN_USE = 2 ** 22;
 
 /** The sources that a missing reference is formed from: three families, each sound and randomised. */
 export function referenceSources(dimension: number): readonly string[] {
-  const candidates = ["sobol+owen", "lattice+shift", "philox4x32", "pcg64"];
+  const candidates = ["sobol+owen", "lattice+shift", "philox4x32", "pcg64", "xoshiro256++"];
   return candidates.filter((id) => parseSource(id).source.largestDimension >= dimension).slice(0, 3);
 }
 

@@ -154,6 +154,7 @@ export function makeAssembly(rawCells: RawCell[], changes: Partial<Assembly> = {
     consensus: [],
     confirmations: [],
     explanations: [],
+    measurements: [],
     warnings: [],
     ...changes,
   };

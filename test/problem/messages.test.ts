@@ -187,6 +187,11 @@ describe("meaning", () => {
       "4:12: declared item 1: expected bias or deviation, found neither; give one of them",
     ],
     [
+      "declared",
+      "[{ line: step, bias: 0.1 }]",
+      "4:12: declared item 1.basis is missing; expected where the figure comes from, as text",
+    ],
+    [
       "study",
       "{ replicates: 1 }",
       "4:22: study.replicates: expected a whole number from 2 to 100000, found 1",

@@ -248,6 +248,7 @@ export function sampleRecord(size: SampleSize = SMALL): StudyRecord {
           value: last.replicateDeviation,
           interval: null,
           basis: "replicates",
+          remedy: null,
         },
         {
           line: "source structure",
@@ -255,8 +256,9 @@ export function sampleRecord(size: SampleSize = SMALL): StudyRecord {
           value: biased ? Math.abs(law.bias) * 1.05 : 0.0001,
           interval: null,
           basis: "upper limit",
+          remedy: null,
         },
-        { line: "reference", kind: "bias", value: 0, interval: null, basis: "exact" },
+        { line: "reference", kind: "bias", value: 0, interval: null, basis: "exact", remedy: null },
       ] as const;
       const budget: Budget = {
         ...key,
@@ -268,6 +270,8 @@ export function sampleRecord(size: SampleSize = SMALL): StudyRecord {
         totalInterval: interval,
         verdict,
         headroom: total === null ? null : 0.01 - total,
+        coverageFactor: 2.744,
+        degrees: 31,
         largestLine: total === null ? null : biased ? "source structure" : "sampling",
         reason:
           verdict === "undecided"
@@ -341,6 +345,7 @@ export function sampleRecord(size: SampleSize = SMALL): StudyRecord {
     cells,
     tests,
     spreadTests: [],
+    measurements: [],
     family: { tests: tests.filter((t) => t.kind !== "none").length, level: 0.01 },
     convergence,
     budgets,

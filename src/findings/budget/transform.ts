@@ -1,0 +1,49 @@
+/** Transform: the inverse distribution functions of the inputs against more exact ones, carried through the integrand. */
+import { studentFactor } from "../../numeric/student.js";
+import { formatCount, formatPercent, formatValue } from "../format.js";
+import { notAssessed, type LineMaker } from "./line.js";
+import { limitOf } from "./limit.js";
+
+export const transformLine: LineMaker = ({ context, series, problem, confidence }) => {
+  const all = context.measurements.get(series.problem);
+  const line = { line: "transform", kind: "bias" } as const;
+  if (problem.inputs.every((input) => input.distribution === "uniform")) {
+    return [
+      {
+        ...line,
+        value: 0,
+        interval: null,
+        basis: "all inputs are uniform: no transform",
+        remedy: null,
+        lower: 0,
+      },
+    ];
+  }
+  const found = all?.transform ?? null;
+  if (found === null || !Number.isFinite(found.bias))
+    return [
+      notAssessed(
+        "transform",
+        "bias",
+        all === undefined ? "not measured in this study" : "values are not finite",
+        null,
+      ),
+    ];
+  const factor = studentFactor(confidence, found.points - 1);
+  // A condition that no point changed: its chance is bounded as that of a rare event.
+  const limit = limitOf(found, factor, confidence, found.amplification, series.last.indicator);
+  const basis =
+    `normal inputs against quantiles in 30 digits, through the integrand at ${formatCount(found.points)} points: ` +
+    `${formatPercent(confidence)} limit of ${formatValue(found.bias, found.standardError)}` +
+    (limit.counted ? " (Clopper\u2013Pearson)" : "");
+  return [
+    {
+      ...line,
+      value: limit.value,
+      interval: [0, limit.value],
+      basis,
+      remedy: "a more exact inverse distribution function",
+      lower: 0,
+    },
+  ];
+};

@@ -117,6 +117,7 @@ export const commands: readonly Command[] = [
       "seconds-per-point": text("seconds of one evaluation in your own program"),
       randomisations: text("independent randomisations that the estimate is the mean of (default: 1)"),
       time: text("a time budget in seconds: the smallest error that it buys"),
+      out: text("folder for a report (default: none is written)"),
       total: text("tolerance on the weighted sum of a suite (default: that of its suite.yaml)"),
       threads,
       "allow-programs": allowPrograms,

@@ -67,6 +67,8 @@ export interface SourcePlan extends SeriesName {
   /** Replicates of a study of this n that is expected to say `within`. */
   readonly replicates: number;
   readonly extrapolated: boolean;
+  /** The largest n measured, times M. */
+  readonly largestMeasured: number;
   /** On this machine, measured; null where not known. */
   readonly secondsPerPoint: number | null;
   /** One run of n points on this machine. */
@@ -155,6 +157,7 @@ function planSeries(
     randomisations,
     replicates,
     extrapolated: false,
+    largestMeasured: series.last.n * randomisations,
     secondsPerPoint: spp,
     seconds: null,
     userSeconds: null,

@@ -4,7 +4,8 @@ import type { AllocationPlan } from "../findings/allocation-plan.js";
 import { formatCount, formatPercent, formatSeconds, formatValue } from "../findings/format.js";
 import { textTable, type TextColumn } from "./text-table.js";
 
-const COLUMNS: readonly TextColumn[] = [
+/** The columns of an allocation's table. */
+export const ALLOCATION_COLUMNS: readonly TextColumn[] = [
   { title: "problem", align: "left" },
   { title: "weight", align: "right" },
   { title: "source", align: "left" },
@@ -31,7 +32,12 @@ export function allocationText(plan: AllocationPlan): string {
 }
 
 function tableOf(allocation: Allocation, equal: Allocation | null): string[] {
-  const rows = allocation.rows.map((row, i) => [
+  return textTable(ALLOCATION_COLUMNS, allocationRows(allocation, equal)).map((line) => `  ${line}`);
+}
+
+/** The cells of an allocation's table, beside equal points where they are known. */
+export function allocationRows(allocation: Allocation, equal: Allocation | null): string[][] {
+  return allocation.rows.map((row, i) => [
     row.problem,
     String(row.weight),
     row.source,
@@ -40,7 +46,6 @@ function tableOf(allocation: Allocation, equal: Allocation | null): string[] {
     formatValue(row.deviation),
     formatSeconds(row.seconds),
   ]);
-  return textTable(COLUMNS, rows).map((line) => `  ${line}`);
 }
 
 /** The total and what allocation saves. */

@@ -3,7 +3,8 @@ import { formatCount, formatPercent, formatSeconds, formatValue } from "../findi
 import type { PlanPoint, ProblemPlan, SourcePlan } from "../findings/plan.js";
 import { plainText, textTable, type TextColumn } from "./text-table.js";
 
-const COLUMNS: readonly TextColumn[] = [
+/** The columns of a plan's table; the first marks what is recommended. */
+export const PLAN_COLUMNS: readonly TextColumn[] = [
   { title: " ", align: "left" },
   { title: "source", align: "left" },
   { title: "points", align: "right" },
@@ -19,22 +20,26 @@ export function planText(plans: readonly ProblemPlan[]): string {
 }
 
 function blockOf(plan: ProblemPlan): string[] {
+  const rows = plan.sources.map((one) => planRow(one, plan.recommended === one));
+  return [
+    [plainText(plan.title), ...planTask(plan)].join("   "),
+    ...textTable(PLAN_COLUMNS, rows).map((line) => `  ${line}`),
+    ...sentencesOf(plan).map((line) => `  ${line}`),
+  ];
+}
+
+/** What is asked: dimension, tolerance, and the user's own seconds per point. */
+export function planTask(plan: ProblemPlan): string[] {
   const held =
     plan.tolerance === null
       ? "tolerance not known"
       : `tolerance \u00b1${formatValue(plan.tolerance)} at ${formatPercent(plan.confidence)}`;
   const mine = plan.userSecondsPerPoint;
-  const pace = mine === null ? [] : [`at your ${formatSeconds(mine)} a point`];
-  const head = [plainText(plan.title), `d ${plan.dimension}`, held, ...pace].join("   ");
-  const rows = plan.sources.map((one) => rowOf(one, plan.recommended === one));
-  return [
-    head,
-    ...textTable(COLUMNS, rows).map((line) => `  ${line}`),
-    ...sentencesOf(plan).map((line) => `  ${line}`),
-  ];
+  return [`d ${plan.dimension}`, held, ...(mine === null ? [] : [`at your ${formatSeconds(mine)} a point`])];
 }
 
-function rowOf(one: SourcePlan, recommended: boolean): string[] {
+/** The cells of one source. */
+export function planRow(one: SourcePlan, recommended: boolean): string[] {
   const { point, interval } = one;
   const cost = one.userSeconds ?? one.seconds;
   return [

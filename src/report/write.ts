@@ -5,12 +5,17 @@
 import { mkdir, readdir, rename, rm, writeFile } from "node:fs/promises";
 import { dirname, join } from "node:path";
 import { jsonText } from "../record/json.js";
+import type { AllocationPlan } from "../findings/allocation-plan.js";
+import type { ProblemPlan } from "../findings/plan.js";
 import type { StudyRecord } from "../record/types.js";
+import { allocationChart } from "./charts/allocation-chart.js";
+import { planChart } from "./charts/plan-chart.js";
 import { chartsOf, everyChart, inspectionCharts } from "./charts/index.js";
 import { inspectionPage } from "./page/inspection-page.js";
 import { inspectionJson } from "../structure/inspection.js";
 import { viewInspections, type Inspected } from "./inspection-view.js";
 import { page, reportTitle } from "./page/page.js";
+import { planPage } from "./page/plan-page.js";
 import { drawForFile } from "./render.js";
 import { summary } from "./summary.js";
 import { viewRecord } from "./view.js";
@@ -105,6 +110,35 @@ export async function writeInspection(
   command: string,
 ): Promise<void> {
   await writeTexts(folder, await inspectionTexts(inspected, command));
+}
+
+/** What `tolerand plan` found, for its page. */
+export interface PlanReport {
+  readonly record: StudyRecord;
+  readonly plans: readonly ProblemPlan[];
+  readonly allocation: AllocationPlan | null;
+  /** The command line that repeats it. */
+  readonly command: string;
+}
+
+/** The text of every file of a plan's report. */
+export async function planTexts(report: PlanReport): Promise<Map<string, string>> {
+  const { record, plans, allocation, command } = report;
+  const view = viewRecord(record);
+  const charts = new Map(plans.map((plan) => [plan.problem, planChart(view, plan)]));
+  const across = allocation === null ? null : allocationChart(view, allocation);
+  const texts = new Map<string, string>();
+  texts.set("plan.json", `${jsonText({ plans, allocation }, 1)}\n`);
+  for (const chart of [...charts.values(), across]) {
+    if (chart !== null) texts.set(`charts/${chart.name}.vl.json`, `${jsonText(chart.spec, 1)}\n`);
+  }
+  texts.set("index.html", await planPage({ plans, allocation, charts, across, command }));
+  return texts;
+}
+
+/** Writes the report of a plan; rejects with the system's error where the folder cannot be written. */
+export async function writePlan(report: PlanReport, folder: string): Promise<void> {
+  await writeTexts(folder, await planTexts(report));
 }
 
 /**

@@ -1,9 +1,9 @@
 /** `tolerand plan PATH…`: from a pilot on keys of its own (or from a record) to points, cost and a recommendation. */
 import { relative, resolve } from "node:path";
 import { allocationOf } from "../../findings/allocation-plan.js";
-import { planOf, type PlanOptions } from "../../findings/plan.js";
+import { planOf, type PlanOptions, type ProblemPlan } from "../../findings/plan.js";
 import type { SuiteTotal } from "../../problem/contract.js";
-import { loadPaths, type LoadedProblems } from "../../problem/load.js";
+import { loadPaths, type LoadedProblem, type LoadedProblems } from "../../problem/load.js";
 import { parseSizes } from "../../problem/sizes.js";
 import { runStudy } from "../../recipe.js";
 import { jsonText } from "../../record/json.js";
@@ -20,7 +20,7 @@ import { EXIT, type Arguments, type Io } from "../command.js";
 import { environmentOf } from "../environment.js";
 import { asInput, InputError } from "../errors.js";
 import { messages } from "../messages.js";
-import { booleanFlag, positiveFlag, textFlags, threadCount, wholeFlag } from "../read.js";
+import { booleanFlag, positiveFlag, textFlag, textFlags, threadCount, wholeFlag } from "../read.js";
 import { isRecord, readRecord } from "../read-record.js";
 import { settingsFromFlags } from "../study-flags.js";
 
@@ -55,19 +55,32 @@ export async function run(args: Arguments, io: Io): Promise<number> {
   const from = given === null ? "pilot" : "record";
   if (booleanFlag(args, "json")) io.stdout.write(`${jsonText({ from, plans, allocation }, 2)}\n`);
   else io.stdout.write(planText(plans) + (allocation === null ? "" : `\n${allocationText(allocation)}`));
-  for (const warning of record.warnings) io.stderr.write(`note: ${warning}\n`);
-  const [first] = plans.flatMap(({ recommended }) => recommended ?? []);
-  if (first?.point) {
-    const { source, randomisations: m, point, replicates } = first;
-    const file = loaded.problems.find(({ problem }) => problem.id === first.problem)?.document.file;
-    const path = file === undefined ? first.problem : relative(io.cwd, resolve(io.cwd, file));
-    io.stderr.write(
-      messages.next(
-        `tolerand study ${path} --sources ${source} --sizes ${point.n / m} --replicates ${replicates}`,
-      ),
-    );
+  const out = textFlag(args, "out");
+  if (out !== null) {
+    const { writePlan } = await import("../../report/index.js");
+    await writePlan({ record, plans, allocation, command: io.commandLine }, resolve(io.cwd, out));
   }
+  for (const warning of record.warnings) io.stderr.write(`note: ${warning}\n`);
+  io.stderr.write(
+    messages.next(out === null ? studyCommand(plans, loaded, io) : `open ${resolve(io.cwd, out)}/index.html`),
+  );
   return EXIT.done;
+}
+
+/** The study that shows the first plan recommended; where there is none, what to look into. */
+function studyCommand(plans: readonly ProblemPlan[], { problems }: LoadedProblems, io: Io): string {
+  const first = plans.find(({ recommended }) => recommended !== null)?.recommended;
+  const asked = problems.find(({ problem }) => problem.id === (first?.problem ?? plans[0]?.problem));
+  const path = asked === undefined ? (first?.problem ?? "PATH") : pathOf(asked, io);
+  if (first === undefined || first === null || first.point === null) return `tolerand study ${path}`;
+  const { source, randomisations, point, replicates } = first;
+  return `tolerand study ${path} --sources ${source} --sizes ${point.n / randomisations} --replicates ${replicates}`;
+}
+
+/** As a user would write it: a shipped problem by its name, a file from the working folder. */
+function pathOf({ problem, suite, document }: LoadedProblem, io: Io): string {
+  const path = relative(io.cwd, resolve(io.cwd, document.file));
+  return path.startsWith("..") && suite !== null ? `${suite.name}/${problem.id}` : path;
 }
 
 /** The record that a plan is made from without a run; null where the paths name problems. */

@@ -64,6 +64,9 @@ const input = z
     }),
   );
 
+/** Parameters that are lists. */
+const LISTS = new Set(["values", "probabilities", "times"]);
+
 /** The parameters of all distributions, as the published schema lists them beside an input's own keys. */
 function parameterProperties(): Record<string, z.core.JSONSchema.JSONSchema> {
   const properties: Record<string, z.core.JSONSchema.JSONSchema> = {};
@@ -74,7 +77,9 @@ function parameterProperties(): Record<string, z.core.JSONSchema.JSONSchema> {
     }
   }
   for (const [key, ids] of users) {
-    const anyOf: z.core.JSONSchema.JSONSchema[] = [{ type: "number" }, { type: "string", minLength: 1 }];
+    const one: z.core.JSONSchema.JSONSchema[] = [{ type: "number" }, { type: "string", minLength: 1 }];
+    const list = LISTS.has(key);
+    const anyOf: z.core.JSONSchema.JSONSchema[] = list ? [{ type: "array", items: { anyOf: one } }] : one;
     properties[key] = { anyOf, description: `Parameter of ${ids.join(", ")}.` };
   }
   return properties;

@@ -51,7 +51,7 @@ async function agree(problem: Problem): Promise<void> {
 }
 
 test("every shipped problem compiles and agrees with mathjs at three points", async () => {
-  const { problems } = await loadPaths(["classic", "planes", "tidal", "tour"]);
+  const { problems } = await loadPaths(["classic", "inputs", "planes", "tidal", "tour"]);
   for (const { problem } of problems) await agree(problem);
 });
 

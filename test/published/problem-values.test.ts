@@ -12,7 +12,7 @@ import type { LoadedProblem } from "../../src/problem/load.js";
 let problems: readonly LoadedProblem[] = [];
 let values: Readonly<Record<string, { value: string; how: string }>> = {};
 beforeAll(async () => {
-  problems = (await loadPaths(["classic", "planes", "tidal", "tour"])).problems;
+  problems = (await loadPaths(["classic", "inputs", "planes", "tidal", "tour"])).problems;
   const url = new URL("data/problem-values.json", import.meta.url);
   ({ values } = JSON.parse(await readFile(url, "utf8")) as { values: typeof values });
 });

@@ -10,7 +10,7 @@ the Poisson binomial distribution. All at 40 digits.
 import json
 import sys
 
-from mpmath import mp, mpf, quad, exp, cos, sin, pi, sqrt, fabs, log, erf, gamma, npdf, ncdf, inf, findroot, mpc, norm
+from mpmath import mp, mpf, quad, exp, cos, sin, pi, sqrt, fabs, log, erf, gamma, npdf, ncdf, inf, findroot, mpc, norm, nsum, factorial
 
 mp.dps = 40
 
@@ -188,6 +188,35 @@ p = mpf("0.03")
 threshold2 = quantile(p)
 tail = lambda t: 1 - sum(count([ncdf((threshold2 - sqrt(r) * t) / sqrt(1 - r))] * 25)[:4])
 put("member-losses-tail", quad(lambda t: tail(t) * npdf(t), STEPS), "conditional recursion over members, integrated over the common factor")
+
+# The suite "inputs": densities integrated in place of closed forms.
+I = lambda f, *ends: quad(f, list(ends))
+put("storm-repairs", nsum(lambda k: k * mpf("6.5") ** k * exp(-mpf("6.5")) / factorial(k), [0, inf])
+    * I(lambda x: x * x ** mpf("1.5") * exp(-x / 3) / (gamma(mpf("2.5")) * mpf(3) ** mpf("2.5")), 0, 2, 10, 40, 200, 600)
+    + mpf("0.6"), "sum over the Poisson law times quadrature of the gamma density")
+put("rough-seas", 2 * I(lambda x: x * (1 + x * x / 4) ** mpf("-2.5") * mpf(3) / 8, 0, 1, 5, 50, 1000, inf), "quadrature of Student's density")
+put("worn-blades", I(lambda x: x ** mpf("2.5") * sqrt(1 - x), 0, 1) / I(lambda x: x ** mpf("1.5") * sqrt(1 - x), 0, 1)
+    * I(lambda x: (x + 2) * npdf(x), -1, 2) / I(npdf, -1, 2) * I(lambda x: 2 * x * x * exp(-x * x), 0, 1, 3, 12), "quadrature of the three densities")
+put("first-passage", I(lambda x: exp(-mpf("0.4") * x) * sqrt(3 / (2 * pi * x ** 3)) * exp(-3 * (x - 2) ** 2 / (8 * x)), 0, 0.1, 0.5, 1, 3, 10, 40, 200), "quadrature of the density")
+r = mpf("0.6")
+put("both-sites-low", I(lambda t: ncdf(-r * t / sqrt(1 - r * r)) * npdf(t), -30, -8, -3, -1, 0), "one normal given the other, one-dimensional quadrature")
+put("all-members-pay", quad(lambda t: ncdf(t) ** 9 * npdf(t), STEPS), "conditional on the factor, one-dimensional quadrature")
+centre = log(mpf(100)) - mpf("0.04") * 65 / 256
+spread = mpf("0.2") / 64 * sqrt(mpf(65) * 129 / 6)
+k = (log(mpf(95)) - centre) / spread
+average = quad(lambda t: (95 - exp(centre + spread * t)) * npdf(t), [-30, -12, -8, -6, -4, -3, -2, -1, k])
+for construction in ("increments", "bridge", "principal-components"):
+    put("season-average-" + construction, average, "quadrature of the lognormal law of the geometric mean")
+def exchange(t):
+    # north given by t; south's mean of max(c - B, 0) by quadrature over its own part
+    c = 100 * exp(mpf("0.2") * t - mpf("0.02"))
+    own = mpf("0.3") * sqrt(1 - r * r)
+    rest = log(mpf(90)) - mpf("0.045") + mpf("0.3") * r * t
+    return quad(lambda e: (c - exp(rest + own * e)) * npdf(e), [-15, -9, -6, -4, -2, (log(c) - rest) / own]) * npdf(t)
+put("site-exchange-paths", quad(exchange, [-14, -9, -6, -4, -2, -1, 0, 1, 2, 4, 6, 9, 14]), "double quadrature over two correlated normals")
+m = mpf("0.1") + mpf("0.3") * exp(mpf("-1.4"))
+w = sqrt(mpf("0.25") / mpf("1.4") * (1 - exp(mpf("-2.8"))))
+put("reverting-price", quad(lambda t: exp(m + w * t) * npdf(t), STEPS), "quadrature over the normal end of the path")
 
 json.dump({"meta": {"script": "problem-values.py", "library": "mpmath " + __import__("mpmath").__version__, "digits": 40}, "values": values}, sys.stdout, indent=2)
 print()

@@ -12,6 +12,7 @@ import { sobol } from "../dist/sources/sobol.js";
 import { engineRates } from "./engine.mjs";
 import { fullCycleTable } from "./full-cycle.mjs";
 import { shortestVectorTable } from "./shortest-vectors.mjs";
+import { quantileTable } from "./quantiles.mjs";
 import { constructionTable, sourceTable } from "./sources.mjs";
 import { memoryTable, studyTable, threadTable } from "./study.mjs";
 import { insert, median, table } from "./table.mjs";
@@ -118,6 +119,7 @@ try {
     workloads: () => workloadTable(peers, python),
     sources: () => sourceTable(python, folder, 5),
     construction: () => constructionTable(),
+    quantiles: () => quantileTable(ROUNDS),
     threads: () => threadTable(ROUNDS),
     memory: () => memoryTable(),
     study: () => studyTable(),

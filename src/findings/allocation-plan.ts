@@ -1,11 +1,10 @@
 /**
  * From a record to an allocation: every sound source of a problem is a choice, its deviation the fitted one
- * (spread.ts), its order that of the fit beyond the largest n measured. Biases that are known (confirmed, declared, of the
- * reference) are subtracted; one that was only not excluded is named beside, not spent: it falls with more replicates, not
- * with more points. The coverage factor is Student's at the confidence of the sum, with the fewest degrees of freedom of any
- * problem (conservative beside Welch & Satterthwaite).
+ * (spread.ts), its order that of the fit beyond the largest n measured. The bias lines of the budget are subtracted, all but
+ * a bias of the source that was only not excluded: that falls with more replicates, not with more points. The coverage
+ * factor is Student's at the confidence of the sum, with the fewest degrees of freedom of any problem (conservative beside
+ * Welch & Satterthwaite).
  */
-import { normalUpperQuantile } from "../numeric/normal.js";
 import { studentFactor } from "../numeric/student.js";
 import type { Problem, SuiteTotal } from "../problem/contract.js";
 import type { StudyRecord } from "../record/types.js";
@@ -17,8 +16,9 @@ import {
   type AllocationItem,
 } from "./allocation.js";
 import { EXTRAPOLATION } from "./budget/sampling.js";
+import { budgetOf } from "./budget/total.js";
 import type { Context } from "./cells.js";
-import { makeContext } from "./context.js";
+import { recordContext } from "./context.js";
 import { unsoundness, userSeconds, type PlanOptions } from "./plan.js";
 import { seriesKey, seriesOf, type Series } from "./series.js";
 import { spreadOf } from "./spread.js";
@@ -45,7 +45,7 @@ export interface AllocationPlan {
 }
 
 export function allocationOf(record: StudyRecord, total: SuiteTotal, options: PlanOptions): AllocationPlan {
-  const context = makeContext(record.problems, record.sources, record.consensus, record.explanations);
+  const context = recordContext(record);
   const series = seriesOf(record.cells);
   const items: AllocationItem[] = [];
   const bare: string[] = [];
@@ -96,20 +96,17 @@ function choiceOf(
   if (spread === null || near === undefined || far === undefined) return null;
   const order = Math.log(near / far) / Math.log(4);
   if (!(order > LEAST_ORDER)) return null;
-  const uncertainty = context.references.get(problem.id)?.uncertainty ?? 0;
-  const declared = (problem.declared ?? []).filter(({ kind }) => kind === "bias");
-  const known = normalUpperQuantile((1 - problem.tolerance.confidence) / 2) * uncertainty;
-  const deviation = (n: number) => {
-    const value = spread.at(n)?.value ?? Infinity;
-    const random = (problem.declared ?? []).filter(({ kind }) => kind === "random");
-    return Math.hypot(value, ...random.map((line) => line.value));
-  };
+  const lines = budgetOf(series, test, context)?.lines ?? [];
+  const sizes = (kind: "bias" | "random", except: string): number[] =>
+    lines.filter((line) => line.kind === kind && line.line !== except).map((line) => line.value ?? 0);
+  const randoms = sizes("random", "sampling");
+  const deviation = (n: number) => Math.hypot(spread.at(n)?.value ?? Infinity, ...randoms);
   return {
     source: series.source,
     cost,
     order,
     constant: near * series.last.n ** order,
-    bias: known + declared.reduce((sum, { value }) => sum + value, 0),
+    bias: sizes("bias", "source structure").reduce((sum, value) => sum + value, 0),
     deviation: remembered(deviation),
     up: validSizes(series, pseudoRandom, (n) => options.nearestSize(series.source, n)),
     known: EXTRAPOLATION * series.last.n,

@@ -2,7 +2,7 @@
 import type { Problem } from "../problem/contract.js";
 import type { Explanation } from "../record/explanation.js";
 import type { ProblemMeasurements } from "../record/measurements.js";
-import type { Consensus, RawCell, RecordSource } from "../record/types.js";
+import type { Consensus, RawCell, RecordSource, StudyRecord } from "../record/types.js";
 import { seriesKey } from "./series.js";
 import type { Context } from "./cells.js";
 import { divergentProblems } from "./divergence.js";
@@ -25,4 +25,10 @@ export function makeContext(
     measurements: new Map(measurements.map((one) => [one.problem, one])),
     divergent: divergentProblems(measurements, rawCells, byId),
   };
+}
+
+/** The look-up tables of a record as it stands, for what is read off it later. */
+export function recordContext(record: StudyRecord): Context {
+  const { problems, sources, consensus, explanations, measurements, cells } = record;
+  return makeContext(problems, sources, consensus, explanations, measurements, cells);
 }

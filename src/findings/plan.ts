@@ -24,7 +24,7 @@ import { ESSENTIAL } from "./budget/line.js";
 import { EXTRAPOLATION } from "./budget/sampling.js";
 import { budgetOf } from "./budget/total.js";
 import type { Context } from "./cells.js";
-import { makeContext } from "./context.js";
+import { recordContext } from "./context.js";
 import { formatCount, formatValue } from "./format.js";
 import { toleranceOf } from "./reference.js";
 import { namesOf, seriesKey, seriesOf, type Series, type SeriesName } from "./series.js";
@@ -99,7 +99,7 @@ export interface ProblemPlan {
 
 /** The plans of every problem of a record, in its order. Pure. */
 export function planOf(record: StudyRecord, options: PlanOptions): ProblemPlan[] {
-  const context = makeContext(record.problems, record.sources, record.consensus, record.explanations);
+  const context = recordContext(record);
   const all = seriesOf(record.cells);
   return record.problems.map((problem) => {
     const sources = all

@@ -52,7 +52,8 @@ function pathOf({ file, program }: Readonly<Record<string, unknown>>): string | 
   return typeof command === "string" && command.includes("/") ? command : null;
 }
 
-function leaves(folder: string, path: string): boolean {
+/** Whether `path`, read from `folder`, is absolute or ends outside it, through a symbolic link too. */
+export function leaves(folder: string, path: string): boolean {
   const target = resolve(folder, path);
   if (isAbsolute(path) || !within(resolve(folder), target)) return true;
   return existsSync(target) && !within(realpathSync(folder), realpathSync(target));

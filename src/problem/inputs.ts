@@ -4,6 +4,9 @@ import { LIMITS } from "./defaults.js";
 import type { Findings } from "./findings.js";
 import { wholeFrom } from "./numbers.js";
 import type { NumberReader } from "./numbers.js";
+import { distributionOf } from "./distributions/registry.js";
+import type { DistributionId } from "./distributions/registry.js";
+import { readObservations } from "./observations.js";
 import { readParameters, readProcess } from "./parameters.js";
 import type { ProblemFile } from "./schema.js";
 
@@ -14,7 +17,7 @@ const MOST_TIMES = 1024;
 
 async function checkPath(
   name: string,
-  { path: id, construction = "increments", length: raw, distribution, ...given }: InputFile,
+  { path: id, construction = "increments", length: raw, distribution, file, column, ...given }: InputFile,
   first: number,
   numbers: NumberReader,
   findings: Findings,
@@ -23,6 +26,10 @@ async function checkPath(
   if (id === undefined) return null;
   if (distribution !== undefined) {
     findings.add(at, "expected distribution or path, found both; keep one of them");
+    return null;
+  }
+  if (file !== undefined || column !== undefined) {
+    findings.unknownKey([...at, file === undefined ? "column" : "file"], ["path", "length", "construction"]);
     return null;
   }
   const parameters = await readProcess(id, given, at, numbers, findings);
@@ -42,6 +49,30 @@ async function checkPath(
   return { name, distribution: id, construction, ...own, length, first };
 }
 
+/** The column that an empirical input names; for any other, `file` and `column` are unknown keys. */
+async function observations(
+  distribution: DistributionId,
+  data: string | undefined,
+  column: string | undefined,
+  at: readonly string[],
+  findings: Findings,
+): Promise<number[] | null> {
+  if (distribution !== "empirical") {
+    const known = ["distribution", "length", ...Object.keys(distributionOf(distribution).parameters)];
+    findings.unknownKey([...at, data === undefined ? "column" : "file"], known);
+    return null;
+  }
+  if (data === undefined) {
+    findings.addKey(at, `${at.join(".")}: file is missing; a column needs the CSV file that it is in`);
+    return null;
+  }
+  if (findings.document.has([...at, "values"])) {
+    findings.add([...at, "values"], "expected values or file, found both; keep one of them");
+    return null;
+  }
+  return readObservations(data, column, at, findings);
+}
+
 async function checkInput(
   name: string,
   file: InputFile,
@@ -51,7 +82,8 @@ async function checkInput(
 ): Promise<Input | null> {
   const at = ["inputs", name];
   if (file.path !== undefined) return checkPath(name, file, first, numbers, findings);
-  const { distribution, length: raw, construction, path: _path, ...given } = file;
+  const { distribution, length: raw, construction, path: _path, file: data, column, ...numbersGiven } = file;
+  let given: typeof numbersGiven = numbersGiven;
   if (distribution === undefined) {
     findings.addKey(
       [...at, "distribution"],
@@ -65,6 +97,11 @@ async function checkInput(
       "only a path has a construction; remove it, or write path for distribution",
     );
     return null;
+  }
+  if (data !== undefined || column !== undefined) {
+    const values = await observations(distribution, data, column, at, findings);
+    if (values === null) return null;
+    given = { ...numbersGiven, values };
   }
   const parameters = await readParameters(distribution, given, at, numbers, findings);
   if (parameters === null) return null;

@@ -48,6 +48,14 @@ const input = z
         .enum(processIds, { error: `a process: ${processIds.join(", ")}` })
         .optional()
         .describe("Instead of `distribution`: the input is a path of this process at `length` times."),
+      file: text("the path of a CSV file")
+        .min(1)
+        .optional()
+        .describe("CSV file of an empirical input, in the folder of the problem file."),
+      column: text("the name of a column")
+        .min(1)
+        .optional()
+        .describe("Column of that file; needed where it has several."),
       construction: z
         .enum(CONSTRUCTIONS, { error: `a construction: ${CONSTRUCTIONS.join(", ")}` })
         .optional()

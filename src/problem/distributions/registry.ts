@@ -15,6 +15,7 @@ import { geometric } from "./geometric.js";
 import { table } from "./table.js";
 import { cauchy } from "./cauchy.js";
 import type { Distribution, Law, ParameterValues } from "./contract.js";
+import { empirical } from "./empirical.js";
 import { exponential } from "./exponential.js";
 import { gumbel } from "./gumbel.js";
 import { laplace } from "./laplace.js";
@@ -51,6 +52,7 @@ export const DISTRIBUTIONS = {
   "negative-binomial": negativeBinomial,
   geometric,
   table,
+  empirical,
 } as const satisfies Readonly<Record<string, Distribution>>;
 
 export type DistributionId = keyof typeof DISTRIBUTIONS;

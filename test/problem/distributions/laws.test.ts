@@ -39,6 +39,7 @@ const EXAMPLES: Readonly<Record<DistributionId, readonly ParameterValues[]>> = {
   poisson: [{ mean: 6.5 }],
   "negative-binomial": [{ successes: 2.5, probability: 0.4 }],
   geometric: [{ probability: 0.25 }],
+  empirical: [{ values: [3, 1, 1, 2] }],
   table: [{ values: [-1, 0.5, 7], probabilities: [0.2, 0.5, 0.3] }],
 };
 
@@ -57,7 +58,7 @@ const GAUSS = [
 
 /** Values of a discrete law up to `last`. */
 function atoms({ values }: ParameterValues, last: number): readonly number[] {
-  if (typeof values === "object") return values.filter((x) => x <= last);
+  if (typeof values === "object") return [...new Set(values)].filter((x) => x <= last);
   return Array.from({ length: last + 1 }, (_, k) => k);
 }
 

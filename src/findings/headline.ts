@@ -101,7 +101,10 @@ function whatHelps(budget: Budget, record: StudyRecord): string {
   const found = record.convergence.find((one) => seriesKey(one) === key);
   const line = budget.largestLine ?? "no line";
   if (found?.never === true) return `${line}; no number of points would do`;
-  if (found === undefined || found.reach === null) return line;
+  if (found === undefined || found.reach === null) {
+    const remedy = lineRemedy(budget);
+    return remedy === null || line === "sampling" ? line : `${line}: ${remedy}`;
+  }
   return `${line}; ${formatReach(found.reach)} points would do`;
 }
 
@@ -194,7 +197,11 @@ function judgement(budget: Budget, record: StudyRecord): string {
   const sign = total > tolerance ? ">" : "\u2264";
   const figures = `(${formatValue(total)} ${sign} ${formatValue(tolerance)})`;
   if (verdict === "within") return `within ${figures}.`;
-  if (verdict === "undecided") return `undecided ${figures}${reason === null ? "" : `: ${reason}`}.`;
+  if (verdict === "undecided") {
+    const remedy = lineRemedy(budget);
+    const help = remedy === null ? "" : ` What would help: ${remedy}.`;
+    return `undecided ${figures}${reason === null ? "" : `: ${reason}`}.${help}`;
+  }
   return `outside ${figures}.${remedyOf(budget, record)}`;
 }
 
@@ -216,7 +223,14 @@ function remedyOf(budget: Budget, record: StudyRecord): string {
   if (best !== undefined && best.reach !== null)
     choices.push(`${best.source} with ${formatReach(best.reach)} points`);
   if (choices.length > 0) return ` Take ${choices.join(", or ")}.`;
-  return own?.never === true ? " No number of points helps: its error has a floor above the tolerance." : "";
+  if (own?.never === true) return ` Take another source: its floor is ${formatValue(own.floor ?? NaN)}.`;
+  const remedy = lineRemedy(budget);
+  return remedy === null ? "" : ` What would help: ${remedy}.`;
+}
+
+/** What would reduce the largest line. */
+function lineRemedy({ lines, largestLine }: Budget): string | null {
+  return lines.find(({ line }) => line === largestLine)?.remedy ?? null;
 }
 
 /** For each test: was it judged, and how. Used by tables and by the bias map. */

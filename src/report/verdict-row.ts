@@ -39,7 +39,7 @@ export function totalWords(budget: Budget | null): string {
 }
 
 /** Rows by cost to tolerance, then those where it is not known, then those that never reach it. */
-function ranked(rows: readonly Row[]): Row[] {
+export function ranked(rows: readonly Row[]): Row[] {
   const reaching = byEffort(rows.flatMap((row) => row.convergence ?? []));
   const known = reaching.flatMap((one) => rows.filter((row) => row.convergence === one));
   const rest = rows.filter((row) => !known.includes(row));

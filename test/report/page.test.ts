@@ -76,7 +76,7 @@ describe("the page", () => {
 
   it("tells of every figure in words and has its numbers as a table", () => {
     const figures = page.match(/<figure[\s\S]*?<\/figure>/g) ?? [];
-    expect(figures.length).toBe(16);
+    expect(figures.length).toBe(20);
     for (const figure of figures) {
       expect(figure).toMatch(/<svg[^>]* role="img" aria-label="[^"]{60,}"/);
       expect(figure).toMatch(/<details>\s*<summary>The numbers<\/summary>[\s\S]*<table>/);

@@ -5,6 +5,7 @@ import type { ExplainedRow, Subject, View } from "../view.js";
 import { aliasChart } from "./aliases.js";
 import { biasChart } from "./bias.js";
 import { biasMap } from "./bias-map.js";
+import { budgetChart } from "./budget.js";
 import type { Chart } from "./chart.js";
 import { costToTolerance } from "./cost-to-tolerance.js";
 import { errorAgainstN } from "./error-against-n.js";
@@ -19,6 +20,7 @@ import { slice } from "./slice.js";
 /** Charts of one subject; null where there is nothing to draw. */
 const SUBJECT_CHARTS: readonly ((view: View, subject: Subject) => Chart | null)[] = [
   errorAgainstN,
+  budgetChart,
   biasChart,
 ];
 

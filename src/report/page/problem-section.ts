@@ -1,4 +1,5 @@
 /** The section of one problem: it stands alone, and prints on one page for an ordinary number of sources. */
+import { budgetTable } from "../budget-rows.js";
 import type { Input } from "../../problem/contract.js";
 import type { Chart } from "../charts/chart.js";
 import { jsonText } from "../../record/json.js";
@@ -107,25 +108,39 @@ function ranking(subject: Subject, explained: readonly ExplainedRow[]): Markup {
     </p>`;
 }
 
-function budgetTable(subject: Subject): Markup {
-  const rows = subject.rows.flatMap((row) =>
-    (row.budget?.lines ?? []).map((line) => [
-      row.label,
-      line.line,
-      line.kind === "bias" ? "bound of a bias" : "standard deviation",
-      line.value === null ? "not assessed" : formatValue(line.value),
-      line.basis,
-    ]),
-  );
+function budgets(subject: Subject): Markup {
+  const rows = subject.rows.flatMap((row) => {
+    const table = row.budget === null ? null : budgetTable(row.budget);
+    if (table === null) return [];
+    return [
+      ...table.rows.map(({ line, kind, size, adds, basis, remedy }) => [
+        row.label,
+        line,
+        kind,
+        size,
+        adds,
+        basis,
+        remedy,
+      ]),
+      [row.label, "total", "", "", table.total, "", ""],
+    ];
+  });
   const columns = [
     { title: "Source", align: "left" },
     { title: "Line", align: "left" },
     { title: "Size is", align: "left" },
     { title: "Size", align: "right" },
-    { title: "Basis", align: "left" },
+    { title: "Adds", align: "right" },
+    { title: "How it was found", align: "left" },
+    { title: "What would reduce it", align: "left" },
   ] as const;
   return html`<details>
     <summary>What each total is made of</summary>
+    <p class="aside">
+      Bounds of biases add in full; standard deviations add in quadrature, times the coverage factor, and are
+      shown by their share. What is added sums to the total to the last digit shown; a line shown as zero is
+      smaller than that digit.
+    </p>
     ${dataTable({ columns, rows })}
   </details>`;
 }
@@ -188,7 +203,7 @@ export async function problemSection(
       subject,
       explained.map(({ row }) => row),
     )}
-    ${remarks(subject)} ${budgetTable(subject)}
+    ${remarks(subject)} ${budgets(subject)}
     ${
       reach.length > 0 &&
       html`<details>

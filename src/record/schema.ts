@@ -28,6 +28,16 @@ const problem = z.strictObject({
       first: whole,
     }),
   ),
+  dependence: z
+    .union([
+      z.strictObject({
+        inputs: z.array(name),
+        kind: z.enum(["cholesky", "principal-components"]),
+        correlation: z.array(reals),
+      }),
+      z.strictObject({ inputs: z.array(name), kind: z.literal("one-factor"), shares: reals }),
+    ])
+    .optional(),
   constants: z.record(text, constant),
   integrand: text,
   quantity: z.literal("mean"),

@@ -1,13 +1,21 @@
 /** Transform: the inverse distribution functions of the inputs against more exact ones, carried through the integrand. */
+import type { Input } from "../../problem/contract.js";
 import { studentFactor } from "../../numeric/student.js";
 import { formatCount, formatPercent, formatValue } from "../format.js";
 import { notAssessed, type LineMaker } from "./line.js";
 import { limitOf } from "./limit.js";
 
+/** What the quantiles of these inputs were held against. */
+function quantileWords(inputs: readonly Input[]): string {
+  const normal = "normal inputs against quantiles in 30 digits";
+  const all = inputs.every(({ distribution }) => distribution === "uniform" || distribution === "normal");
+  return all ? normal : `${normal}, other quantiles moved by their bound of 1e-12 relative`;
+}
+
 export const transformLine: LineMaker = ({ context, series, problem, confidence }) => {
   const all = context.measurements.get(series.problem);
   const line = { line: "transform", kind: "bias" } as const;
-  if (problem.inputs.every((input) => input.distribution === "uniform")) {
+  if (problem.dependence === undefined && problem.inputs.every((input) => input.distribution === "uniform")) {
     return [
       {
         ...line,
@@ -33,7 +41,7 @@ export const transformLine: LineMaker = ({ context, series, problem, confidence 
   // A condition that no point changed: its chance is bounded as that of a rare event.
   const limit = limitOf(found, factor, confidence, found.amplification, series.last.indicator);
   const basis =
-    `normal inputs against quantiles in 30 digits, through the integrand at ${formatCount(found.points)} points: ` +
+    `${quantileWords(problem.inputs)}, through the integrand at ${formatCount(found.points)} points: ` +
     `${formatPercent(confidence)} limit of ${formatValue(found.bias, found.standardError)}` +
     (limit.counted ? " (Clopper\u2013Pearson)" : "");
   return [

@@ -2,6 +2,7 @@
 import type { PairedMean } from "../../record/measurements.js";
 import { deviation } from "../../numeric/moments.js";
 import { mean } from "../../numeric/sums.js";
+import type { Transform } from "../../problem/contract.js";
 import type { PointStream } from "../../sources/contract.js";
 import { makeKey } from "../../sources/key.js";
 import { philox4x64 } from "../../sources/philox4x64.js";
@@ -22,19 +23,28 @@ export function samplePoints(problem: RunnableProblem, seed: number, part: strin
   return integrator.points(stream, n);
 }
 
-/** Values of the integrand at given inputs, without any change of coordinates. */
-export function valuesAt(problem: RunnableProblem, inputs: readonly Float64Array[]): Float64Array {
-  const integrator = new Integrator({ ...problem, transforms: [] });
+/** The integrand at given rows, after `transforms` of them: what it was given, and its values. */
+export function pointsAt(
+  problem: RunnableProblem,
+  rows: readonly Float64Array[],
+  transforms: readonly Transform[],
+): Sample {
+  const integrator = new Integrator({ ...problem, transforms });
   let next = 0;
   const stream: PointStream = {
-    dimension: inputs.length,
+    dimension: rows.length,
     fill(pointer, stride, count) {
-      const rows = integrator.kernels.f64(pointer, (inputs.length - 1) * stride + count);
-      for (const [r, row] of inputs.entries()) rows.set(row.subarray(next, next + count), r * stride);
+      const block = integrator.kernels.f64(pointer, (rows.length - 1) * stride + count);
+      for (const [r, row] of rows.entries()) block.set(row.subarray(next, next + count), r * stride);
       next += count;
     },
   };
-  return integrator.points(stream, inputs[0]?.length ?? 0).values;
+  return integrator.points(stream, rows[0]?.length ?? 0);
+}
+
+/** Values of the integrand at given inputs, without any change of coordinates. */
+export function valuesAt(problem: RunnableProblem, inputs: readonly Float64Array[]): Float64Array {
+  return pointsAt(problem, inputs, []).values;
 }
 
 /** Mean of differences with its standard error. */

@@ -8,8 +8,7 @@ it("the suite of inputs: within five standard errors, with a budget, and the sam
   const { problems } = await loadPaths(["inputs"]);
   const all = problems.map(({ problem }) => problem);
   const record = await runSpec(specOf(all, { sizes: [64, 1024], replicates: 16, sources: ["philox4x32"] }));
-  const text = JSON.stringify(record);
-  expect(JSON.stringify(parseRecord(JSON.parse(text)))).toBe(text);
+  expect(parseRecord(JSON.parse(JSON.stringify(record))).problems).toEqual(record.problems);
   for (const { id, reference } of all) {
     const cell = record.cells.find((one) => one.problem === id && one.n === 1024);
     // t with 15 degrees of freedom beyond 5.5: 6e-5 both ways, below 1e-3 over the suite

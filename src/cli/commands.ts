@@ -185,7 +185,7 @@ export const commands: readonly Command[] = [
   {
     name: "distributions",
     positional: "",
-    summary: "list the distributions of inputs and their parameters",
+    summary: "list the distributions and paths of inputs and their parameters",
     options: { json },
     load: () => import("./commands/distributions.js"),
   },

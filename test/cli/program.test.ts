@@ -272,7 +272,7 @@ describe("the other commands", () => {
   });
 
   it("lists as tables and as data", () => {
-    for (const command of ["sources", "problems", "functions", "estimators"]) {
+    for (const command of ["sources", "problems", "functions", "distributions", "estimators"]) {
       expect(tolerand(command).status).toBe(0);
       expect(Array.isArray(JSON.parse(tolerand(command, "--json").stdout))).toBe(true);
     }

@@ -11,7 +11,8 @@ export function formatValue(value: number, uncertainty: number | null = null): s
   const size = Math.abs(value);
   const place = Math.floor(Math.log10(uncertainty)) - 1;
   const digits = Math.min(17, Math.floor(Math.log10(size)) - place + 1);
-  // A value far below its own uncertainty keeps the places of the uncertainty.
+  // A value far below its own uncertainty keeps the places of the uncertainty, unless those are too many to read.
+  if (digits < 1 && place < -8) return "0";
   if ((size < 1e-4 || size >= 1e9) && digits >= 1) return exponential(value, digits);
   return place < 0 ? fixed(value, -place) : fixed(Math.round(value / 10 ** place) * 10 ** place, 0);
 }

@@ -9,7 +9,7 @@ import { limitOf } from "./limit.js";
 function quantileWords(inputs: readonly Input[]): string {
   const normal = "normal inputs against quantiles in 30 digits";
   const all = inputs.every(({ distribution }) => distribution === "uniform" || distribution === "normal");
-  return all ? normal : `${normal}, other quantiles moved by their bound of 1e-12 relative`;
+  return all ? normal : `${normal}, other quantiles moved by their bound of 1e−12 relative`;
 }
 
 export const transformLine: LineMaker = ({ context, series, problem, confidence }) => {

@@ -56,12 +56,7 @@ function dependenceSteps(dependence: Dependence, members: readonly Input[]): Lin
 }
 
 /** The common factor has the first coordinate, before all inputs. */
-export const FACTOR_ROW = 0;
-
-/** Coordinates that come before those of the inputs. */
-export function coordinatesBefore(dependence: Dependence | null): number {
-  return dependence?.kind === "one-factor" ? 1 : 0;
-}
+const FACTOR_ROW = 0;
 
 /** A path from its normals. */
 function pathTransforms(input: Input): Transform[] {

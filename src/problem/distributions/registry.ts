@@ -1,5 +1,4 @@
 /** The distributions that an input may have. Help, schema, listings, docs and the shared tests come from this table. */
-import { nearest } from "../../numeric/nearest.js";
 import { beta } from "./beta.js";
 import { gamma } from "./gamma.js";
 import { chiSquared } from "./chi-squared.js";
@@ -81,10 +80,4 @@ export function lawOf(id: DistributionId, given: ParameterValues = {}): Law {
     if (parameter.default !== undefined) values[name] = parameter.default;
   }
   return distributionOf(id).law({ ...values, ...given });
-}
-
-/** "; did you mean ...?" for a name that is not there. */
-export function guessDistribution(given: string): string {
-  const guess = nearest(given, distributionIds);
-  return guess === null ? "" : `; did you mean "${guess}"?`;
 }

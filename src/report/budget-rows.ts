@@ -1,6 +1,6 @@
 /** A budget as rows of text whose parts add up to the total, to the last digit shown. */
 import { addingUp, contributionsOf } from "../findings/budget/contributions.js";
-import { formatValue } from "../findings/format.js";
+import { formatPercent, formatValue } from "../findings/format.js";
 import type { Budget, BudgetLine } from "../record/types.js";
 
 export interface BudgetRow {
@@ -16,6 +16,8 @@ export interface BudgetRow {
 export interface BudgetTable {
   readonly rows: readonly BudgetRow[];
   readonly total: string;
+  /** By what the random lines together are multiplied, and what that assumes. */
+  readonly coverage: string;
 }
 
 const KINDS: Readonly<Record<BudgetLine["kind"], string>> = {
@@ -25,7 +27,13 @@ const KINDS: Readonly<Record<BudgetLine["kind"], string>> = {
 };
 
 /** null where the budget has no total. */
-export function budgetTable({ lines, total, coverageFactor }: Budget): BudgetTable | null {
+export function budgetTable({
+  lines,
+  total,
+  coverageFactor,
+  degrees,
+  confidence,
+}: Budget): BudgetTable | null {
   if (total === null || coverageFactor === null || !Number.isFinite(total)) return null;
   const contributions = contributionsOf(lines, coverageFactor);
   const write = writer(total);
@@ -40,6 +48,9 @@ export function budgetTable({ lines, total, coverageFactor }: Budget): BudgetTab
       remedy: remedy ?? "–",
     })),
     total: write.text(shown.total),
+    coverage:
+      `random lines counted ${coverageFactor.toFixed(2)} times (${formatPercent(confidence)}, ` +
+      `${degrees === null ? "normal" : `Student's t with ${Math.round(degrees)} degrees of freedom`}; assumes normal errors)`,
   };
 }
 

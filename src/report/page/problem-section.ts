@@ -122,7 +122,7 @@ function budgets(subject: Subject): Markup {
         basis,
         remedy,
       ]),
-      [row.label, "total", "", "", table.total, "", ""],
+      [row.label, "total", "", "", table.total, table.coverage, ""],
     ];
   });
   const columns = [

@@ -49,8 +49,8 @@ export function budgetTable({
     })),
     total: write.text(shown.total),
     coverage:
-      `random lines counted ${coverageFactor.toFixed(2)} times (${formatPercent(confidence)}, ` +
-      `${degrees === null ? "normal" : `Student's t with ${Math.round(degrees)} degrees of freedom`}; assumes normal errors)`,
+      `k = ${coverageFactor.toFixed(2)} at ${formatPercent(confidence)}` +
+      (degrees === null ? "" : ` (${Math.round(degrees)} degrees of freedom)`),
   };
 }
 

@@ -109,6 +109,12 @@ function ranking(subject: Subject, explained: readonly ExplainedRow[]): Markup {
 }
 
 function budgets(subject: Subject): Markup {
+  // Lines that are the same for all sources are explained once.
+  const seen = new Set<string>();
+  const once = (text: string): string => {
+    if (text.length < 20 || !seen.has(text)) return (seen.add(text), text);
+    return "as above";
+  };
   const rows = subject.rows.flatMap((row) => {
     const table = row.budget === null ? null : budgetTable(row.budget);
     if (table === null) return [];
@@ -119,8 +125,8 @@ function budgets(subject: Subject): Markup {
         kind,
         size,
         adds,
-        basis,
-        remedy,
+        once(basis),
+        once(remedy),
       ]),
       [row.label, "total", "", "", table.total, table.coverage, ""],
     ];
@@ -137,9 +143,9 @@ function budgets(subject: Subject): Markup {
   return html`<details>
     <summary>What each total is made of</summary>
     <p class="aside">
-      Bounds of biases add in full; standard deviations add in quadrature, times the coverage factor, and are
-      shown by their share. What is added sums to the total to the last digit shown; a line shown as zero is
-      smaller than that digit.
+      Bounds of biases add in full; standard deviations add in quadrature, times the coverage factor k
+      (Student's t; it assumes normal errors), and are shown by their share. What is added sums to the total
+      to the last digit shown; a line shown as zero is smaller than that digit.
     </p>
     ${dataTable({ columns, rows })}
   </details>`;

@@ -42,8 +42,8 @@ export const messages = {
   oneProblem: (path: string, found: readonly string[]) =>
     `problem: expected one problem, found ${found.length} in "${path}"; name one of them: ${found.slice(0, 6).join(", ")}`,
   leftOut: (warnings: readonly string[]) => `--source: ${warnings.join(" ")} Name a source that has them.`,
-  explainNeeds: (problem: string) =>
-    `explain: expected a source to explain "${problem}" with, found none; name one with --source`,
+  needsSource: (flag: string, problem: string) =>
+    `--${flag}: expected a source beside it, found none; name one with --source, or leave --${flag} out to see which inputs of "${problem}" matter`,
   dimensions: (most: number, found: string) =>
     `--dimensions: expected whole numbers from 2 to ${most} such as 2..16, 8 or 2,3,6, found "${found}"`,
   indices: (most: number, found: string) =>

@@ -7,7 +7,15 @@ import { createHash } from "node:crypto";
 
 /** Why points are drawn; different purposes never share points. */
 export type Purpose =
-  "study" | "pilot" | "reference" | "confirmation" | "points" | "resolution" | "explain" | "budget";
+  | "study"
+  | "pilot"
+  | "reference"
+  | "confirmation"
+  | "points"
+  | "resolution"
+  | "explain"
+  | "budget"
+  | "sensitivity";
 
 export interface KeyParts {
   readonly seed: number;

@@ -6,6 +6,7 @@ import { join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import type { Explanation } from "../../src/record/explanation.js";
+import type { Sensitivity } from "../../src/record/sensitivity.js";
 import { parseRecord } from "../../src/record/schema.js";
 
 const program = fileURLToPath(new URL("../../dist/cli/main.js", import.meta.url));
@@ -109,5 +110,40 @@ describe("explain --source", () => {
     expect(small.stderr).toContain(
       "--source: crest: flat is left out, it has 2 coordinates of 3. Name a source that has them.",
     );
+  });
+});
+
+describe("explain without a source", () => {
+  it("says which inputs matter", () => {
+    const { status, stdout } = tolerand("crest.yaml");
+    expect(status).toBe(0);
+    expect(stdout).toContain("Crest between the planes: which inputs matter");
+    expect(stdout).toMatch(/\n {4}Coordinate +Alone +Interval +Has part in +Interval\n/);
+    expect(stdout).toMatch(/\n {4}x\[1\], x\[2\] /);
+    expect(stdout).toContain("superposition dimension");
+  });
+
+  it("gives the same as JSON", () => {
+    const { status, stdout } = tolerand("crest.yaml", "--json", "--points", "4096", "--seed", "3");
+    expect(status).toBe(0);
+    const { measures, reason } = JSON.parse(stdout) as Sensitivity;
+    expect(reason).toBeNull();
+    // parts of (1 + 0.6 c) (1 + 0.5 s): x[1] and x[2] act only together, 0.18 (1 + 0.125), x[3] alone 0.125
+    const all = 0.18 + 0.125 + 0.18 * 0.125;
+    expect(measures?.units[2]?.alone.value).toBeCloseTo(0.125 / all, 1);
+    expect(measures?.pairs[0]).toMatchObject({ i: 0, j: 1 });
+    expect(measures?.pairs[0]?.interaction.value).toBeCloseTo(0.18 / all, 1);
+    expect(tolerand("crest.yaml", "--json", "--points", "4096", "--seed", "3").stdout).toBe(stdout);
+  });
+
+  it("refuses what needs a source, and too few points", () => {
+    const cycle = tolerand("crest.yaml", "--full-cycle");
+    expect(cycle.status).toBe(2);
+    expect(cycle.stderr).toContain(
+      '--full-cycle: expected a source beside it, found none; name one with --source, or leave --full-cycle out to see which inputs of "crest" matter',
+    );
+    const few = tolerand("crest.yaml", "--points", "10");
+    expect(few.status).toBe(2);
+    expect(few.stderr).toContain("--points");
   });
 });

@@ -4,6 +4,7 @@
  */
 import { resolve } from "node:path";
 import type { SourceSpec, StudySettings } from "../../problem/contract.js";
+import { settingValues } from "../../problem/settings.js";
 import { loadPaths, type LoadedProblem } from "../../problem/load.js";
 import { runStudy } from "../../recipe.js";
 import { jsonText } from "../../record/json.js";
@@ -14,7 +15,8 @@ import { startProgress } from "../../study/progress.js";
 import { bitLadder, cellsOf, resolutionCost } from "../../study/resolution.js";
 import { tryPrograms } from "../../study/programs.js";
 import { prepareProblems, type RunnableProblem } from "../../study/runnable.js";
-import { buildSpec } from "../../study/settings.js";
+import { FEWEST_BASE_POINTS, measureSensitivity, SENSITIVITY } from "../../study/sensitivity.js";
+import { buildSpec, settingsOf } from "../../study/settings.js";
 import { EXIT, type Arguments, type Io } from "../command.js";
 import { environmentOf } from "../environment.js";
 import { asInput, InputError } from "../errors.js";
@@ -33,7 +35,7 @@ export async function run(args: Arguments, io: Io): Promise<number> {
   const flags = settingsFromFlags(args, io);
   const loaded = await oneProblem(textFlag(args, "problem") ?? "");
   const { sources = [] } = flags;
-  if (sources.length === 0) return explainInputs(loaded);
+  if (sources.length === 0) return explainInputs(loaded, flags, args, io);
   return explainSources(loaded, { ...flags, sources }, args, io);
 }
 
@@ -46,8 +48,27 @@ async function oneProblem(path: string): Promise<LoadedProblem> {
 }
 
 /** Which inputs matter, effective dimension, kinks. */
-function explainInputs({ problem }: LoadedProblem): number {
-  throw new InputError(messages.explainNeeds(problem.id));
+async function explainInputs(
+  loaded: LoadedProblem,
+  flags: StudySettings,
+  args: Arguments,
+  io: Io,
+): Promise<number> {
+  for (const flag of ["full-cycle", "replicates", "out"] as const)
+    if (args[flag] !== undefined && args[flag] !== false)
+      throw new InputError(messages.needsSource(flag, loaded.problem.id));
+  const { problem } = loaded;
+  const asked = wholeFlag(args, "points", FEWEST_BASE_POINTS) ?? SENSITIVITY.points;
+  const { seed } = settingValues(settingsOf(loaded, flags));
+  const [runnable] = await prepareProblems([problem]);
+  if (runnable === undefined) return EXIT.internal;
+  const measured = measureSensitivity(runnable, problem, { ...SENSITIVITY, seed, points: asked });
+  if (booleanFlag(args, "json")) io.stdout.write(`${jsonText(measured, 2)}\n`);
+  else {
+    const { sensitivityText } = await import("../../report/sensitivity-text.js");
+    io.stdout.write(sensitivityText(problem, measured));
+  }
+  return EXIT.done;
 }
 
 /** A study of one problem and one size, every source in it explained. */

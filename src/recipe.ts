@@ -15,6 +15,8 @@ import { measureProblems } from "./study/measure/index.js";
 import { notesOf } from "./study/notes.js";
 import { RepetitionWatch } from "./study/opening.js";
 import type { ProblemMeasurements } from "./record/measurements.js";
+import type { Sensitivity } from "./record/sensitivity.js";
+import { measureSensitivities } from "./study/sensitivities.js";
 import type { RunnableProblem } from "./study/runnable.js";
 import { confirmationTasks, recordSources, referenceTasks, studyLooks, studyTasks } from "./study/spec.js";
 import type { Task, TaskResult } from "./study/tasks.js";
@@ -63,12 +65,21 @@ export async function runStudy(run: StudyRun): Promise<StudyRecord> {
   const confirmations: Confirmation[] = run.signal.aborted ? [] : cellsOf(run, fresh, results);
 
   const explanations = await explainMeasured(run, measured, confirmations);
+  const sensitivity = await askInputs(run);
 
   const environment = run.environment(!run.signal.aborted);
   const stopping = stops === null ? [] : stopSentences(stops, spec);
   const warnings = [...run.warnings, ...stopping, ...notesOf([...tasks, ...fresh], results)];
   const stopped = stops === null ? {} : { stops };
-  return assembleRecord({ ...measured, environment, confirmations, explanations, ...stopped, warnings });
+  return assembleRecord({
+    ...measured,
+    environment,
+    confirmations,
+    explanations,
+    sensitivity,
+    ...stopped,
+    warnings,
+  });
 }
 
 /** All sizes at once, or one after the other until each source is inside the tolerance or at its largest size. */
@@ -135,6 +146,15 @@ async function explainMeasured(
   const explanations = await explainStudy({ ...found, problems, signal, done: () => stage?.advance(1) });
   stage?.finish();
   return explanations;
+}
+
+/** Which inputs matter; nothing after an interruption. */
+async function askInputs({ spec, problems, signal, stage: open }: StudyRun): Promise<Sensitivity[]> {
+  if (signal.aborted) return [];
+  const stage = open("inputs", problems.length);
+  const sensitivity = await measureSensitivities({ spec, problems, signal, done: () => stage.advance(1) });
+  stage.finish();
+  return sensitivity;
 }
 
 async function runStage(

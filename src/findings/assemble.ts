@@ -3,6 +3,7 @@ import type { Problem } from "../problem/contract.js";
 import type { Explanation } from "../record/explanation.js";
 import { digestOf } from "../record/json.js";
 import type { ProblemMeasurements } from "../record/measurements.js";
+import type { Sensitivity } from "../record/sensitivity.js";
 import {
   RECORD_SCHEMA,
   type BiasTest,
@@ -24,6 +25,7 @@ import { makeContext } from "./context.js";
 import { convergenceOf } from "./convergence.js";
 import { confirmFamily, screenFamily, type Family } from "./family.js";
 import { seriesKey, seriesOf, type Series } from "./series.js";
+import { withdrawn } from "./sensitivity.js";
 import { judgedProblems } from "./until.js";
 import { warningsOf } from "./warnings.js";
 
@@ -42,6 +44,8 @@ export interface Assembly extends Measured {
   readonly confirmations: readonly Confirmation[];
   /** What the structure of sources does to integrands. */
   readonly explanations: readonly Explanation[];
+  /** Which inputs matter, by the figures alone. */
+  readonly sensitivity: readonly Sensitivity[];
   /** Where each source stopped; only of a study that stops at the tolerance. */
   readonly stops?: readonly Stop[];
   /** Warnings from before the run, shown first. */
@@ -120,6 +124,7 @@ export function assembleRecord(assembly: Assembly): StudyRecord {
     explanations: assembly.explanations,
     ...(assembly.stops === undefined ? {} : { stops: assembly.stops }),
     measurements: assembly.measurements,
+    sensitivity: withdrawn(assembly.sensitivity, context.divergent),
     warnings: [...new Set([...assembly.warnings, ...warningsOf(series, consensus, context)])],
   };
 }

@@ -13,7 +13,7 @@ import { formatValue } from "./format.js";
 
 /** By problem id, in words. */
 export function divergentProblems(
-  measurements: readonly ProblemMeasurements[],
+  measurements: readonly Pick<ProblemMeasurements, "problem" | "tail">[],
   rawCells: readonly RawCell[],
   sources: ReadonlyMap<string, RecordSource>,
 ): ReadonlyMap<string, string> {

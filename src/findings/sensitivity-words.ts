@@ -5,7 +5,8 @@ import { formatCount, formatPercent, formatValue } from "./format.js";
 import { looksOf, superposition, type Looks } from "./sensitivity.js";
 
 /** "4.5 %", of two digits that count. */
-export const shareText = (value: number): string => formatPercent(Number(value.toPrecision(2)));
+export const shareText = (value: number): string =>
+  formatPercent(Number(value.toPrecision(2))).replace("-", "\u2212");
 
 export const shareInterval = ({ interval: [low, high] }: Share): string =>
   `${shareText(low)} to ${shareText(high)}`;
@@ -15,6 +16,14 @@ const half = ({ interval: [low, high] }: Share): number => (high - low) / 2;
 function between({ atLeast, atMost }: Between): string {
   if (atLeast === atMost) return formatCount(atLeast);
   return `${formatCount(atLeast)} to ${formatCount(atMost)}`;
+}
+
+/** "at most 2 coordinates"; only from below where that is all that is known. */
+function togetherText(found: Between, dimension: number): string {
+  if (found.atMost === 1) return "1 coordinate";
+  if (found.atLeast < found.atMost && found.atMost >= dimension)
+    return `${formatCount(found.atLeast)} or more coordinates (no upper end is resolved)`;
+  return `at most ${between(found)} coordinates`;
 }
 
 const orderText = ({ order, interval: [low, high] }: NetOrder): string =>
@@ -67,7 +76,7 @@ export function sensitivityLines({ measures, confidence }: Sensitivity, { dimens
           : "several coordinates act only together."
     }`,
     `${grouped ? "Groups" : "Coordinates"} decide ${shareText(allAlone.value)} of the variance each alone (${shareInterval(allAlone)}).`,
-    `99 % of the variance lies in parts of at most ${between(super99)} ${super99.atMost === 1 ? "coordinate" : "coordinates"} at a time (superposition dimension) and is decided by the first ${between(truncation)} of ${formatCount(dimension)} (truncation dimension, in the order of the inputs).`,
+    `99 % of the variance lies in parts of ${togetherText(super99, dimension)} at a time (superposition dimension) and is decided by the first ${between(truncation)} of ${formatCount(dimension)} (truncation dimension, in the order of the inputs).`,
   ];
   if (smoothness !== null) {
     const { integrand, smooth, kinked, jumping } = smoothness;
@@ -89,7 +98,7 @@ function meaning(
   dimension: number,
   order: NetOrder | null,
 ): string {
-  const low = meanDimension.interval[1] < 1.5 || super99.atMost <= 2;
+  const low = meanDimension.interval[1] < 2 || super99.atMost <= 2;
   const early = dimension > 4 && truncation.atMost <= dimension / 2;
   const structure = low
     ? "Few coordinates act together, so a quasi-random source needs good projections of low order only"

@@ -2,7 +2,13 @@
  * What shares of the variance say: how many inputs work together, how many matter, how smooth the integrand looks to a net,
  * and what a quasi-random source can make of it. Pure.
  */
-import type { Between, NetOrder, SensitivityMeasures, Smoothness } from "../record/sensitivity.js";
+import type {
+  Between,
+  NetOrder,
+  Sensitivity,
+  SensitivityMeasures,
+  Smoothness,
+} from "../record/sensitivity.js";
 
 /** The share of the variance that may be left over (Caflisch, Morokoff & Owen 1997 take 99 %). */
 const LEFT_OVER = 0.01;
@@ -39,6 +45,17 @@ export function superposition(measures: SensitivityMeasures, dimension: number):
   let atMost = atLeast;
   while (!enough(atMost)) atMost++;
   return { atLeast, atMost };
+}
+
+/** Without figures where the variance is not finite; `divergent` by problem id, in words. */
+export function withdrawn(
+  sensitivity: readonly Sensitivity[],
+  divergent: ReadonlyMap<string, string>,
+): Sensitivity[] {
+  return sensitivity.map((one) => {
+    const reason = divergent.get(one.problem);
+    return reason === undefined || one.measures === null ? one : { ...one, measures: null, reason };
+  });
 }
 
 /** `rough`: not as a smooth integrand, but like a kinked and a jumping one alike. */

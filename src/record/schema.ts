@@ -6,6 +6,7 @@
 import { z } from "zod";
 import { explanation } from "./explanation-schema.js";
 import { measurements } from "./measurements-schema.js";
+import { sensitivity } from "./sensitivity-schema.js";
 import { interval, name, number, orNull, real, reals, text, whole } from "./schema-parts.js";
 import { RECORD_SCHEMA, type StudyRecord } from "./types.js";
 
@@ -252,6 +253,7 @@ const recordSchema = z
       .optional()
       .describe("Where a study that stops at the tolerance left each source."),
     measurements: z.array(measurements).default([]),
+    sensitivity: z.array(sensitivity).default([]),
     warnings: z.array(text),
   })
   .describe("The record of a study by tolerand: what was asked, what was measured, what follows from it.");

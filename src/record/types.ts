@@ -6,6 +6,7 @@
 import type { Problem, SourceSpec } from "../problem/contract.js";
 import type { SourceDescription } from "../sources/contract.js";
 import type { ProblemMeasurements } from "./measurements.js";
+import type { Sensitivity } from "./sensitivity.js";
 import type { Explanation } from "./explanation.js";
 
 export const RECORD_SCHEMA = "tolerand/record/1";
@@ -306,5 +307,7 @@ export interface StudyRecord {
   readonly stops?: readonly Stop[];
   /** What the budgets' lines need beside the cells, per problem. */
   readonly measurements: readonly ProblemMeasurements[];
+  /** Which inputs matter, per problem and output. */
+  readonly sensitivity: readonly Sensitivity[];
   readonly warnings: readonly string[];
 }

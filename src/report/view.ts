@@ -15,6 +15,7 @@ import { answerOf } from "../findings/answer.js";
 import { biasSentences, headlinesOf, spreadSentences } from "../findings/headline.js";
 import { type KnownReference, referencesOf, toleranceOf } from "../findings/reference.js";
 import type { Explanation } from "../record/explanation.js";
+import type { Sensitivity } from "../record/sensitivity.js";
 import type { Problem } from "../problem/contract.js";
 import { FAMILIES, type FamilyLook, type Ink } from "./look.js";
 
@@ -67,6 +68,8 @@ export interface Subject {
   readonly inUseSentence: string | null;
   /** The answer in one sentence. */
   readonly answer: string;
+  /** Which inputs matter; null where it was not asked. */
+  readonly sensitivity: Sensitivity | null;
   /** What the tests of bias and of spread found, in sentences. */
   readonly biases: readonly string[];
 }
@@ -184,6 +187,7 @@ export function viewRecord(record: StudyRecord): View {
       inUse: budgets.find((budget) => budget.inUse) ?? null,
       inUseSentence: headlines.find((one) => one.problem === problem.id)?.inUse?.sentence ?? null,
       answer: answerOf(problem, output, record),
+      sensitivity: record.sensitivity.find((s) => s.problem === problem.id && s.output === output) ?? null,
       biases: [...biasSentences(problem, record), ...spreadSentences(problem, record)],
     };
   });

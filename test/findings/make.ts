@@ -155,6 +155,7 @@ export function makeAssembly(rawCells: RawCell[], changes: Partial<Assembly> = {
     confirmations: [],
     explanations: [],
     measurements: [],
+    sensitivity: [],
     warnings: [],
     ...changes,
   };

@@ -76,13 +76,26 @@ describe("the page", () => {
 
   it("tells of every figure in words and has its numbers as a table", () => {
     const figures = page.match(/<figure[\s\S]*?<\/figure>/g) ?? [];
-    expect(figures.length).toBe(20);
+    expect(figures.length).toBe(21);
     for (const figure of figures) {
       expect(figure).toMatch(/<svg[^>]* role="img" aria-label="[^"]{60,}"/);
       expect(figure).toMatch(/<details>\s*<summary>The numbers<\/summary>[\s\S]*<table>/);
       expect(figure).toMatch(/<h4>[^<]+<\/h4>/);
       expect(figure).toMatch(/href="charts\/[a-z0-9-]+\.vl\.json"/);
     }
+  });
+
+  it("says which inputs matter", () => {
+    const text = page
+      .replace(/<[^>]+>/g, " ")
+      .replaceAll("\u00a0", " ")
+      .replace(/\s+/g, " ");
+    expect(text).toContain(
+      "x[1] and x[2] matter most (part in 70 % and 50 % of the variance); 2 of 3 coordinates have part in 1 % or more.",
+    );
+    expect(/Mean dimension 1\.20\d? \(95 % interval 1\.18\d? to 1\.22\d?\)/.test(text)).toBe(true);
+    expect(text).toContain("evidence of one, no proof");
+    expect(text).toContain("x[1], x[2] 100 % 20 % 18 % to 22 %");
   });
 
   it("leads only to places that it has", () => {

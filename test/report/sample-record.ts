@@ -3,6 +3,7 @@
  * not a run. It holds what a report must cope with: every family, a deterministic source, an undecided and a confirmed
  * case, exact zeros, non-finite cells, a missing reference, what is in use, and texts that try to be markup.
  */
+import { sampleSensitivity } from "./sample-sensitivity.js";
 import { sampleExplanation } from "./sample-explanation.js";
 import type { Family } from "../../src/sources/contract.js";
 import type { Problem } from "../../src/problem/contract.js";
@@ -346,6 +347,7 @@ export function sampleRecord(size: SampleSize = SMALL): StudyRecord {
     tests,
     spreadTests: [],
     measurements: [],
+    sensitivity: [sampleSensitivity(problems[0]?.id ?? "", "value")],
     family: { tests: tests.filter((t) => t.kind !== "none").length, level: 0.01 },
     convergence,
     budgets,

@@ -6,7 +6,10 @@ import { PickFreeze } from "../../src/study/pick-freeze.js";
 import { prepareProblems, type RunnableProblem } from "../../src/study/runnable.js";
 import { measureSensitivity, type SensitivityRequest } from "../../src/study/sensitivity.js";
 import type { Sensitivity } from "../../src/record/sensitivity.js";
-import { problem } from "./fixtures.js";
+import { jsonText } from "../../src/record/json.js";
+import { parseRecord } from "../../src/record/schema.js";
+import type { TaskResult } from "../../src/study/tasks.js";
+import { problem, runSpec, specOf } from "./fixtures.js";
 
 const REQUEST: SensitivityRequest = { seed: 1, points: 2 ** 14, coordinates: 2 ** 28 };
 
@@ -94,5 +97,48 @@ describe("smoothness", () => {
     const found = measureSensitivity(await runnableOf(described), described, REQUEST);
     const lines = sensitivityLines(found, described);
     expect(lines.some((line) => line.includes("evidence of one, no proof"))).toBe(true);
+  });
+});
+
+describe("in a study", () => {
+  const settings = { sources: ["philox4x32", "pcg64"], sizes: [2 ** 14], replicates: 32 };
+
+  it("is in the record, the same when a run is taken up again, and passes through JSON", async () => {
+    const spec = specOf([problem("shares", "x[1] + 2 * x[2] * x[3]")], settings);
+    const journal = new Map<string, TaskResult>();
+    const record = await runSpec(spec, { journal });
+    const [found] = record.sensitivity;
+    expect(found?.problem).toBe("shares");
+    // 1/12 alone of 1/12 + 4 (1/9 - 1/16)
+    expect(found?.measures?.units[0]?.total.value).toBeCloseTo(1 / 12 / (1 / 12 + 4 * (1 / 9 - 1 / 16)), 1);
+    const again = await runSpec(spec, { journal });
+    expect(again.sensitivity).toEqual(record.sensitivity);
+    expect(parseRecord(JSON.parse(jsonText(record))).sensitivity).toEqual(record.sensitivity);
+  });
+
+  it("is left out of a small study, with the reason", async () => {
+    const spec = specOf([problem("small", "x[1] + x[2] * x[3]")], {
+      ...settings,
+      sizes: [64],
+      replicates: 4,
+    });
+    const record = await runSpec(spec);
+    expect(record.sensitivity).toEqual([
+      {
+        problem: "small",
+        output: "mean",
+        confidence: 0.95,
+        measures: null,
+        reason: "which inputs matter was not asked: it would cost more than a small part of this study",
+      },
+    ]);
+  });
+
+  it("has no figures where the variance is not finite", async () => {
+    // P(f > y) = y^-(4/3): a mean, no variance
+    const heavy = problem("heavy", "x[1]^(-0.75) + x[2]", { dimension: 2 });
+    const [found] = (await runSpec(specOf([heavy], settings))).sensitivity;
+    expect(found?.measures).toBeNull();
+    expect(found?.reason).toContain("no finite variance");
   });
 });

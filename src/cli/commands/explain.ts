@@ -7,6 +7,8 @@ import type { SourceSpec, StudySettings } from "../../problem/contract.js";
 import { settingValues } from "../../problem/settings.js";
 import { loadPaths, type LoadedProblem } from "../../problem/load.js";
 import { runStudy } from "../../recipe.js";
+import { divergentProblems } from "../../findings/divergence.js";
+import { withdrawn } from "../../findings/sensitivity.js";
 import { jsonText } from "../../record/json.js";
 import { parseSource, type SourceChoice } from "../../sources/choice.js";
 import type { StudyRecord } from "../../record/types.js";
@@ -14,6 +16,7 @@ import { threads } from "../../study/executor.js";
 import { startProgress } from "../../study/progress.js";
 import { bitLadder, cellsOf, resolutionCost } from "../../study/resolution.js";
 import { tryPrograms } from "../../study/programs.js";
+import { measureTail } from "../../study/measure/tail.js";
 import { prepareProblems, type RunnableProblem } from "../../study/runnable.js";
 import { FEWEST_BASE_POINTS, measureSensitivity, SENSITIVITY } from "../../study/sensitivity.js";
 import { buildSpec, settingsOf } from "../../study/settings.js";
@@ -62,7 +65,9 @@ async function explainInputs(
   const { seed } = settingValues(settingsOf(loaded, flags));
   const [runnable] = await prepareProblems([problem]);
   if (runnable === undefined) return EXIT.internal;
-  const measured = measureSensitivity(runnable, problem, { ...SENSITIVITY, seed, points: asked });
+  const figures = measureSensitivity(runnable, problem, { ...SENSITIVITY, seed, points: asked });
+  const tail = { problem: problem.id, tail: measureTail(runnable, seed) };
+  const [measured = figures] = withdrawn([figures], divergentProblems([tail], [], new Map()));
   if (booleanFlag(args, "json")) io.stdout.write(`${jsonText(measured, 2)}\n`);
   else {
     const { sensitivityText } = await import("../../report/sensitivity-text.js");

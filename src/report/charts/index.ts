@@ -10,6 +10,7 @@ import type { Chart } from "./chart.js";
 import { costToTolerance } from "./cost-to-tolerance.js";
 import { errorAgainstN } from "./error-against-n.js";
 import { figureByDimension } from "./figure-by-dimension.js";
+import { inputsChart } from "./inputs.js";
 import { lowBits } from "./low-bits.js";
 import { orders } from "./orders.js";
 import { pairGrid } from "./pair-grid.js";
@@ -22,6 +23,7 @@ const SUBJECT_CHARTS: readonly ((view: View, subject: Subject) => Chart | null)[
   errorAgainstN,
   budgetChart,
   biasChart,
+  inputsChart,
 ];
 
 /** Charts of one bias that the structure of its source was asked about. */

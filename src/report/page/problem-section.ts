@@ -12,6 +12,7 @@ import {
 } from "../../findings/format.js";
 import type { ExplainedRow, Subject } from "../view.js";
 import { reachWords, referenceWords, toleranceWords, verdictRows } from "../verdict-row.js";
+import { inputsBlock } from "./inputs-section.js";
 import { explanationBlock, hazards, whyLink } from "./explanation-section.js";
 import { dataTable, figure } from "./figure.js";
 import { type Markup, html } from "./html.js";
@@ -217,6 +218,6 @@ export async function problemSection(
         ${dataTable({ columns: reachColumns, rows: reach })}
       </details>`
     }
-    ${hazards(subject)} ${figures} ${reasons}
+    ${hazards(subject)} ${figures} ${inputsBlock(subject)} ${reasons}
   </section> `;
 }

@@ -54,7 +54,7 @@ export function withdrawn(
 ): Sensitivity[] {
   return sensitivity.map((one) => {
     const reason = divergent.get(one.problem);
-    return reason === undefined || one.measures === null ? one : { ...one, measures: null, reason };
+    return reason === undefined || one.measures === null ? one : { ...one, measures: null, reason, nets: [] };
   });
 }
 

@@ -12,6 +12,7 @@ export const sensitivity = z.strictObject({
   output: name,
   confidence: real,
   reason: orNull(text),
+  nets: z.array(z.strictObject({ source: name, base: whole, digits: whole, t: z.array(whole) })).default([]),
   measures: orNull(
     z.strictObject({
       source: name,

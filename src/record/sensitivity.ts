@@ -81,11 +81,21 @@ export interface SensitivityMeasures {
   readonly smoothness: Smoothness | null;
 }
 
+/** How evenly a net covers pairs: t of the first base^digits points, for each of `pairs` of the measures. */
+export interface NetPairs {
+  readonly source: string;
+  readonly base: number;
+  readonly digits: number;
+  readonly t: readonly number[];
+}
+
 /** One problem x output; `measures` is null where `reason` says why. */
 export interface Sensitivity {
   readonly problem: string;
   readonly output: string;
   readonly confidence: number;
   readonly measures: SensitivityMeasures | null;
+  /** The digital nets among the sources of the study. */
+  readonly nets: readonly NetPairs[];
   readonly reason: string | null;
 }

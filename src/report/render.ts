@@ -79,9 +79,17 @@ function themed(svg: string): string {
   });
 }
 
-/** Coordinates to a tenth of a pixel (points and lines are some 2 pixels wide), no attributes that repeat a default. */
+/**
+ * Coordinates to a tenth of a pixel (points and lines are some 2 pixels wide), no attributes that repeat a default, no
+ * width of a stroke that is not drawn (groups set neither): 150 KB of the page of twenty problems by twenty sources.
+ */
 function slim(svg: string): string {
   return svg
+    .replace(/<(?:path|line|rect|text)[^>]*>/g, (tag) =>
+      tag.includes(' stroke="')
+        ? tag.replace(' stroke-width="1"', "")
+        : tag.replace(/ stroke-width="[^"]*"/, ""),
+    )
     .replace(/ (?:transform|d|x2|y2)="[^"]*"/g, (attribute) =>
       attribute.replace(/-?\d+\.\d+(?:e-\d+)?/g, (number) =>
         String(Math.round(Number(number) * 10) / 10 + 0),

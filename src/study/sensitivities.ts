@@ -6,6 +6,8 @@ import { setImmediate } from "node:timers/promises";
 import type { Sensitivity } from "../record/sensitivity.js";
 import type { StudySpec } from "../record/types.js";
 import type { RunnableProblem } from "./runnable.js";
+import { parseSource } from "../sources/choice.js";
+import { netPairs } from "./net-pairs.js";
 import { measureSensitivity } from "./sensitivity.js";
 
 /** Points in all replicates together. */
@@ -34,7 +36,10 @@ export async function measureSensitivities(request: SensitivitiesRequest): Promi
     const largest = Math.max(0, ...(spec.sizes[described.id] ?? []));
     const estimates = (spec.replicates[described.id] ?? 1) * (spec.sources[described.id] ?? []).length;
     const coordinates = Math.min(COORDINATES, PART * largest * estimates * described.dimension);
-    found.push(measureSensitivity(problem, described, { seed: spec.seed, points: POINTS, coordinates }));
+    const request = { seed: spec.seed, points: POINTS, coordinates };
+    const figures = measureSensitivity(problem, described, request);
+    const sources = (spec.sources[described.id] ?? []).map(parseSource);
+    found.push({ ...figures, nets: netPairs(figures, sources, largest) });
     done();
     await setImmediate();
   }

@@ -84,7 +84,7 @@ export function measureSensitivity(
   const { confidence = 0.95 } = request;
   if (!(confidence > 0 && confidence < 1))
     throw new RangeError(`confidence: expected a number between 0 and 1, found ${confidence}`);
-  const answer = { problem: described.id, output: "mean", confidence };
+  const answer = { problem: described.id, output: "mean", confidence, nets: [] };
   const refused = (reason: string): Sensitivity => ({ ...answer, measures: null, reason });
   const { dimension } = problem.formula;
   const units = unitsOf(described);

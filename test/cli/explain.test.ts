@@ -113,6 +113,16 @@ describe("explain --source", () => {
   });
 });
 
+describe("explain --source of a net", () => {
+  it("sets its pairs beside what the integrand does in pairs", () => {
+    const { status, stdout } = tolerand("crest.yaml", "--source", "sobol", "--points", "8192");
+    expect(status).toBe(0);
+    expect(stdout).toMatch(
+      /\nsobol: pairs that do something only together, and t of each at 2\^13 points \(0 even, 13 says nothing\)\n {4}Pair +Only together +Interval +t\n {4}x\[1\], x\[2\] +5\d %.*0\n/,
+    );
+  });
+});
+
 describe("explain without a source", () => {
   it("says which inputs matter", () => {
     const { status, stdout } = tolerand("crest.yaml");

@@ -347,7 +347,7 @@ export function sampleRecord(size: SampleSize = SMALL): StudyRecord {
     tests,
     spreadTests: [],
     measurements: [],
-    sensitivity: [sampleSensitivity(problems[0]?.id ?? "", "value")],
+    sensitivity: (size.problems > 10 ? ids : ids.slice(0, 1)).map((id) => sampleSensitivity(id, "value")),
     family: { tests: tests.filter((t) => t.kind !== "none").length, level: 0.01 },
     convergence,
     budgets,

@@ -18,6 +18,10 @@ export function sampleSensitivity(problem: string, output: string): Sensitivity 
     output,
     confidence: 0.95,
     reason: null,
+    nets: [
+      { source: "sobol+owen", base: 2, digits: 16, t: [5] },
+      { source: "sobol", base: 2, digits: 16, t: [5] },
+    ],
     measures: {
       source: "sobol+owen",
       points: 256,

@@ -32,8 +32,8 @@ describe("writeReport", () => {
       "record.json",
       "summary.md",
     ]);
-    expect(files.charts.length).toBe(13);
-    expect(files.images.length).toBe(13);
+    expect(files.charts.length).toBe(14);
+    expect(files.images.length).toBe(14);
     for (const file of files.images) expect(await readFile(file, "utf8")).toMatch(/^<\?xml[^>]*>\n<svg /);
     expect(await readFile(files.record, "utf8")).toBe(`${jsonText(sampleRecord(two))}\n`);
   });

@@ -116,6 +116,24 @@ describe("in a study", () => {
     expect(parseRecord(JSON.parse(jsonText(record))).sensitivity).toEqual(record.sensitivity);
   });
 
+  it("has t of each pair for the nets among the sources", async () => {
+    // points of pairs: the first two coordinates of Sobol's sequence are a (0, m, 2)-net (Sobol' 1967), as are those of
+    // Faure's in any pair (Faure 1982)
+    const described = problem("pairs", "x[1] * x[2] * x[3]");
+    const sources = ["sobol", "philox4x32", "sobol+owen", "faure"];
+    const [found] = (await runSpec(specOf([described], { ...settings, sources }))).sensitivity;
+    expect(found?.nets.map(({ source, base }) => [source, base])).toEqual([
+      ["sobol", 2],
+      ["sobol+owen", 2],
+      ["faure", 3],
+    ]);
+    const [plain, scrambled, faure] = found?.nets ?? [];
+    expect(scrambled?.t).toEqual(plain?.t);
+    const first = found?.measures?.pairs.findIndex(({ i, j }) => i === 0 && j === 1) ?? -1;
+    expect(plain?.t[first]).toBe(0);
+    expect(faure?.t).toEqual([0, 0, 0]);
+  });
+
   it("is left out of a small study, with the reason", async () => {
     const spec = specOf([problem("small", "x[1] + x[2] * x[3]")], {
       ...settings,
@@ -129,6 +147,7 @@ describe("in a study", () => {
         output: "mean",
         confidence: 0.95,
         measures: null,
+        nets: [],
         reason: "which inputs matter was not asked: it would cost more than a small part of this study",
       },
     ]);

@@ -126,6 +126,8 @@ async function explainSources(
   else {
     const { explanationText } = await import("../../report/explanation-text.js");
     io.stdout.write(explanationText(alone.problem.title, explanations));
+    const { netPairsText } = await import("../../report/sensitivity-text.js");
+    for (const found of record.sensitivity) io.stdout.write(netPairsText(found, asked));
   }
   const out = textFlag(args, "out");
   if (out !== null) {

@@ -12,6 +12,7 @@ import { errorAgainstN } from "./error-against-n.js";
 import { figureByDimension } from "./figure-by-dimension.js";
 import { inputsChart } from "./inputs.js";
 import { lowBits } from "./low-bits.js";
+import { netPairCharts } from "./net-pairs.js";
 import { orders } from "./orders.js";
 import { pairGrid } from "./pair-grid.js";
 import { planeComb } from "./plane-comb.js";
@@ -54,7 +55,7 @@ export function chartsOf(view: View): ChartSet {
     bySubject: new Map(
       view.subjects.map((subject) => [
         subject.slug,
-        present(SUBJECT_CHARTS.map((make) => make(view, subject))),
+        [...present(SUBJECT_CHARTS.map((make) => make(view, subject))), ...netPairCharts(view, subject)],
       ]),
     ),
     byExplanation: new Map(

@@ -30,7 +30,7 @@ export interface PairMapData {
 }
 
 /** A share of the variance below which a pair is said to matter little (common practice, no single source). */
-const MATTERS = 0.01;
+export const MATTERS = 0.01;
 
 /** Pairs drawn at most, those of largest dependence. */
 const MOST = 1000;

@@ -1,12 +1,16 @@
 /** A chart in the page: its finding, what is plotted, the drawing, how to read it, its numbers and its file. */
 import type { Chart, ChartTable } from "../charts/chart.js";
 import { drawForPage } from "../render.js";
-import { type Markup, html, raw } from "./html.js";
+import { escapeHtml, type Markup, html, raw } from "./html.js";
 import { tied } from "./parts.js";
 
-/** A table of text cells; numbers to the right. */
+/**
+ * A table of text cells; numbers to the right. HTML ends a cell where the next begins, so their end tags are left out: 250 KB
+ * of the page of twenty problems by twenty sources.
+ */
 export function dataTable(table: ChartTable): Markup {
-  const kind = (j: number): Markup => raw(table.columns[j]?.align === "right" ? ` class="num"` : "");
+  const classOf = (j: number): string => (table.columns[j]?.align === "right" ? ` class="num"` : "");
+  const kind = (j: number): Markup => raw(classOf(j));
   return html`<div class="scroll" role="group" aria-label="Table">
     <table>
       <thead>
@@ -18,7 +22,7 @@ export function dataTable(table: ChartTable): Markup {
         ${table.rows.map(
           (row) =>
             html`<tr>
-              ${row.map((text, j) => html`<td${kind(j)}>${text}</td>`)}
+              ${row.map((text, j) => raw(`<td${classOf(j)}>${escapeHtml(text)}`))}
             </tr> `,
         )}
       </tbody>

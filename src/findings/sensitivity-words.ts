@@ -4,9 +4,11 @@ import type { Between, InputShare, NetOrder, Sensitivity, Share } from "../recor
 import { formatCount, formatPercent, formatValue } from "./format.js";
 import { looksOf, superposition, type Looks } from "./sensitivity.js";
 
-/** "4.5 %", of two digits that count. */
-export const shareText = (value: number): string =>
-  formatPercent(Number(value.toPrecision(2))).replace("-", "\u2212");
+/** "4.5 %": two digits that count, none below a hundredth of a per cent. */
+export const shareText = (value: number): string => {
+  const rounded = Math.round(Number(value.toPrecision(2)) * 1e4) / 1e4;
+  return formatPercent(rounded === 0 ? 0 : rounded).replace("-", "\u2212");
+};
 
 export const shareInterval = ({ interval: [low, high] }: Share): string =>
   `${shareText(low)} to ${shareText(high)}`;

@@ -18,7 +18,7 @@ import { pixelY, rowLabels, rulings } from "./rows-frame.js";
 
 const WIDTH = 440;
 const STEP = 26;
-const MARGINS: Margins = { left: 150, right: 190, top: 20, bottom: 50 };
+const MARGINS: Margins = { left: 150, right: 200, top: 20, bottom: 50 };
 
 /** Rows drawn at most; the record holds all. */
 const MOST = 16;

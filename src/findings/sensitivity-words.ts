@@ -86,9 +86,16 @@ export function sensitivityLines({ measures, confidence }: Sensitivity, { dimens
       `Estimates by ${smoothness.source} spread as n to the power ${orderText(integrand)}, ${LOOKS[looksOf(smoothness)]}; companions of the same inputs: smooth ${orderText(smooth)}, kinked ${orderText(kinked)}, jumping ${orderText(jumping)}.`,
     );
   }
+  if (measures.varianceError > RARE)
+    lines.push(
+      `The variance itself is known to ${shareText(measures.varianceError)} only (standard error): few points meet what makes it, so the intervals may be too narrow, of shares near 0 above all; take more points.`,
+    );
   lines.push(meaning(meanDimension, super99, truncation, dimension, smoothness?.integrand ?? null));
   return lines;
 }
+
+/** Beyond this relative standard error of the variance its makers are too few for intervals to be trusted. */
+const RARE = 0.03;
 
 /** Half a power more than n^-1/2 is a gain that pays at any n of practice. */
 const GAIN = -0.6;

@@ -21,6 +21,7 @@ export const sensitivity = z.strictObject({
       evaluations: whole,
       mean: real,
       variance: real,
+      varianceError: real,
       units: z.array(inputShare),
       grouped: z.boolean(),
       inputs: z.array(inputShare),

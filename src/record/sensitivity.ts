@@ -62,6 +62,8 @@ export interface SensitivityMeasures {
   readonly evaluations: number;
   readonly mean: number;
   readonly variance: number;
+  /** Standard error of the variance over the variance. */
+  readonly varianceError: number;
   /** Coordinates in order; groups of neighbours where there are too many. */
   readonly units: readonly InputShare[];
   /** True where a unit is more than one coordinate. */

@@ -7,18 +7,22 @@ import { dirname, join } from "node:path";
 import { jsonText } from "../record/json.js";
 import type { AllocationPlan } from "../findings/allocation-plan.js";
 import type { ProblemPlan } from "../findings/plan.js";
+import type { Problem } from "../problem/contract.js";
+import type { Sensitivity } from "../record/sensitivity.js";
 import type { StudyRecord } from "../record/types.js";
 import { allocationChart } from "./charts/allocation-chart.js";
+import { inputsChart } from "./charts/inputs.js";
 import { planChart } from "./charts/plan-chart.js";
 import { chartsOf, everyChart, inspectionCharts } from "./charts/index.js";
 import { inspectionPage } from "./page/inspection-page.js";
 import { inspectionJson } from "../structure/inspection.js";
 import { viewInspections, type Inspected } from "./inspection-view.js";
 import { page, reportTitle } from "./page/page.js";
+import { sensitivityPage } from "./page/sensitivity-page.js";
 import { planPage } from "./page/plan-page.js";
 import { drawForFile } from "./render.js";
 import { summary } from "./summary.js";
-import { viewRecord } from "./view.js";
+import { slugs, viewRecord } from "./view.js";
 
 export interface ReportOptions {
   /** Also write every chart as SVG, to images/ (PNG would need a native canvas package; a browser or an SVG tool makes it). */
@@ -139,6 +143,31 @@ export async function planTexts(report: PlanReport): Promise<Map<string, string>
 /** Writes the report of a plan; rejects with the system's error where the folder cannot be written. */
 export async function writePlan(report: PlanReport, folder: string): Promise<void> {
   await writeTexts(folder, await planTexts(report));
+}
+
+/** What `tolerand explain` found of a problem's inputs, for its page. */
+export interface SensitivityReport {
+  readonly problem: Problem;
+  readonly sensitivity: Sensitivity;
+  /** The command line that repeats it. */
+  readonly command: string;
+}
+
+/** The text of every file of the report of a problem's inputs. */
+export async function sensitivityTexts(report: SensitivityReport): Promise<Map<string, string>> {
+  const { problem, sensitivity } = report;
+  const [slug = ""] = slugs([problem.id]);
+  const chart = inputsChart(null, { slug, title: problem.title, sensitivity });
+  const texts = new Map<string, string>();
+  texts.set("inputs.json", `${jsonText(sensitivity, 1)}\n`);
+  if (chart !== null) texts.set(`charts/${chart.name}.vl.json`, `${jsonText(chart.spec, 1)}\n`);
+  texts.set("index.html", await sensitivityPage({ ...report, chart }));
+  return texts;
+}
+
+/** Writes the report of a problem's inputs; rejects with the system's error where the folder cannot be written. */
+export async function writeSensitivity(report: SensitivityReport, folder: string): Promise<void> {
+  await writeTexts(folder, await sensitivityTexts(report));
 }
 
 /**

@@ -4,6 +4,7 @@
  * truncation dimension at 99 % (R. E. Caflisch, W. Morokoff & A. B. Owen, Journal of Computational Finance 1 (1997) 27-46: the
  * smallest s whose first s coordinates decide so much). A function of the seed and the problem alone.
  */
+import { deviation } from "../numeric/moments.js";
 import { mean, sum } from "../numeric/sums.js";
 import { ratioOf } from "../numeric/ratio.js";
 import type { Problem } from "../problem/contract.js";
@@ -112,6 +113,7 @@ export function measureSensitivity(
     replicates: REPLICATES,
     mean: mean(means),
     variance,
+    varianceError: deviation(variances) / Math.sqrt(REPLICATES) / variance,
     units: shares,
     grouped: units.some(({ count }) => count > 1),
     inputs:

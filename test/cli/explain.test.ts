@@ -146,6 +146,21 @@ describe("explain without a source", () => {
     expect(tolerand("crest.yaml", "--json", "--points", "4096", "--seed", "3").stdout).toBe(stdout);
   });
 
+  it("writes a page, but not over a study", () => {
+    const { status, stderr } = tolerand("crest.yaml", "--out", "inputs");
+    expect(status).toBe(0);
+    expect(stderr).toContain("Next: open ");
+    const page = readFileSync(join(folder, "inputs", "index.html"), "utf8").replaceAll("\u00a0", " ");
+    expect(page).toContain("Which inputs matter: Crest between the planes");
+    expect(page).toContain('id="inputs-crest"');
+    expect(page).toContain("How the inputs act, and what that leaves to gain");
+    expect(existsSync(join(folder, "inputs", "charts", "inputs-crest.vl.json"))).toBe(true);
+    const found = JSON.parse(readFileSync(join(folder, "inputs", "inputs.json"), "utf8")) as Sensitivity;
+    expect(found.problem).toBe("crest");
+    writeFileSync(join(folder, "inputs", "record.json"), "{}");
+    expect(tolerand("crest.yaml", "--out", "inputs").status).toBe(2);
+  });
+
   it("refuses what needs a source, and too few points", () => {
     const cycle = tolerand("crest.yaml", "--full-cycle");
     expect(cycle.status).toBe(2);

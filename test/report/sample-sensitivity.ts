@@ -29,6 +29,7 @@ export function sampleSensitivity(problem: string, output: string): Sensitivity 
       evaluations: 30_000,
       mean: 1,
       variance: 4,
+      varianceError: 0.01,
       units: [unit("x[1]", 0, 0.5, 0.7), unit("x[2]", 1, 0.3, 0.5), unit("x[3]", 2, -0.004, 0.001)],
       grouped: false,
       inputs: [],

@@ -55,6 +55,16 @@ describe("sensitivity", () => {
     expect(few.measures?.points).toBeGreaterThanOrEqual(64);
   });
 
+  it("says where rare events carry the variance", async () => {
+    const rare = problem("rare", "min(x) > 0.9 ? 1 : 0");
+    const found = measureSensitivity(await runnableOf(rare), rare, { ...REQUEST, points: 2 ** 12 });
+    const told = sensitivityLines(found, rare).some((line) => line.includes("few points meet what makes it"));
+    expect(told).toBe(true);
+    const usual = problem("usual", "sum(x)");
+    const lines = sensitivityLines(measureSensitivity(await runnableOf(usual), usual, REQUEST), usual);
+    expect(lines.some((line) => line.includes("few points meet"))).toBe(false);
+  });
+
   it("works with one coordinate", async () => {
     const one = await measured("x[1]^2", { dimension: 1 });
     expect(one.measures?.pairs).toEqual([]);

@@ -2,7 +2,8 @@
  * `tolerand explain PROBLEM`: with `--source X`, why this source errs on this integrand; without a source, what the
  * integrand itself is like.
  */
-import { resolve } from "node:path";
+import { existsSync } from "node:fs";
+import { join, resolve } from "node:path";
 import type { SourceSpec, StudySettings } from "../../problem/contract.js";
 import { settingValues } from "../../problem/settings.js";
 import { loadPaths, type LoadedProblem } from "../../problem/load.js";
@@ -57,9 +58,13 @@ async function explainInputs(
   args: Arguments,
   io: Io,
 ): Promise<number> {
-  for (const flag of ["full-cycle", "replicates", "out"] as const)
+  for (const flag of ["full-cycle", "replicates"] as const)
     if (args[flag] !== undefined && args[flag] !== false)
       throw new InputError(messages.needsSource(flag, loaded.problem.id));
+  const out = textFlag(args, "out");
+  const folder = out === null ? null : resolve(io.cwd, out);
+  if (folder !== null && existsSync(join(folder, "record.json")))
+    throw new InputError(messages.studyFolder(folder));
   const { problem } = loaded;
   const asked = wholeFlag(args, "points", FEWEST_BASE_POINTS) ?? SENSITIVITY.points;
   const { seed } = settingValues(settingsOf(loaded, flags));
@@ -72,6 +77,18 @@ async function explainInputs(
   else {
     const { sensitivityText } = await import("../../report/sensitivity-text.js");
     io.stdout.write(sensitivityText(problem, measured));
+  }
+  if (folder !== null) {
+    const { writeSensitivity } = await import("../../report/index.js");
+    const report = { problem, sensitivity: measured, command: io.commandLine };
+    try {
+      await writeSensitivity(report, folder);
+    } catch (error) {
+      if (error instanceof Error && "syscall" in error)
+        throw new InputError(messages.cannotWrite(folder, error.message));
+      throw error;
+    }
+    io.stderr.write(messages.next(`open ${folder}/index.html`));
   }
   return EXIT.done;
 }

@@ -24,7 +24,10 @@ const MARGINS: Margins = { left: 150, right: 200, top: 20, bottom: 50 };
 const MOST = 16;
 
 /** The chart of one subject; null where the shares are not known. */
-export function inputsChart(_: View, subject: Subject): Chart | null {
+export function inputsChart(
+  _: View | null,
+  subject: Pick<Subject, "slug" | "title" | "sensitivity">,
+): Chart | null {
   const { sensitivity } = subject;
   const measures = sensitivity?.measures ?? null;
   if (sensitivity === null || measures === null) return null;

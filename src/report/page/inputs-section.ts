@@ -9,7 +9,10 @@ import { tied } from "./parts.js";
 const MOST_PAIRS = 10;
 
 /** null where it was not asked. */
-export function inputsBlock({ sensitivity, problem }: Subject): Markup | null {
+export function inputsBlock({
+  sensitivity,
+  problem,
+}: Pick<Subject, "sensitivity" | "problem">): Markup | null {
   if (sensitivity === null) return null;
   if (sensitivity.measures === null)
     return html`<p class="aside">Inputs: ${tied(sensitivity.reason ?? "not known")}.</p>`;

@@ -2,7 +2,7 @@
 // Quick when nothing has changed: one hash, then the build's own stamps.
 import { createHash } from "node:crypto";
 import { execFileSync } from "node:child_process";
-import { existsSync, readFileSync, writeFileSync } from "node:fs";
+import { existsSync, lstatSync, readFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
 
@@ -31,6 +31,14 @@ export function setUp() {
     .update(readFileSync(join(root, "package-lock.json")))
     .digest("hex");
   if (!existsSync(stampFile) || readFileSync(stampFile, "utf8") !== stamp) {
+    // npm ci would empty the folder that a link leads to, which belongs to another checkout.
+    if (lstatSync(join(root, "node_modules"), { throwIfNoEntry: false })?.isSymbolicLink()) {
+      process.stderr.write(
+        "setup: node_modules is a link to another checkout and does not match package-lock.json; " +
+          "remove the link, then run this again\n",
+      );
+      process.exit(2);
+    }
     process.stderr.write("setup: npm ci\n");
     // --include=dev: the build and the tests need the development packages even where NODE_ENV is production.
     const code = run("npm", ["ci", "--include=dev", "--no-audit", "--no-fund"], { stdio: ["ignore", 2, 2] });

@@ -98,7 +98,7 @@ function bigFunctions(math: MathJsInstance): Record<string, Callable> {
   const own = numberFunctions(math);
   const functions: Record<string, Callable> = {
     choose_: broadcast((test, yes, no) =>
-      test === true || (test !== false && !(test as BigNumber).isZero()) ? (yes) : (no),
+      test === true || (test !== false && !(test as BigNumber).isZero()) ? yes : no,
     ),
   };
   for (const [name, { shape }] of Object.entries(FUNCTIONS)) {

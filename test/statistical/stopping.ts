@@ -36,7 +36,14 @@ export function stoppingStudies({ shape, studies, replicates, corrected }: Stopp
     for (const [n, errors] of nestedErrors(draw, replicates)) {
       const estimates = errors.map((error) => 1 + error);
       rawCells.push(makeCell({ source: "s", n, estimates, withinVariances: estimates.map(() => 1) }));
-      const inside = insidePairs({ spec, problems: [PROBLEM], sources: [SOURCE], rawCells, consensus: [], measurements: [] });
+      const inside = insidePairs({
+        spec,
+        problems: [PROBLEM],
+        sources: [SOURCE],
+        rawCells,
+        consensus: [],
+        measurements: [],
+      });
       if (inside.size === 0) continue;
       stopped++;
       missed += missProbability.get(n) ?? NaN;

@@ -41,6 +41,8 @@ export interface StudyRun {
   readonly warnings: readonly string[];
   /** Which pairs get a prediction from the structure of their source; those with a confirmed bias by default. */
   readonly explain?: ExplainedPairs;
+  /** Whether to ask which inputs matter, which costs as much as a small study of its own; true by default. */
+  readonly askInputs?: boolean;
 }
 
 /** Runs a study and gives its record; after an abort the record holds what is done and says so. */
@@ -65,7 +67,7 @@ export async function runStudy(run: StudyRun): Promise<StudyRecord> {
   const confirmations: Confirmation[] = run.signal.aborted ? [] : cellsOf(run, fresh, results);
 
   const explanations = await explainMeasured(run, measured, confirmations);
-  const sensitivity = await askInputs(run);
+  const sensitivity = await sensitivities(run);
 
   const environment = run.environment(!run.signal.aborted);
   const stopping = stops === null ? [] : stopSentences(stops, spec);
@@ -149,8 +151,9 @@ async function explainMeasured(
 }
 
 /** Which inputs matter; nothing after an interruption. */
-async function askInputs({ spec, problems, signal, stage: open }: StudyRun): Promise<Sensitivity[]> {
-  if (signal.aborted) return [];
+async function sensitivities(run: StudyRun): Promise<Sensitivity[]> {
+  const { spec, problems, signal, stage: open, askInputs = true } = run;
+  if (signal.aborted || !askInputs) return [];
   const stage = open("inputs", problems.length);
   const sensitivity = await measureSensitivities({ spec, problems, signal, done: () => stage.advance(1) });
   stage.finish();

@@ -57,6 +57,7 @@ function study(cases: readonly Problem[], seed: number): Promise<StudyRecord> {
     stage: () => ({ advance: () => undefined, finish: () => undefined }),
     environment: () => ENVIRONMENT,
     warnings: [],
+    askInputs: false,
   });
 }
 

@@ -30,10 +30,10 @@ export function dataTable(table: ChartTable): Markup {
   </div>`;
 }
 
-/** The figure of `chart`. */
-export async function figure(chart: Chart): Promise<Markup> {
+/** The figure of `chart`; one that is not printed is on the screen only. */
+export async function figure(chart: Chart, printed = true): Promise<Markup> {
   const drawing = raw(await drawForPage(chart));
-  return html`<figure class="wide" id="${chart.name}">
+  return html`<figure class="${printed ? "wide" : "wide screen"}" id="${chart.name}">
     <h4>${tied(chart.title)}</h4>
     <p class="says">${chart.says}</p>
     <div class="scroll" role="group" aria-label="Figure: ${chart.title}">${drawing}</div>

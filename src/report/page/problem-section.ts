@@ -16,6 +16,7 @@ import { inputsBlock } from "./inputs-section.js";
 import { explanationBlock, hazards, whyLink } from "./explanation-section.js";
 import { dataTable, figure } from "./figure.js";
 import { type Markup, html } from "./html.js";
+import { isPrinted, printedSheet } from "./printed-sheet.js";
 import { paragraphs, sourceName, tied, verdictMark } from "./parts.js";
 
 function inputWords(input: Input): string {
@@ -188,7 +189,7 @@ export async function problemSection(
   explained: readonly { readonly row: ExplainedRow; readonly charts: readonly Chart[] }[],
 ): Promise<Markup> {
   const figures: Markup[] = [];
-  for (const chart of charts) figures.push(await figure(chart));
+  for (const chart of charts) figures.push(await figure(chart, isPrinted(chart.name, subject)));
   const reasons: Markup[] = [];
   for (const one of explained) reasons.push(await explanationBlock(one.row, one.charts));
   const used = subject.inUseSentence;
@@ -218,6 +219,7 @@ export async function problemSection(
         ${dataTable({ columns: reachColumns, rows: reach })}
       </details>`
     }
-    ${hazards(subject)} ${figures} ${inputsBlock(subject)} ${reasons}
+    ${hazards(subject)} ${printedSheet(subject)} ${figures}
+    <div class="screen">${inputsBlock(subject)} ${reasons}</div>
   </section> `;
 }

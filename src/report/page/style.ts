@@ -71,7 +71,7 @@ nav .part>ol{display:none}
 .js a.source{text-decoration-style:dotted}
 .js [data-tip],.js .chart [data-s]{cursor:pointer}
 .js figure:not(#bias-map) .chart path[data-tip]:not([stroke]){stroke:transparent;stroke-width:12px;pointer-events:all}
-.away{display:none}
+.away,.printed{display:none}
 .dim{opacity:.14}
 tr.followed>*{background:var(--wash)}
 #tip{position:fixed;z-index:3;pointer-events:none;background:var(--ink);color:var(--paper);font-size:.8125rem;line-height:1.4;padding:.35rem .55rem;max-width:22rem}
@@ -96,7 +96,8 @@ dd{margin-bottom:.5rem}
 @page{size:A4;margin:10mm}
 html{color-scheme:light;font-size:8pt}
 body{font-size:1rem;line-height:1.35;background:#fff}
-nav,.controls,details,.file,#tip,#following{display:none!important}
+nav,.controls,details,.file,.problem .screen,#tip,#following{display:none!important}
+.problem .printed{display:block}
 .sheet{display:block;padding:0;max-width:none}
 main>header,main>section>*,.item>*,figure h4,figure .says,figcaption,figure .aside{max-width:none}
 .scroll{overflow:visible}
@@ -110,12 +111,12 @@ figure{margin:.6rem 0 0}
 figcaption{margin:.2rem 0}
 .says{margin:0 0 .2rem}
 .chart{min-width:0;max-width:100%}
-.problem figure{display:grid;grid-template-columns:minmax(0,1fr) 21rem;grid-template-rows:repeat(5,auto) 1fr;column-gap:1rem}
+.problem figure{display:grid;grid-template-columns:minmax(0,1fr) 23rem;grid-template-rows:repeat(5,auto) 1fr;column-gap:1rem}
 .problem figure h4{grid-column:1/-1}
 .problem figure>.scroll{grid-column:1;grid-row:2/span 5}
-.problem figure>p,.problem figcaption{grid-column:2;margin:0 0 .3rem}
-.problem .chart{width:auto;max-height:66mm;font-size:14px}
-.problem figure:last-child .chart{max-height:51mm}
+.problem figure>p,.problem figcaption{grid-column:2;margin:0 0 .3rem;font-size:.8rem;line-height:1.25}
+.problem .chart{width:auto;max-height:48mm;font-size:14px}
+.problem figure[id^=budget] .chart{max-height:38mm}
 table{margin:.3rem 0}
 th,td{padding-top:.1rem;padding-bottom:.1rem}
 dl{margin:.4rem 0;gap:.05rem 1rem}

@@ -1,6 +1,6 @@
 /**
  * Calibration of whole studies: real sources, compiled formulas, the engine, the tests of bias and spread and their confirmation. Seeds
- * are fixed. Over 2,000 null studies of sound sources (a smooth, a skewed, a rare-event and a rare-payment integrand,
+ * are fixed. Over 500 null studies of sound sources (a smooth, a skewed, a rare-event and a rare-payment integrand,
  * 32 replicates of 256 points) the share with any confirmed bias or fault of spread must be consistent with the stated 1 %; a planted bias of
  * 2 detectable units must be found as often as stated (power above 0.99, see null-studies.test.ts). The bounds are
  * Clopper & Pearson (1934) at 99.9 %. TOLERAND_STUDIES sets the number of studies.
@@ -14,7 +14,7 @@ import { inProcess, type Executor } from "../../src/study/executor.js";
 import { prepareProblems, type RunnableProblem } from "../../src/study/runnable.js";
 import { ENVIRONMENT, problem, specOf } from "../study/fixtures.js";
 
-const STUDIES = Number(process.env["TOLERAND_STUDIES"] ?? 2000);
+const STUDIES = Number(process.env["TOLERAND_STUDIES"] ?? 500);
 const FALSE_ALARMS = 0.01;
 const SURE = 0.999;
 

@@ -95,18 +95,31 @@ export function aroundOf({ mean, error }: Spread, confidence: number, degrees: n
   return { value: mean, interval: [mean - half, mean + half] };
 }
 
-/** The smallest power of two of pairs after which nothing shows any more, and that has something to show. */
+/**
+ * The smallest power of two of pairs after which nothing shows any more, neither together nor any pair by itself (a single
+ * large one deep in the order drowns in the noise of a long sum), and that has something to show.
+ */
 function choosePairs(sums: AliasSums, available: number): number {
   const ladder: number[] = [];
   for (let pairs = 1; 2 * pairs <= available; pairs *= 2) ladder.push(pairs);
   if (ladder.length === 0) return available;
-  const factor = studentFactor(0.99, PILOT.replicates - 1);
+  const degrees = PILOT.replicates - 1;
+  const factor = studentFactor(0.99, degrees);
+  const total = spreadOf(firstOf(sums, available));
+  // Bonferroni over all pairs
+  const single = studentFactor(1 - 0.01 / available, degrees);
+  const loud = Array.from({ length: available }, (_, i) => i).filter((i) => {
+    const { mean, error } = spreadOf(firstOf(sums, i + 1, i));
+    return Math.abs(mean) > Math.max(single * error, SMALL_TAIL * Math.abs(total.mean));
+  });
+  const last = loud.at(-1) ?? -1;
   const quiet = (pairs: number): boolean =>
+    pairs > last &&
     ladder.every((later) => {
       if (later < pairs) return true;
       const { mean, error } = spreadOf(firstOf(sums, 2 * later, pairs));
-      const total = spreadOf(firstOf(sums, 2 * later));
-      return Math.abs(mean) <= Math.max(factor * error, SMALL_TAIL * Math.abs(total.mean));
+      const both = spreadOf(firstOf(sums, 2 * later));
+      return Math.abs(mean) <= Math.max(factor * error, SMALL_TAIL * Math.abs(both.mean));
     });
   return ladder.find(quiet) ?? ladder.at(-1) ?? available;
 }

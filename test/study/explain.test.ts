@@ -57,6 +57,24 @@ test.each([
   },
 );
 
+test("one dual vector deep in the order, among many that add nothing", async () => {
+  const ripples = await prepared(problem("ripples", "prod(1 + 0.9 * cos(2 * pi * ([9, 6, 1] .* x)))"));
+  // the low 8 bits of 1103515245 x + 12345 mod 2^31 are a generator mod 2^8 of their own
+  const step = (x: number): number => (1103515245 * x + 12345) % 256;
+  const values = Array.from({ length: 256 }, (_, x) => {
+    const u = [x, step(x), step(step(x))].map((state) => (state + 0.5) / 256);
+    return evaluateAt(ripples, u).value;
+  });
+  const exact = values.reduce((sum, value) => sum + value, 0) / 256 - 1;
+  const modulus = "2^31";
+  const congruential = { modulus, multiplier: 1103515245, increment: 12345 };
+  const choice = parseSource({ name: "low8", congruential, bits: "low 8" });
+  const found = explain({ ...request, problem: ripples, choice, centre: 1, measured: exactly(exact) });
+  expect(exact).toBeGreaterThan(0.1);
+  expect(found.aliases[0]?.entries.map(Math.abs)).toEqual([9, 6, 1]);
+  expect(found.explained).toBe(true);
+});
+
 const PEAK = "exp(-sum(square(x - [0.5, 0.4, 0.4])) / (2 * 0.03^2)) / (0.03 * sqrt(2 * pi))^3";
 
 test("a peak half-way between the planes of randu: predicted, in closed form and simulated bias agree", async () => {

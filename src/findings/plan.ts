@@ -6,17 +6,21 @@
  * (budget.ts), the fitted deviation falls with n, and the smallest valid n whose total is inside is wanted. Three n are
  * found: where the lower end of the total's 95 % interval comes inside, where the total does, and where its upper end does.
  * The last one is recommended, because a study of that n is then expected to say `within`; the first and last are the
- * interval.
+ * interval. The upper end is that of the interval which such a study would print: its own R replicates scatter too, so
+ * that the relative errors of the pilot's deviation and of the study's own add in quadrature, on the logarithmic scale,
+ * and its interval reaches above its deviation. (Taking the pilot's error alone, the cheapest of several sources is the
+ * one whose deviation came out too small.)
  *
  * Two lines are not taken from the budget as they stand. A bias that was not excluded is a matter of the pilot's size; the
  * plan takes what a study of n points with R replicates would leave of it, E|b| + t s(n)/sqrt(R) with
- * E|b| = sqrt(2/pi) s/sqrt(R) (mean of a half-normal), where that is smaller. And with M randomisations averaged the
+ * E|b| = sqrt(2/pi) s/sqrt(R) (mean of a half-normal; 1.96 s/sqrt(R) at the upper end), where that is smaller. And with M randomisations averaged the
  * sampling line is s(n')/sqrt(M), n = M n' evaluations in all.
  *
  * Quasi-random sources are planned at the sizes measured and their doublings: between those the error does not lie on
  * the fitted curve (a net in base 2 is balanced at powers of two). Pseudo-random n are rounded up to two digits, which is
  * what a fitted number supports.
  */
+import { chiSquareQuantile } from "../numeric/chi-square.js";
 import { studentFactor } from "../numeric/student.js";
 import type { Problem } from "../problem/contract.js";
 import type { BiasTest, Budget, Convergence, RecordSource, StudyRecord } from "../record/types.js";
@@ -246,6 +250,19 @@ interface Scaling {
   readonly randomisations: number;
 }
 
+/** Upper 97.5 % point of the normal law. */
+const UPPER = 1.959964;
+
+/** Logarithms of how far above the truth the deviation of `replicates` normal values may come out, and its interval above it. */
+function ownSpread(replicates: number): { readonly scatter: number; readonly reach: number } {
+  const degrees = replicates - 1;
+  if (degrees < 1) return { scatter: 0, reach: 0 };
+  return {
+    scatter: Math.log(chiSquareQuantile(0.975, degrees) / degrees) / 2,
+    reach: -Math.log(chiSquareQuantile(0.025, degrees) / degrees) / 2,
+  };
+}
+
 /** The budget's total and interval with the structure line of the plan and the sampling line of M randomisations. */
 function scaled({ budget, total, ends, test, series, randomisations }: Scaling): Totals {
   const { replicates } = series.last;
@@ -262,17 +279,26 @@ function scaled({ budget, total, ends, test, series, randomisations }: Scaling):
   const shrunk = (part: number, s: number): number =>
     part > 0 && randomisations > 1 ? (part * Math.hypot(s / root, others)) / Math.hypot(s, others) : part;
   const structure = value("source structure");
-  const resolution = ((Math.sqrt(2 / Math.PI) + factor) * sigma) / Math.sqrt(replicates);
-  const kept = test?.confirmed === true ? structure : Math.min(structure, resolution);
-  const fixed = bias - structure + kept;
+  const kept = (spread: number, of: number): number =>
+    test?.confirmed === true
+      ? structure
+      : Math.min(structure, ((spread + factor) * of) / Math.sqrt(replicates));
+  const fixed = bias - structure + kept(Math.sqrt(2 / Math.PI), sigma);
   const [from, to] = sampling?.interval ?? [sigma, sigma];
+  const own = ownSpread(replicates);
+  const shown = sigma > 0 ? sigma * Math.exp(Math.hypot(Math.log(to / sigma), own.scatter) + own.reach) : to;
+  const fixedAbove = bias - structure + kept(UPPER, shown);
+  const randomAbove = (budget.coverageFactor ?? factor) * Math.hypot(shown, others);
   const lowRandom = (budget.coverageFactor ?? factor) * Math.hypot(from, others);
   const lowBias = Math.max(0, ends[0] - lowRandom);
   return {
     point: {
       n: budget.n * randomisations,
       total: fixed + shrunk(total - bias, sigma),
-      interval: [Math.min(lowBias, fixed) + shrunk(lowRandom, from), fixed + shrunk(ends[1] - bias, to)],
+      interval: [
+        Math.min(lowBias, fixed) + shrunk(lowRandom, from),
+        Math.max(fixed, fixedAbove) + shrunk(Math.max(randomAbove, ends[1] - bias), shown),
+      ],
     },
     fixed: [
       ...biases.map((line) => ({

@@ -6,6 +6,7 @@ import { assembleRecord, candidatesOf, confirmedTests, type Measured } from "./f
 import { CONFIRMATION_REPLICATES, type Confirmation } from "./findings/bias.js";
 import { consensusOf } from "./findings/consensus.js";
 import { insidePairs, pairKey, stopSentences } from "./findings/until.js";
+import { quantityName } from "./problem/quantity.js";
 import type { Consensus, Environment, RawCell, Stop, StudyRecord, StudySpec } from "./record/types.js";
 import type { Explanation } from "./record/explanation.js";
 import { explainStudy, pairsToExplain, type ExplainedPairs } from "./study/explanations.js";
@@ -200,9 +201,9 @@ function workOf(task: Task): number {
 
 function cellsOf(run: StudyRun, tasks: readonly Task[], results: ReadonlyMap<string, TaskResult>): RawCell[] {
   const info = new Map(
-    run.problems.map(({ id, formula: { dimension, indicator } }): [string, CellInfo] => [
+    run.problems.map(({ id, quantity, formula: { dimension, indicator } }): [string, CellInfo] => [
       id,
-      { dimension, indicator },
+      { dimension, indicator, output: quantityName(quantity) },
     ]),
   );
   return collectCells(tasks, results, (problem) => info.get(problem) as CellInfo);

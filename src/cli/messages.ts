@@ -42,6 +42,8 @@ export const messages = {
   oneProblem: (path: string, found: readonly string[]) =>
     `problem: expected one problem, found ${found.length} in "${path}"; name one of them: ${found.slice(0, 6).join(", ")}`,
   leftOut: (warnings: readonly string[]) => `--source: ${warnings.join(" ")} Name a source that has them.`,
+  meansOnly: (problem: string, quantity: string) =>
+    `quantity: explanations are of means and probabilities, found ${quantity} in "${problem}"; take it out of a copy of the problem to explain the mean of its integrand`,
   needsSource: (flag: string, problem: string) =>
     `--${flag}: expected a source beside it, found none; name one with --source, or leave --${flag} out to see which inputs of "${problem}" matter`,
   dimensions: (most: number, found: string) =>

@@ -25,3 +25,8 @@ export function channelMean(moments: Moments, c = 0): number {
 export function channelVariance(moments: Moments): number | null {
   return moments.n > 1 ? entry(moments, moments.channels) / (moments.n - 1) : null;
 }
+
+/** Centred product of channels i <= j: the sum of (f_i - mean_i) (f_j - mean_j). */
+export function centredProduct({ channels, values }: Moments, i: number, j: number): number {
+  return values[channels + i * channels - (i * (i - 1)) / 2 + (j - i)] as number;
+}

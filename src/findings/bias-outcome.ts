@@ -9,6 +9,7 @@ import { deviation, skewness } from "../numeric/moments.js";
 import { studentTwoSided } from "../numeric/student.js";
 import { mean, sum } from "../numeric/sums.js";
 import { ROUNDING } from "./cells.js";
+import { beyond } from "./finite-bias.js";
 import type { KnownReference } from "./reference.js";
 
 /** Fewest expected hits (and misses) for a test of a probability. */
@@ -43,6 +44,8 @@ export interface Subject {
   readonly indicator: boolean;
   readonly reference: KnownReference;
   readonly borrowed: Borrowed | null;
+  /** Range in which a bias is no fault of the source; absent for means. */
+  readonly finiteBias?: readonly [number, number] | null;
 }
 
 export function untested(reason: string): Outcome {
@@ -53,6 +56,8 @@ export function untested(reason: string): Outcome {
 export function examine(subject: Subject, confirming: boolean): Outcome {
   const { estimates, n, reference, indicator } = subject;
   if (!estimates.every(Number.isFinite)) return untested("non-finite values of the integrand");
+  if (subject.finiteBias === null)
+    return untested("too few points beyond the level: the bias at finite n is not known");
   const trials = n * estimates.length;
   const expected = Math.min(reference.value, 1 - reference.value) * trials;
   if (indicator && !(expected >= FEWEST_HITS)) {
@@ -70,7 +75,7 @@ export function examine(subject: Subject, confirming: boolean): Outcome {
   if (!(spread > ROUNDING * size)) return constantOutcome(subject, bias, uncertainty, ROUNDING * size);
   const standardError = Math.hypot(spread / Math.sqrt(estimates.length), uncertainty);
   const degrees = estimates.length - 1;
-  const t = bias / standardError;
+  const t = beyond(bias, subject.finiteBias) / standardError;
   const plain = studentTwoSided(t, degrees);
   const pValue = confirming
     ? Math.max(plain, skewedTwoSided(t, skewness(estimates), estimates.length))
@@ -82,10 +87,11 @@ export function examine(subject: Subject, confirming: boolean): Outcome {
 function constantOutcome(subject: Subject, bias: number, uncertainty: number, rounding: number): Outcome {
   const { borrowed, estimates } = subject;
   const same = "all replicates gave the same value";
-  if (Math.abs(bias) <= 4 * rounding) return untested(`${same}, the reference to rounding`);
+  const excess = beyond(bias, subject.finiteBias);
+  if (Math.abs(excess) <= 4 * rounding) return untested(`${same}, the reference to rounding`);
   if (borrowed === null) return untested(same);
   const standardError = Math.hypot(borrowed.deviation / Math.sqrt(estimates.length), uncertainty);
-  const pValue = studentTwoSided(bias / standardError, borrowed.degrees);
+  const pValue = studentTwoSided(excess / standardError, borrowed.degrees);
   const reason = `${same}; tested with the deviation of ${borrowed.source}`;
   return { kind: "student", pValue, bias, standardError, degrees: borrowed.degrees, reason };
 }

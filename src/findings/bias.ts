@@ -140,8 +140,10 @@ function subjectOf(one: Series, series: readonly Series[], context: Context): Su
   if (reference === undefined) return null;
   const family = context.sources.get(one.source)?.family;
   const counts = last.indicator && one.estimator === "crude" && family === "pseudo-random";
-  const { estimates, n, indicator } = last;
-  return { estimates, n, counts, indicator, reference, borrowed: borrowedFor(one, series, context) };
+  const { estimates, n, indicator, finiteBias } = last;
+  const borrowed = borrowedFor(one, series, context);
+  const subject = { estimates, n, counts, indicator, reference, borrowed };
+  return finiteBias === undefined ? subject : { ...subject, finiteBias };
 }
 
 /** The deviation that a sound pseudo-random source shows on the same problem, carried to the same n by n^-1/2. */

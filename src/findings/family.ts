@@ -40,6 +40,8 @@ export function screenFamily(series: readonly Series[], context: Context, falseA
     if (divergent !== undefined) return noSpreadTest(divergent);
     if (cells.some((cell) => cell.nonFinite !== null))
       return noSpreadTest("non-finite values of the integrand");
+    if (last.finiteBias !== undefined)
+      return noSpreadTest("the variance within a replicate is approximate for this quantity");
     return testSpread(last, false);
   });
   const pValues = [...biases, ...spreads].map((outcome) => outcome.pValue);

@@ -27,17 +27,32 @@ export interface FormulaDescription {
 const BEGINNING = { line: 1, column: 1 };
 
 /**
- * Compiles a formula. The result of the formula must be a number or a condition.
+ * Compiles a formula. The result of the formula must be a number or a condition, or for 2 components a vector of two,
+ * which become channels 0 and 1.
  * Throws FormulaError with the place in the text for anything that is not in the language.
  */
-export async function compileFormula(text: string, scope: FormulaScope): Promise<CompiledFormula> {
+export async function compileFormula(
+  text: string,
+  scope: FormulaScope,
+  components: 1 | 2 = 1,
+): Promise<CompiledFormula> {
   const builder = new Builder(runKernel);
   const { result } = await elaborateText(text, scope, builder);
+  if (components === 2) return compilePair(builder, result, scope);
   if (result.kind === "matrix" || isVector(result.node)) {
     throw new FormulaError(messages.resultShape(describe(result)), builder.at);
   }
   const indicator = takesOnlyZeroAndOne(result.node);
   return emitGraph(builder, [builder.toNumber(result.node)], dimensionOf(scope), indicator);
+}
+
+function compilePair(builder: Builder, result: Elaborated["result"], scope: FormulaScope): CompiledFormula {
+  if (result.kind === "matrix" || !isVector(result.node) || result.node.length !== 2) {
+    throw new FormulaError(messages.pairShape(describe(result)), builder.at);
+  }
+  const { node } = result;
+  const roots = [0, 1].map((i) => builder.toNumber(builder.element(node, i)));
+  return emitGraph(builder, roots, dimensionOf(scope), false);
 }
 
 /** Shapes of the names of a formula and of its result. Throws FormulaError. */

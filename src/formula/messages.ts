@@ -103,6 +103,8 @@ export const messages = {
   matrixIndex: () => "an element of a matrix is taken by two numbers, A[2, 3]",
   resultShape: (found: string) =>
     `the formula gives ${found}; it must give a number. Take sum, mean or max of it, or one element`,
+  pairShape: (found: string) =>
+    `the formula gives ${found}; a ratio needs two numbers: let the last line be [above, below]`,
   constantInputs: () => "the value must be constant",
 } as const;
 

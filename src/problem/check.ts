@@ -6,7 +6,8 @@ import { z } from "zod";
 import { FormulaError } from "../formula/contract.js";
 import type { FormulaScope } from "../formula/contract.js";
 import { FUNCTIONS, NAMED_NUMBERS, RESERVED_WORDS, compileFormula } from "../formula/index.js";
-import type { Declared, InUse, Problem, Reference, SuiteTotal, Tolerance } from "./contract.js";
+import { componentsOf } from "./compile.js";
+import type { Declared, InUse, Problem, Quantity, Reference, SuiteTotal, Tolerance } from "./contract.js";
 import { DEFAULT_CONFIDENCE, LIMITS } from "./defaults.js";
 import { checkDependence } from "./dependence.js";
 import { checkInputs } from "./inputs.js";
@@ -15,6 +16,7 @@ import { ProblemError, show } from "./errors.js";
 import { Findings } from "./findings.js";
 import { FINITE, NOT_NEGATIVE, NumberReader, POSITIVE, readConstants, wholeFrom } from "./numbers.js";
 import type { Constants, Range } from "./numbers.js";
+import { quantityForm, quantityName } from "./quantity.js";
 import { problemSchema, suiteSchema } from "./schema.js";
 import type { ProblemFile, SuiteFile } from "./schema.js";
 import { checkSource, checkStudy } from "./study.js";
@@ -167,10 +169,42 @@ async function checkInUse(
   return points === null ? null : { source: file.source, points, secondsPerPoint };
 }
 
-async function checkIntegrand(text: string, scope: FormulaScope, findings: Findings): Promise<void> {
+const LEVEL: Range = { what: "a level between 0 and 1", holds: (x) => x > 0 && x < 1 };
+
+async function checkQuantity(
+  file: NonNullable<ProblemFile["quantity"]>,
+  numbers: NumberReader,
+): Promise<Quantity | null> {
+  if (typeof file === "string") return file;
+  const [name, raw] =
+    "quantile" in file ? (["quantile", file.quantile] as const) : (["shortfall", file.shortfall] as const);
+  const level = await numbers.read(raw, ["quantity", name], LEVEL);
+  if (level === null) return null;
+  return name === "quantile" ? { quantile: level } : { shortfall: level };
+}
+
+async function checkIntegrand(
+  text: string,
+  scope: FormulaScope,
+  quantity: Quantity,
+  findings: Findings,
+): Promise<void> {
   if (text === "") return;
   try {
-    await compileFormula(text, scope);
+    const { indicator } = await compileFormula(text, scope, componentsOf(quantity));
+    const { integrand, sorted } = quantityForm(quantity);
+    const name = quantityName(quantity);
+    if (integrand === "condition" && !indicator) {
+      findings.add(
+        ["quantity"],
+        `a ${name} needs an integrand that is a condition, such as x > 1, found one that gives a number; write the condition, or ask for its mean`,
+      );
+    } else if (sorted && indicator) {
+      findings.add(
+        ["quantity"],
+        `the integrand is a condition, whose only values are 0 and 1, and has no ${name}; ask for its probability`,
+      );
+    }
   } catch (error) {
     if (!(error instanceof FormulaError)) throw error;
     findings.addFormula(["integrand"], error);
@@ -201,9 +235,10 @@ export async function checkProblem(
     file.dependence === undefined || inputs.length < Object.keys(file.inputs ?? {}).length
       ? null
       : await checkDependence(file.dependence, inputs, numbers, findings);
+  const quantity = await checkQuantity(file.quantity ?? "mean", numbers);
   // A formula whose names are broken would only repeat that.
   if (inputs.length > 0 && !malformed && findings.issues.length === misshapen) {
-    await checkIntegrand(file.integrand ?? "", { inputs, constants }, findings);
+    await checkIntegrand(file.integrand ?? "", { inputs, constants }, quantity ?? "mean", findings);
   }
   const reference =
     file.reference === undefined ? null : await checkReference(file.reference, numbers, findings);
@@ -227,7 +262,7 @@ export async function checkProblem(
     ...(dependence === null ? {} : { dependence }),
     constants,
     integrand: file.integrand,
-    quantity: file.quantity ?? "mean",
+    quantity: quantity ?? "mean",
     reference,
     tolerance,
     ...(declared.length > 0 ? { declared } : {}),

@@ -37,7 +37,14 @@ export interface Input {
 /** A constant: a number, a vector or a matrix (rows). */
 export type Constant = number | readonly number[] | readonly (readonly number[])[];
 
-export type Quantity = "mean";
+/** What is asked of the integrand (problem/quantity.ts); levels in (0, 1). */
+export type Quantity =
+  | "mean"
+  | "probability"
+  | "ratio"
+  | "variance"
+  | { readonly quantile: number }
+  | { readonly shortfall: number };
 
 /** The exact value that estimates are held against. */
 export interface Reference {

@@ -258,11 +258,18 @@ export const problemSchema = z
       .min(1, { error: "the integrand, as text in the formula language" })
       .describe("The function to be integrated, in the formula language; its last line is the value."),
     quantity: z
-      .literal("mean", { error: "mean; for a probability let the integrand be the condition" })
+      .union(
+        [
+          z.enum(["mean", "probability", "ratio", "variance"]),
+          z.strictObject({ quantile: number("a level between 0 and 1") }),
+          z.strictObject({ shortfall: number("a level between 0 and 1") }),
+        ],
+        { error: "mean, probability, ratio, variance, { quantile: 0.99 } or { shortfall: 0.975 }" },
+      )
       .optional()
       .meta({
         description:
-          "What is asked of the integrand: its `mean` (the mean of a condition is its probability).",
+          "What is asked of the integrand: its `mean`, the `probability` of a condition, the `ratio` of the means of its two values, its `variance`, its quantile (`{ quantile: 0.99 }`) or the mean beyond it (`{ shortfall: 0.975 }`).",
         default: "mean",
       }),
     reference: reference

@@ -27,6 +27,9 @@ integrand: |
   output = expected + deviation * z
   max(guaranteed - mean(output), 0)
 
+# What is asked of it: mean, probability, ratio, variance, { quantile: 0.99 } or { shortfall: 0.975 }.
+# quantity: mean
+
 # The exact value if it is known: digits, or a formula of the constants. Without it, three sound sources of different
 # families must agree, and their mean stands in.
 reference:

@@ -41,7 +41,11 @@ const problem = z.strictObject({
     .optional(),
   constants: z.record(text, constant),
   integrand: text,
-  quantity: z.literal("mean"),
+  quantity: z.union([
+    z.enum(["mean", "probability", "ratio", "variance"]),
+    z.strictObject({ quantile: z.number().gt(0).lt(1) }),
+    z.strictObject({ shortfall: z.number().gt(0).lt(1) }),
+  ]),
   reference: orNull(z.strictObject({ value: z.number(), text, uncertainty: z.number().min(0), basis: text })),
   tolerance: z.strictObject({
     absolute: orNull(z.number().gt(0)),
@@ -93,6 +97,7 @@ const cell = z.strictObject({
   indicator: z.boolean(),
   estimates: reals,
   withinVariances: z.array(orNull(real)),
+  finiteBias: interval.optional(),
   secondsPerPoint: number,
   nonFinite: orNull(nonFinite),
   replicates: whole,

@@ -81,6 +81,11 @@ export interface RawCell {
   readonly estimates: readonly number[];
   /** Variance of f within each replicate (divisor n - 1); null for n = 1. */
   readonly withinVariances: readonly (number | null)[];
+  /**
+   * Range in which the finite-n bias of sound points lies, mean over the replicates (twice the leading term, of order
+   * 1/n, and 0); null where it cannot be told; absent for means, which have none.
+   */
+  readonly finiteBias?: readonly [number, number] | null;
   readonly secondsPerPoint: number | null;
   readonly nonFinite: NonFinite | null;
 }

@@ -178,7 +178,7 @@ export function viewRecord(record: StudyRecord): View {
       problem,
       output,
       slug: anchors[i] ?? "",
-      title: alone ? problem.title : `${problem.title}: ${output}`,
+      title: alone && (output === "mean" || output === "") ? problem.title : `${problem.title}: ${output}`,
       consensus,
       reference,
       tolerance: toleranceOf(problem, reference ?? undefined),

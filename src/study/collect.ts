@@ -2,12 +2,11 @@
 import type { NonFinite, RawCell } from "../record/types.js";
 import type { ReplicateResult, Task, TaskResult } from "./tasks.js";
 
-/** The only output so far: the mean of the integrand. */
-export const MEAN = "mean";
-
 export interface CellInfo {
   readonly dimension: number;
   readonly indicator: boolean;
+  /** Name of the quantity. */
+  readonly output: string;
 }
 
 /**
@@ -42,18 +41,29 @@ function cellsOf(task: Task, done: readonly TaskResult[], info: CellInfo): RawCe
           problem: task.problem,
           source: task.sourceId,
           estimator,
-          output: MEAN,
+          output: info.output,
           n,
           dimension: info.dimension,
           indicator: info.indicator,
           estimates: rows.map((row) => row.estimates[e] as number),
           withinVariances: rows.map((row) => row.withinVariances[e] as number | null),
+          ...finiteBiasOf(rows),
           secondsPerPoint,
           nonFinite: nonFiniteOf(n, rows, done),
         },
       ];
     }),
   );
+}
+
+/** The mean range over the replicates; nothing for quantities without one. */
+function finiteBiasOf(rows: readonly ReplicateResult[]): Pick<RawCell, "finiteBias"> {
+  const ranges = rows.map((row) => row.finiteBias);
+  if (ranges.every((range) => range === undefined)) return {};
+  const known = ranges.filter((range) => range !== undefined && range !== null);
+  if (known.length < rows.length) return { finiteBias: null };
+  const end = (pick: 0 | 1) => known.reduce((total, range) => total + range[pick], 0) / known.length;
+  return { finiteBias: [end(0), end(1)] };
 }
 
 function nonFiniteOf(

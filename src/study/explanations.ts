@@ -7,6 +7,7 @@ import { setImmediate } from "node:timers/promises";
 import { studentFactor } from "../numeric/student.js";
 import type { Explanation, MeasuredBias } from "../record/explanation.js";
 import type { BiasTest, Cell, StudySpec } from "../record/types.js";
+import { isMean } from "../problem/quantity.js";
 import { parseSource, type SourceChoice } from "../sources/choice.js";
 import { explain, structureOnly, type ExplainRequest } from "./explain.js";
 import type { RunnableProblem } from "./runnable.js";
@@ -53,7 +54,8 @@ export function pairsToExplain(request: Pick<ExplanationsRequest, "spec" | "cell
       .map((choice) => [choice.id, choice]),
   );
   const [predicted, known]: [Pair[], Pair[]] = [[], []];
-  for (const cell of cells) {
+  const means = new Set(spec.problems.filter((one) => isMean(one.quantity)).map(({ id }) => id));
+  for (const cell of cells.filter((one) => means.has(one.problem))) {
     const choice = choices.get(cell.source);
     const same = (other: Pick<Cell, "problem" | "source" | "estimator" | "output">): boolean =>
       other.problem === cell.problem &&

@@ -17,6 +17,12 @@ export interface OffendingPoint {
   readonly value: string;
 }
 
+/** What a run takes beside the moments of the formula's channels. */
+export interface Extras {
+  /** Adds the channel (f - origin)^2 behind those of the formula. */
+  readonly squares?: boolean;
+}
+
 export interface SizeResult {
   readonly n: number;
   readonly moments: Moments;
@@ -38,6 +44,9 @@ export class Integrator {
   readonly #problem: RunnableProblem;
   readonly #evaluate: IntegrandFunction;
   readonly #width: number;
+  readonly #channels: number;
+  readonly #squares: boolean;
+  #origin: number | null = null;
   readonly #x: number;
   readonly #values: number;
   readonly #rows: number;
@@ -47,9 +56,12 @@ export class Integrator {
   readonly #scratch: number;
   readonly #passes: TransformPasses;
 
-  constructor(problem: RunnableProblem) {
+  constructor(problem: RunnableProblem, { squares = false }: Extras = {}) {
     const { formula } = problem;
-    const { blockPoints, channels, dimension, pool, scratchBytes } = formula;
+    const { blockPoints, dimension, pool, scratchBytes } = formula;
+    const channels = formula.channels + (squares ? 1 : 0);
+    this.#channels = channels;
+    this.#squares = squares;
     this.#problem = problem;
     this.kernels = instantiateKernels(problem.module);
     this.#evaluate = this.kernels.formula as IntegrandFunction;
@@ -69,9 +81,14 @@ export class Integrator {
 
   /**
    * Moments at each of `sizes` (ascending) of the points from `first` (a multiple of 64) on; a size counts points from
-   * index 0 where `first` is 0. The stream stands at point `first`.
+   * index 0 where `first` is 0. The stream stands at point `first`. `keep` takes the values of channel 0, in order.
    */
-  run(stream: PointStream, sizes: readonly number[], first = 0): IntegrationResult {
+  run(
+    stream: PointStream,
+    sizes: readonly number[],
+    first = 0,
+    keep: Float64Array | null = null,
+  ): IntegrationResult {
     const { blockPoints } = this.#problem.formula;
     const last = sizes.at(-1) ?? 0;
     const results: SizeResult[] = [];
@@ -82,6 +99,7 @@ export class Integrator {
     for (let begin = first; begin < last; begin += blockPoints) {
       const count = Math.min(blockPoints, last - begin);
       const bad = this.#evaluateBlock(stream, count);
+      keep?.set(this.kernels.f64(this.#values, count), begin - first);
       if (bad >= 0) offending ??= this.#describe(begin, bad);
       let pushed = 0;
       for (; next < sizes.length && (sizes[next] as number) <= begin + count; next++) {
@@ -110,6 +128,19 @@ export class Integrator {
     return this.#values;
   }
 
+  /** What is taken off before squaring: f where all coordinates are 1/2, or 0 where that is not finite. */
+  get origin(): number {
+    if (this.#origin === null) {
+      const { blockPoints, dimension } = this.#problem.formula;
+      this.kernels.f64(this.#x, blockPoints * dimension).fill(0.5);
+      this.#passes.run(1);
+      this.#evaluate(this.#x, this.#values, 1, this.#pool, this.#scratch);
+      const centre = this.kernels.f64(this.#values, 1)[0] ?? NaN;
+      this.#origin = Number.isFinite(centre) ? centre : 0;
+    }
+    return this.#origin;
+  }
+
   /** The inputs (one list per coordinate) and first values of `count` points of a stream. */
   points(stream: PointStream, count: number): { inputs: Float64Array[]; values: Float64Array } {
     const { blockPoints, dimension } = this.#problem.formula;
@@ -128,11 +159,20 @@ export class Integrator {
 
   /** Fills, transforms, evaluates and sums one block; gives the first point with a non-finite value, or -1. */
   #evaluateBlock(stream: PointStream, count: number): number {
-    const { blockPoints, channels } = this.#problem.formula;
+    const { blockPoints } = this.#problem.formula;
+    const origin = this.#squares ? this.origin : 0;
     stream.fill(this.#x, blockPoints, count);
     this.#passes.run(count);
     this.#evaluate(this.#x, this.#values, count, this.#pool, this.#scratch);
-    return this.kernels.exports.leafMoments(this.#values, blockPoints, channels, count, this.#rows);
+    if (this.#squares) this.#square(count, origin);
+    return this.kernels.exports.leafMoments(this.#values, blockPoints, this.#channels, count, this.#rows);
+  }
+
+  #square(count: number, origin: number): void {
+    const { blockPoints, channels } = this.#problem.formula;
+    const values = this.kernels.f64(this.#values, blockPoints * (channels + 1));
+    for (let i = 0; i < count; i++)
+      values[blockPoints * channels + i] = ((values[i] as number) - origin) ** 2;
   }
 
   /** Pushes the whole leaves of the block from leaf `pushed` on that end at point `end` or before; gives the next leaf. */
@@ -148,11 +188,11 @@ export class Integrator {
 
   /** Moments of all points before `end` of the block, whose leaf `leaf` is cut there. */
   #total(leaf: number, end: number): Moments {
-    const { blockPoints, channels } = this.#problem.formula;
+    const { blockPoints } = this.#problem.formula;
     const cutPoints = end - leaf * LEAF_POINTS;
     const values = this.#values + leaf * LEAF_POINTS * 8;
     if (cutPoints > 0)
-      this.kernels.exports.leafMoments(values, blockPoints, channels, cutPoints, this.#cutRow);
+      this.kernels.exports.leafMoments(values, blockPoints, this.#channels, cutPoints, this.#cutRow);
     const moments = this.#tree.total(this.#cutRow, cutPoints);
     if (moments === null) throw new Error("a size of no points was asked for");
     return moments;
@@ -160,8 +200,8 @@ export class Integrator {
 
   #countNonFinite(bad: number, count: number): number {
     if (bad < 0) return 0;
-    const { blockPoints, channels } = this.#problem.formula;
-    return this.kernels.exports.countNonFinite(this.#values, blockPoints, channels, count);
+    const { blockPoints } = this.#problem.formula;
+    return this.kernels.exports.countNonFinite(this.#values, blockPoints, this.#channels, count);
   }
 
   /** What the integrand was given at point `i` of the last block, in order of coordinates. */

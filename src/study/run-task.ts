@@ -3,6 +3,8 @@ import { estimatorOf } from "../estimators/registry.js";
 import { parseSource, type SourceChoice } from "../sources/choice.js";
 import type { OpenStream } from "../sources/contract.js";
 import { makeKey } from "../sources/key.js";
+import { quantityKind } from "../quantities/registry.js";
+import { estimateSizes } from "./estimate-sizes.js";
 import { Integrator, type IntegrationResult } from "./integrator.js";
 import { watchOpening } from "./opening.js";
 import type { RunnableProblem } from "./runnable.js";
@@ -12,9 +14,10 @@ function runAndClose(
   integrator: Integrator,
   stream: OpenStream,
   sizes: readonly number[],
+  keep: Float64Array | null,
 ): IntegrationResult {
   try {
-    return integrator.run(stream, sizes);
+    return integrator.run(stream, sizes, 0, keep);
   } finally {
     stream.close?.();
   }
@@ -38,9 +41,13 @@ export class TaskRunner {
     const started = performance.now();
     const integrator = this.#integrator(task.problem);
     const source = this.#source(task);
-    const dimension = this.#problem(task.problem).formula.dimension;
+    const { formula, quantity } = this.#problem(task.problem);
+    const { dimension } = formula;
+    const kind = quantityKind(quantity);
     const estimators = task.estimators.map(estimatorOf);
     const n = task.sizes.at(-1) ?? 0;
+    const values = kind.by === "sorted" ? new Float64Array(n) : null;
+    const origin = kind.by === "moments" && kind.squares ? integrator.origin : 0;
     const results: ReplicateResult[] = [];
     const offences: Offence[] = [];
     const openings: Opening[] = [];
@@ -68,21 +75,13 @@ export class TaskRunner {
         integrator.kernels,
       );
       const opening = watchOpening(stream, integrator.kernels);
-      const integration = runAndClose(integrator, stream, task.sizes);
+      const integration = runAndClose(integrator, stream, task.sizes, values);
       arena.release(mark);
       openings.push({ replicate, digest: opening() });
       endpoints += stream.endpointsHit?.() ?? 0;
       if (integration.offending !== null) offences.push({ replicate, ...integration.offending });
-      for (const size of integration.sizes) {
-        const estimates = estimators.map((estimator) => estimator.estimate(size.moments));
-        results.push({
-          replicate,
-          n: size.n,
-          estimates: estimates.map((e) => e.estimate),
-          withinVariances: estimates.map((e) => e.withinVariance),
-          nonFinite: size.nonFinite,
-        });
-      }
+      const { sizes } = integration;
+      results.push(...estimateSizes({ quantity, estimators, replicate, sizes, values, origin }));
     }
     const points = n * (task.to - task.from);
     const seconds = (performance.now() - started) / 1000;
@@ -98,7 +97,9 @@ export class TaskRunner {
   #integrator(id: string): Integrator {
     let integrator = this.#integrators.get(id);
     if (integrator === undefined) {
-      integrator = new Integrator(this.#problem(id));
+      const problem = this.#problem(id);
+      const kind = quantityKind(problem.quantity);
+      integrator = new Integrator(problem, { squares: kind.by === "moments" && kind.squares });
       this.#integrators.set(id, integrator);
     }
     return integrator;

@@ -1,13 +1,14 @@
 /** A problem ready to run: plain data and a compiled module, both of which can be posted to a thread. */
 import type { CompiledFormula } from "../formula/contract.js";
 import { compileProblem } from "../problem/compile.js";
-import type { Problem, Transform } from "../problem/contract.js";
+import type { Problem, Quantity, Transform } from "../problem/contract.js";
 
 export interface RunnableProblem {
   readonly id: string;
   readonly module: WebAssembly.Module;
   readonly formula: Omit<CompiledFormula, "moduleBytes">;
   readonly transforms: readonly Transform[];
+  readonly quantity: Quantity;
 }
 
 /**
@@ -19,7 +20,8 @@ export async function prepareProblems(problems: readonly Problem[]): Promise<Run
   for (const problem of problems) {
     const { formula, transforms } = await compileProblem(problem);
     const { moduleBytes, ...rest } = formula;
-    runnable.push({ id: problem.id, module: new WebAssembly.Module(moduleBytes), formula: rest, transforms });
+    const module = new WebAssembly.Module(moduleBytes);
+    runnable.push({ id: problem.id, module, formula: rest, transforms, quantity: problem.quantity });
   }
   return runnable;
 }

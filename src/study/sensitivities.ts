@@ -3,6 +3,7 @@
  * function of the spec alone, so that a run that is taken up again gives the same.
  */
 import { setImmediate } from "node:timers/promises";
+import { isMean, quantityName } from "../problem/quantity.js";
 import type { Sensitivity } from "../record/sensitivity.js";
 import type { StudySpec } from "../record/types.js";
 import type { RunnableProblem } from "./runnable.js";
@@ -32,14 +33,18 @@ export async function measureSensitivities(request: SensitivitiesRequest): Promi
   for (const described of spec.problems) {
     const problem = problems.find(({ id }) => id === described.id);
     if (signal.aborted) return [];
-    if (problem === undefined) continue;
+    if (problem === undefined || !isMean(described.quantity)) continue;
     const largest = Math.max(0, ...(spec.sizes[described.id] ?? []));
     const estimates = (spec.replicates[described.id] ?? 1) * (spec.sources[described.id] ?? []).length;
     const coordinates = Math.min(COORDINATES, PART * largest * estimates * described.dimension);
     const request = { seed: spec.seed, points: POINTS, coordinates };
     const figures = measureSensitivity(problem, described, request);
     const sources = (spec.sources[described.id] ?? []).map(parseSource);
-    found.push({ ...figures, nets: netPairs(figures, sources, largest) });
+    found.push({
+      ...figures,
+      output: quantityName(described.quantity),
+      nets: netPairs(figures, sources, largest),
+    });
     done();
     await setImmediate();
   }

@@ -14,7 +14,7 @@ export function referenceSources(dimension: number): readonly string[] {
 }
 
 /** A consensus is formed at this multiple of the study's largest size. */
-const REFERENCE_FACTOR = 4;
+export const REFERENCE_FACTOR = 4;
 
 /** Distinct valid sizes of a source for the sizes asked for, ascending. */
 export function validSizes(choice: SourceChoice, sizes: readonly number[]): number[] {

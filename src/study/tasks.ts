@@ -32,6 +32,8 @@ export interface ReplicateResult {
   /** For each estimator of the task, in order. */
   readonly estimates: readonly number[];
   readonly withinVariances: readonly (number | null)[];
+  /** For quantities with one (quantities/contract.ts), else absent. */
+  readonly finiteBias?: readonly [number, number] | null;
   readonly nonFinite: number;
 }
 

@@ -20,7 +20,7 @@ const put = async (file: string, text: string): Promise<string> => {
   return path;
 };
 const ids = (problems: readonly { problem: { id: string } }[]) => problems.map(({ problem }) => problem.id);
-const SHIPPED = "shipped suites: classic, inputs, planes, tidal, tour";
+const SHIPPED = "shipped suites: classic, inputs, planes, quantities, tidal, tour";
 
 describe("one file", () => {
   test("its name is the problem's id, and the suite beside it counts", async () => {

@@ -63,7 +63,18 @@ describe("form", () => {
     [
       "quantity",
       "median",
-      '4:11: quantity: expected mean; for a probability let the integrand be the condition, found "median"',
+      '4:11: quantity: expected mean, probability, ratio, variance, { quantile: 0.99 } or { shortfall: 0.975 }, found "median"',
+    ],
+    ["quantity", "{ quantile: 1 }", "4:23: quantity.quantile: expected a level between 0 and 1, found 1"],
+    [
+      "quantity",
+      "probability",
+      "4:11: quantity: a probability needs an integrand that is a condition, such as x > 1, found one that gives a number; write the condition, or ask for its mean",
+    ],
+    [
+      "quantity",
+      "ratio",
+      "2:12: integrand: the formula gives a number; a ratio needs two numbers: let the last line be [above, below]",
     ],
     [
       "constants",

@@ -5,6 +5,7 @@
 import { existsSync } from "node:fs";
 import { join, resolve } from "node:path";
 import type { SourceSpec, StudySettings } from "../../problem/contract.js";
+import { isMean, quantityName } from "../../problem/quantity.js";
 import { settingValues } from "../../problem/settings.js";
 import { loadPaths, type LoadedProblem } from "../../problem/load.js";
 import { runStudy } from "../../recipe.js";
@@ -38,6 +39,8 @@ const SOUND = "philox4x32";
 export async function run(args: Arguments, io: Io): Promise<number> {
   const flags = settingsFromFlags(args, io);
   const loaded = await oneProblem(textFlag(args, "problem") ?? "");
+  const { id, quantity } = loaded.problem;
+  if (!isMean(quantity)) throw new InputError(messages.meansOnly(id, quantityName(quantity)));
   const { sources = [] } = flags;
   if (sources.length === 0) return explainInputs(loaded, flags, args, io);
   return explainSources(loaded, { ...flags, sources }, args, io);

@@ -1,6 +1,7 @@
 /** The lines of a budget in the order in which they are shown. A new line is its file and its entry here. */
 import { arithmeticLine } from "./arithmetic.js";
 import { declaredLines } from "./declared.js";
+import { finiteLine } from "./finite.js";
 import type { LineMaker } from "./line.js";
 import { periodLine } from "./period.js";
 import { referenceLine } from "./reference-line.js";
@@ -12,6 +13,7 @@ import { transformLine } from "./transform.js";
 export const LINES: readonly LineMaker[] = [
   samplingLine,
   structureBudgetLine,
+  finiteLine,
   resolutionLine,
   transformLine,
   arithmeticLine,

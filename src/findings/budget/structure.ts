@@ -14,6 +14,7 @@
 import { studentFactor } from "../../numeric/student.js";
 import type { BiasTest, RecordSource } from "../../record/types.js";
 import type { Context } from "../cells.js";
+import { beyond, rangeAt } from "../finite-bias.js";
 import { formatCount, formatPercent, formatValue } from "../format.js";
 import { seriesKey, type Series } from "../series.js";
 import type { Line, LineMaker } from "./line.js";
@@ -53,7 +54,8 @@ export function structureLine(
   const found = test?.confirmation ?? null;
   if (test?.confirmed === true && found !== null) {
     const half = studentFactor(confidence, found.replicates - 1) * found.standardError;
-    const [value, lower] = [Math.abs(found.bias) + half, Math.max(0, Math.abs(found.bias) - half)];
+    const size = Math.abs(beyond(found.bias, series.last.finiteBias));
+    const [value, lower] = [size + half, Math.max(0, size - half)];
     const predicted = sharperPrediction(series, context, value - lower, confidence);
     if (predicted !== null) return { ...line, ...predicted, confirmed: true, remedy: ANOTHER };
     const basis =
@@ -103,11 +105,14 @@ function checkOf(test: BiasTest | undefined): string {
 /** The estimate of the bias with the smallest standard error: by that and not by its bound, which would be a selection. */
 function bestResolved(series: Series, test: BiasTest | undefined) {
   const choices = series.cells.flatMap(({ n, replicates, bias, biasStandardError: error }) =>
-    bias === null || error === null ? [] : [{ n, replicates, bias, error }],
+    bias === null || error === null
+      ? []
+      : [{ n, replicates, bias: beyond(bias, rangeAt(series.last, n)), error }],
   );
   const again = test?.confirmation ?? null;
   if (test !== undefined && again !== null) {
-    choices.push({ n: test.n, replicates: again.replicates, bias: again.bias, error: again.standardError });
+    const bias = beyond(again.bias, rangeAt(series.last, test.n));
+    choices.push({ n: test.n, replicates: again.replicates, bias, error: again.standardError });
   }
   choices.sort((a, b) => a.error - b.error || b.n - a.n);
   return choices[0] ?? null;

@@ -4,6 +4,7 @@
  * gives the same.
  */
 import { setImmediate } from "node:timers/promises";
+import { isMean } from "../../problem/quantity.js";
 import type { ProblemMeasurements } from "../../record/measurements.js";
 import type { StudySpec } from "../../record/types.js";
 import { parseSource } from "../../sources/choice.js";
@@ -31,7 +32,8 @@ export async function measureProblems(request: MeasureRequest): Promise<ProblemM
   for (const described of spec.problems) {
     const problem = problems.find(({ id }) => id === described.id);
     if (signal.aborted) return [];
-    if (problem === undefined) continue;
+    // What is measured here is measured for means; the lines of other quantities say so.
+    if (problem === undefined || !isMean(described.quantity)) continue;
     found.push({
       problem: described.id,
       resolution: measureResolution(spec, problem, described.tolerance.confidence),

@@ -11,6 +11,7 @@ import { fileURLToPath } from "node:url";
 import { sobol } from "../dist/sources/sobol.js";
 import { engineRates } from "./engine.mjs";
 import { fullCycleTable } from "./full-cycle.mjs";
+import { integrandTable } from "./integrands.mjs";
 import { shortestVectorTable } from "./shortest-vectors.mjs";
 import { quantileTable } from "./quantiles.mjs";
 import { constructionTable, sourceTable } from "./sources.mjs";
@@ -120,6 +121,7 @@ try {
     sources: () => sourceTable(python, folder, 5),
     construction: () => constructionTable(),
     quantiles: () => quantileTable(ROUNDS),
+    integrands: () => integrandTable(ROUNDS, folder),
     threads: () => threadTable(ROUNDS),
     memory: () => memoryTable(),
     study: () => studyTable(),

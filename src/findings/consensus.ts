@@ -14,6 +14,8 @@ export interface Contribution {
   readonly source: string;
   readonly n: number;
   readonly estimates: readonly number[];
+  /** Range of the bias at finite n, for quantities with one; the farther end counts as a standard uncertainty. */
+  readonly finiteBias?: readonly [number, number] | null;
 }
 
 /** Fewer members could agree on the same mistake. */
@@ -24,10 +26,12 @@ const HOMOGENEITY_LEVEL = 0.01;
 
 /** Needs three or more members with at least 4 finite estimates each; otherwise there is no value and `agreed` is false. */
 export function consensusOf(problem: string, contributions: readonly Contribution[]): Consensus {
-  const members = contributions.map(({ source, n, estimates }) => {
+  const members = contributions.map(({ source, n, estimates, finiteBias }) => {
     const centre = mean(estimates);
     const count = estimates.length;
-    const measured = deviation(estimates) * Math.sqrt((count - 1) / (count - 3) / count);
+    const [low, high] = finiteBias ?? [0, 0];
+    const sampling = deviation(estimates) * Math.sqrt((count - 1) / (count - 3) / count);
+    const measured = Math.hypot(sampling, Math.max(-low, high));
     // Members that agree with themselves to the last bit are still rounded.
     const standardError = Math.max(measured, 4 * Number.EPSILON * Math.abs(centre), Number.MIN_VALUE);
     return { source, n, mean: centre, standardError: count > 3 ? standardError : NaN };

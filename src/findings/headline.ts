@@ -1,6 +1,7 @@
 /**
  * The verdicts in words, and the exit code that follows from them. Shared by the command line, the summary and the report.
  */
+import { titleWithQuantity } from "../problem/quantity.js";
 import type { Problem } from "../problem/contract.js";
 import type { BiasTest, Budget, StudyRecord, Verdict } from "../record/types.js";
 import { referencesOf, toleranceOf } from "./reference.js";
@@ -39,7 +40,7 @@ export interface Headline {
 export function headlinesOf(record: StudyRecord): Headline[] {
   return record.problems.map((problem) => ({
     problem: problem.id,
-    title: problem.title,
+    title: titleWithQuantity(problem),
     task: taskOf(problem, record),
     sentences: [
       ...verdictSentences(problem, record),

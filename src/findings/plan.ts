@@ -20,6 +20,7 @@
  * the fitted curve (a net in base 2 is balanced at powers of two). Pseudo-random n are rounded up to two digits, which is
  * what a fitted number supports.
  */
+import { titleWithQuantity } from "../problem/quantity.js";
 import { chiSquareQuantile } from "../numeric/chi-square.js";
 import { studentFactor } from "../numeric/student.js";
 import type { Problem } from "../problem/contract.js";
@@ -112,7 +113,7 @@ export function planOf(record: StudyRecord, options: PlanOptions): ProblemPlan[]
     const ranked = sources.sort((a, b) => costRank(a) - costRank(b) || pointRank(a) - pointRank(b));
     return {
       problem: problem.id,
-      title: problem.title,
+      title: titleWithQuantity(problem),
       dimension: problem.dimension,
       tolerance: toleranceOf(problem, context.references.get(problem.id)),
       confidence: problem.tolerance.confidence,

@@ -1,5 +1,5 @@
 /** What a problem may ask of its integrand: names, levels, and what the integrand must give for each point. */
-import type { Quantity } from "./contract.js";
+import type { Problem, Quantity } from "./contract.js";
 
 interface QuantityForm {
   /** A number, a condition, or a vector of two numbers. */
@@ -47,4 +47,9 @@ export function isMean(quantity: Quantity): boolean {
 /** As reports name it and as the output of a record: "mean", "quantile 0.99". */
 export function quantityName(quantity: Quantity): string {
   return typeof quantity === "string" ? quantity : `${quantityId(quantity)} ${levelOf(quantity)}`;
+}
+
+/** The title of a problem with its quantity behind it, where that is not the mean that goes without saying. */
+export function titleWithQuantity({ title, quantity }: Pick<Problem, "title" | "quantity">): string {
+  return quantity === "mean" ? title : `${title}: ${quantityName(quantity)}`;
 }

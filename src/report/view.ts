@@ -2,6 +2,7 @@
  * What a report shows, found in a record once: subjects (a problem's output) with one row per source and estimator.
  * Nothing is computed here; everything is looked up.
  */
+import { titleWithQuantity } from "../problem/quantity.js";
 import type {
   BiasTest,
   Budget,
@@ -178,7 +179,7 @@ export function viewRecord(record: StudyRecord): View {
       problem,
       output,
       slug: anchors[i] ?? "",
-      title: alone && (output === "mean" || output === "") ? problem.title : `${problem.title}: ${output}`,
+      title: alone ? titleWithQuantity(problem) : `${problem.title}: ${output}`,
       consensus,
       reference,
       tolerance: toleranceOf(problem, reference ?? undefined),

@@ -1,13 +1,12 @@
 /** From loaded problems and flags to the spec of a study: every setting resolved, every source and size checked. */
 import { nearest } from "../numeric/nearest.js";
 import type { Problem, StudySettings } from "../problem/contract.js";
-import type { FullSettings } from "../problem/defaults.js";
-import { MOST_SORTED, isMean, levelOf, quantityForm, quantityName } from "../problem/quantity.js";
 import { resolveSettings, settingValues, type ResolvedSettings } from "../problem/settings.js";
 import type { StudySpec } from "../record/types.js";
 import { estimatorIds } from "../estimators/registry.js";
 import { parseSource, type SourceChoice } from "../sources/choice.js";
-import { LARGEST_IN_USE, REFERENCE_FACTOR, validSizes } from "./spec.js";
+import { fitQuantity } from "./fit-quantity.js";
+import { validSizes } from "./spec.js";
 
 /** A problem with the settings of the suite around it. */
 export interface SuiteProblem {
@@ -36,13 +35,12 @@ export interface SpecResult {
  */
 export function buildSpec(entries: readonly SuiteProblem[], flags: StudySettings): SpecResult {
   const warnings: string[] = [];
-  const settings = entries.map((entry) => settingValues(settingsOf(entry, flags)));
+  const settings = entries.map((entry) =>
+    fitQuantity(entry.problem, settingValues(settingsOf(entry, flags)), warnings),
+  );
   const perProblem = <T>(value: (index: number) => T): Record<string, T> =>
     Object.fromEntries(entries.map(({ problem }, i) => [problem.id, value(i)]));
   for (const { estimators } of settings) estimators.forEach(checkEstimator);
-  entries.forEach(({ problem }, i) => {
-    if (settings[i] !== undefined) checkQuantity(problem, settings[i]);
-  });
   const sources = entries.map(({ problem }, i) =>
     usableSources(problem, (settings[i] as (typeof settings)[number]).sources.map(parseSource), warnings),
   );
@@ -71,36 +69,6 @@ export function buildSpec(entries: readonly SuiteProblem[], flags: StudySettings
     ),
   };
   return { spec, warnings };
-}
-
-/** Throws where a study asks more of a quantity than it can give. */
-function checkQuantity(
-  { id, quantity, inUse, reference }: Problem,
-  { sizes, estimators }: FullSettings,
-): void {
-  if (isMean(quantity)) return;
-  const name = quantityName(quantity);
-  const [estimator = "crude"] = estimators;
-  if (estimators.length > 1 || estimator !== "crude")
-    throw new RangeError(
-      `estimators: those of a mean do not apply to the ${name} of "${id}", found ${estimators.join(", ")}; leave out estimators`,
-    );
-  if (!quantityForm(quantity).sorted) return;
-  const level = levelOf(quantity);
-  const least = Math.ceil(1 / Math.min(level, 1 - level) - 1e-9);
-  const [smallest = 0] = sizes;
-  if (smallest < least)
-    throw new RangeError(
-      `sizes: the ${name} of "${id}" needs at least ${least} points, found ${smallest}; begin at ${2 ** Math.ceil(Math.log2(least))} with --sizes or in study:`,
-    );
-  // Without a reference the consensus takes more points than any size.
-  const factor = reference === null ? REFERENCE_FACTOR : 1;
-  const run = inUse !== null && inUse.points <= LARGEST_IN_USE ? inUse.points : 0;
-  const largest = Math.max(factor * Math.max(...sizes), run);
-  if (largest > MOST_SORTED)
-    throw new RangeError(
-      `sizes: the ${name} of "${id}" keeps all values of a replicate, at most ${MOST_SORTED} (2^24), found ${largest}${factor > 1 ? ` for the consensus, ${factor} times the largest size` : ""}; take fewer points, or give a reference`,
-    );
 }
 
 function checkEstimator(id: string): void {

@@ -7,6 +7,7 @@ import { sampleQuantile } from "../../src/quantities/order-statistics.js";
 import { quantile } from "../../src/quantities/quantile.js";
 import { shortfall } from "../../src/quantities/shortfall.js";
 import type { Cell, StudyRecord } from "../../src/record/types.js";
+import { buildSpec } from "../../src/study/settings.js";
 import { problem, runSpec, specOf } from "../study/fixtures.js";
 
 const exponential = { name: "x", distribution: "exponential", length: null, first: 0 } as const;
@@ -171,6 +172,18 @@ describe("studies against closed forms", () => {
 });
 
 describe("what is refused", () => {
+  it("leaves out sizes that a level cannot be read from", () => {
+    const { spec, warnings } = buildSpec(
+      [{ problem: asked("x", { quantile: 0.999 }, exponential, 7), suite: null }],
+      {
+        sources: ["pcg64"],
+        sizes: [512, 1024, 2048],
+      },
+    );
+    expect(spec.sizes["asked"]).toEqual([1024, 2048]);
+    expect(warnings.join()).toMatch(/sizes below 1000 points are left out, its quantile 0.999 cannot/);
+  });
+
   const refused =
     (quantity: Quantity, sizes: number[], change: Partial<Problem> = {}, estimators?: string[]) =>
     () =>
@@ -181,8 +194,8 @@ describe("what is refused", () => {
       });
 
   it("says the limits of sizes", () => {
-    expect(refused({ quantile: 0.999 }, [512, 1024])).toThrow(
-      /needs at least 1000 points, found 512; begin at 1024/,
+    expect(refused({ quantile: 0.9999 }, [512, 4096])).toThrow(
+      /needs at least 10000 points, found 512, 4096/,
     );
     expect(refused({ shortfall: 0.9 }, [2 ** 25])).toThrow(/at most 16777216 \(2\^24\), found 33554432/);
     expect(refused({ quantile: 0.9 }, [2 ** 23], { reference: null })).toThrow(/for the consensus, 4 times/);

@@ -4,6 +4,7 @@ import { describeFormula, type FormulaDescription } from "../../formula/index.js
 import type { Problem } from "../../problem/contract.js";
 import { loadPaths, type LoadedProblem } from "../../problem/load.js";
 import { scopeOf } from "../../problem/compile.js";
+import { quantityName } from "../../problem/quantity.js";
 import { momentsOf } from "../../problem/moments.js";
 import type { ResolvedSettings } from "../../problem/settings.js";
 import { jsonText } from "../../record/json.js";
@@ -89,6 +90,7 @@ function words(checked: Checked, resolved: boolean): string {
     `  moments     ${moments.slice(0, 12).join("; ")}${moments.length > 12 ? "; …" : ""}`,
     `  constants   ${Object.keys(problem.constants).join(", ") || "none"}`,
     `  formula     ${shapes.join(", ")}`,
+    `  quantity    ${quantityName(problem.quantity)}`,
     reference === null
       ? "  reference   none; a consensus of three sound sources will stand in"
       : `  reference   ${reference.value} ± ${reference.uncertainty} (${reference.basis.trim().replaceAll(/\s+/g, " ")})`,
